@@ -1,0 +1,16 @@
+import type { Transaction } from "sequelize";
+import { sequelize } from "@/lib/db";
+
+/** The one channel that processes listen on; the payload is a topic and a key, nothing more. */
+export const CHANNEL = "longreed";
+
+/**
+ * `rig:<id>` a step may be had; `campaign:<id>` something to decide; `fit:<step id>` readings to fit;
+ * `mail` notifications wait; `changed:<what>` for pages that follow.
+ */
+export type Topic = `rig:${string}` | `campaign:${string}` | `fit:${string}` | "mail" | `changed:${string}`;
+
+/** Leaves at COMMIT, so that whoever wakes finds the change. */
+export async function notify(topic: Topic, transaction?: Transaction): Promise<void> {
+  await sequelize.query("select pg_notify($1, $2)", { bind: [CHANNEL, topic], transaction });
+}
