@@ -1,0 +1,12 @@
+import type { CreationAttributes } from "sequelize";
+import { Liquid } from "@/models/liquid";
+import { next, now } from "./now";
+
+const LETTERS = "ABCDEFGHIJKLMNOPQRSTUVWXYZ";
+
+/** Water, harmless, under a name and a letter of its own. */
+export function buildLiquid(given: Partial<CreationAttributes<Liquid>> = {}): Promise<Liquid> {
+  const n = next();
+  const letter = `${LETTERS[n % 26]}${LETTERS[Math.floor(n / 26) % 26]}`;
+  return Liquid.create({ name: `Liquid ${n}`, letter, model: "water", createdAt: now, ...given });
+}
