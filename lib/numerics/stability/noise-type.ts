@@ -1,0 +1,84 @@
+import type { Alpha } from "@/lib/numerics/stability/power-law";
+
+/** Fewer averages than this in a stretch say too little about the noise. */
+export const fewestAverages = 30;
+
+export type IdentifiedNoise = {
+  alpha: Alpha;
+  /** Lag-1 autocorrelation of the series after `differences` differences. */
+  r1: number;
+  /** r1/(1 + r1), the order of a fractionally differenced noise with that r1. */
+  delta: number;
+  differences: number;
+};
+
+/**
+ * Power-law noise type at averaging factor m from the lag-1 autocorrelation r1 of the averages, differenced until
+ * δ = r1/(1 + r1) < 1/4: α = −round(2δ) − 2 · differences.
+ *
+ * Averages of m values are formed in each stretch, a straight line is taken off, and the sums of r1 about each
+ * stretch's mean are pooled, over stretches with at least 30 averages.
+ *
+ * @param stretches Values one τ₀ apart, oldest first, all finite.
+ * @param m Averaging factor, a whole number ≥ 1.
+ * @param lowest Lowest exponent the statistic converges for: −2 for Allan, −4 for Hadamard.
+ * @returns Undefined when no stretch has 30 averages, or the averages do not vary.
+ *
+ * Linear in the number of values.
+ * Source: W. J. Riley and C. A. Greenhall, Power law noise identification using the lag 1 autocorrelation, 18th
+ * European Frequency and Time Forum (2004), for frequency data. The pooling is ours.
+ */
+export function identifyNoise(
+  stretches: readonly Float64Array[],
+  m: number,
+  lowest: -2 | -4 = -2,
+): IdentifiedNoise | undefined {
+  let series = stretches.filter((y) => y.length >= fewestAverages * m).map((y) => withoutLine(averages(y, m)));
+
+  for (let differences = 0; ; differences++) {
+    const r1 = pooledLagOne(series);
+    if (!Number.isFinite(r1)) return undefined;
+    const delta = r1 / (1 + r1);
+    if (delta < 0.25 || differences === -lowest / 2) {
+      const alpha = Math.max(lowest, Math.min(2, 0 - Math.round(2 * delta) - 2 * differences));
+      return { alpha: alpha as Alpha, r1, delta, differences };
+    }
+    series = series.map((z) => z.subarray(1).map((value, i) => value - z[i]));
+  }
+}
+
+function averages(y: Float64Array, m: number): Float64Array {
+  const means = new Float64Array(Math.floor(y.length / m));
+  for (let k = 0; k < means.length; k++) {
+    let sum = 0;
+    for (let i = k * m; i < (k + 1) * m; i++) sum += y[i] - y[0];
+    means[k] = sum / m;
+  }
+  return means;
+}
+
+function withoutLine(z: Float64Array): Float64Array {
+  const middle = (z.length - 1) / 2;
+  let mean = 0;
+  let products = 0;
+  let squares = 0;
+  for (let i = 0; i < z.length; i++) {
+    mean += z[i] / z.length;
+    products += (i - middle) * z[i];
+    squares += (i - middle) ** 2;
+  }
+  return z.map((value, i) => value - mean - (products / squares) * (i - middle));
+}
+
+function pooledLagOne(series: readonly Float64Array[]): number {
+  let products = 0;
+  let squares = 0;
+  for (const z of series) {
+    const mean = z.reduce((sum, value) => sum + value, 0) / z.length;
+    for (let i = 0; i < z.length; i++) {
+      squares += (z[i] - mean) ** 2;
+      if (i > 0) products += (z[i] - mean) * (z[i - 1] - mean);
+    }
+  }
+  return products / squares;
+}

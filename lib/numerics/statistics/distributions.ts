@@ -1,0 +1,52 @@
+import chiSquaredQuantileOf from "@stdlib/stats-base-dists-chisquare-quantile";
+import fCdfOf from "@stdlib/stats-base-dists-f-cdf";
+import normalCdfOf from "@stdlib/stats-base-dists-normal-cdf";
+import normalQuantileOf from "@stdlib/stats-base-dists-normal-quantile";
+import studentTCdfOf from "@stdlib/stats-base-dists-t-cdf";
+import studentTQuantileOf from "@stdlib/stats-base-dists-t-quantile";
+
+/** x below which a chi-squared variable lies with probability p. `dof` > 0, not necessarily whole. */
+export function chiSquaredQuantile(p: number, dof: number): number {
+  checkProbability(p);
+  checkDof(dof);
+  return chiSquaredQuantileOf(p, dof);
+}
+
+/** t below which Student's t lies with probability p (one-sided: p = 0.975 for a 95 % interval). `dof` > 0. */
+export function studentTQuantile(p: number, dof: number): number {
+  checkProbability(p);
+  checkDof(dof);
+  return studentTQuantileOf(p, dof);
+}
+
+/** Probability that Student's t with `dof` > 0 lies at or below t. */
+export function studentTCdf(t: number, dof: number): number {
+  checkDof(dof);
+  return studentTCdfOf(t, dof);
+}
+
+/** z below which a standard normal variable lies with probability p. */
+export function normalQuantile(p: number): number {
+  checkProbability(p);
+  return normalQuantileOf(p, 0, 1);
+}
+
+/** Probability that a standard normal variable lies at or below z. */
+export function normalCdf(z: number): number {
+  return normalCdfOf(z, 0, 1);
+}
+
+/** Probability that an F variable, a ratio of variances with these degrees of freedom (both > 0), lies at or below x. */
+export function fCdf(x: number, dof: { numerator: number; denominator: number }): number {
+  checkDof(dof.numerator);
+  checkDof(dof.denominator);
+  return fCdfOf(x, dof.numerator, dof.denominator);
+}
+
+function checkProbability(p: number): void {
+  if (!(p >= 0 && p <= 1)) throw new RangeError(`a probability lies between 0 and 1, got ${p}`);
+}
+
+function checkDof(dof: number): void {
+  if (!(dof > 0)) throw new RangeError(`degrees of freedom must be above 0, got ${dof}`);
+}
