@@ -98,9 +98,16 @@ function migratorOf(sequelize: Sequelize): Umzug<QueryInterface> {
   });
 }
 
-if (process.argv[1] && import.meta.filename === path.resolve(process.argv[1])) {
+async function main([direction = "up", to]: string[]): Promise<void> {
+  await import("./lib/env-file.mjs");
   const { env } = await import("@/lib/env");
-  const [direction, to] = process.argv.slice(2);
-  const names = direction === "down" ? await migrateDown(env().DATABASE_URL, to) : await migrate(env().DATABASE_URL);
-  console.log(names.length === 0 ? "The database is up to date." : names.map((name) => `${direction ?? "up"} ${name}`).join("\n"));
+  const names = await (direction === "down" ? migrateDown(env().DATABASE_URL, to) : migrate(env().DATABASE_URL));
+  console.log(names.map((name) => `${direction} ${name}`).join("\n") || "The database is up to date.");
+}
+
+if (process.argv[1] && import.meta.filename === path.resolve(process.argv[1])) {
+  main(process.argv.slice(2)).catch((error: unknown) => {
+    console.error(error instanceof Error ? error.message : error);
+    process.exitCode = 1;
+  });
 }

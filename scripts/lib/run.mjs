@@ -5,15 +5,16 @@ import { spawn } from "node:child_process";
  *
  * @param {string} file
  * @param {readonly string[]} args
- * @param {{ cwd?: string, env?: NodeJS.ProcessEnv, detached?: boolean, signal?: AbortSignal, onLine?: (line: string) => void }} [options]
+ * @param {{ cwd?: string, env?: NodeJS.ProcessEnv, detached?: boolean, signal?: AbortSignal, onLine?: (line: string) => void, onStart?: (pid: number) => void }} [options]
  * @returns {Promise<{ code: number, output: string }>}
  */
-export function run(file, args, { onLine, ...options } = {}) {
+export function run(file, args, { onLine, onStart, ...options } = {}) {
   return new Promise((resolve, reject) => {
     const child = spawn(file, args, { ...options, stdio: ["ignore", "pipe", "pipe"] });
+    if (child.pid) onStart?.(child.pid);
     let output = "";
     let pending = "";
-    /** @param {Buffer} chunk */
+    /** @param {string} chunk */
     const take = (chunk) => {
       output += chunk;
       pending += chunk;
@@ -21,8 +22,8 @@ export function run(file, args, { onLine, ...options } = {}) {
       pending = lines.pop() ?? "";
       if (onLine) lines.forEach(onLine);
     };
-    child.stdout.on("data", take);
-    child.stderr.on("data", take);
+    child.stdout.setEncoding("utf8").on("data", take);
+    child.stderr.setEncoding("utf8").on("data", take);
     child.on("error", reject);
     child.on("close", (code) => {
       if (onLine && pending) onLine(pending);

@@ -1,0 +1,10 @@
+import { prepareSweep } from "@/lib/numerics/resonance/prepare";
+import { circleGuess } from "@/lib/numerics/resonance/first-guess";
+import { projectedModel, projectedCost, emptyProjectedModel } from "@/lib/numerics/resonance/projected-model";
+import { evaluateResonance } from "@/lib/numerics/resonance/model";
+import { linearGrid } from "@/lib/numerics/resonance/types";
+const f=linearGrid(980,1020,201); const z=evaluateResonance(f,{readout:"velocity",f0Hz:1000,q:100,a:{re:1,im:0},b:{re:30,im:2}});
+const sweep={kind:"complex" as const,frequencyHz:f,...z};
+const p=prepareSweep(sweep,true); const m=emptyProjectedModel();
+const t=(name:string,g:()=>void)=>{for(let i=0;i<3000;i++)g();const s=performance.now();for(let i=0;i<20000;i++)g();console.log(name,((performance.now()-s)/20).toFixed(2),"us");};
+import { residualsOf } from "@/lib/numerics/resonance/residuals"; t("res",()=>{residualsOf(p,"velocity",1000,100,m)}); import { fitResonance } from "@/lib/numerics/resonance/fit-resonance"; t("fit",()=>{fitResonance(sweep,{readout:"velocity"})});t("prepare",()=>{prepareSweep(sweep,true)});t("circle",()=>{circleGuess(p)});t("model",()=>projectedModel(p,"velocity",1000,100,m));t("cost",()=>{projectedCost(p,"velocity",1000,100,m)});

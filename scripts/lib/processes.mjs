@@ -1,0 +1,52 @@
+import fs from "node:fs";
+
+/** @typedef {{ pid: number, born: string }} ProcessMark Number and birth of a process: a number alone is used again. */
+
+/**
+ * The mark of a living process; `undefined` when there is none with this number.
+ *
+ * @param {number} pid
+ * @returns {ProcessMark | undefined}
+ */
+export function markOf(pid) {
+  try {
+    const stat = fs.readFileSync(`/proc/${pid}/stat`, "utf8");
+    // Fields after the program's name, which may itself hold blanks and brackets: state is the third, birth the 22nd.
+    const fields = stat.slice(stat.lastIndexOf(")") + 2).split(" ");
+    return fields[0] === "Z" ? undefined : { pid, born: `${bootOf()}:${fields[19]}` };
+  } catch {
+    return undefined;
+  }
+}
+
+/** @param {ProcessMark} mark */
+export function isAlive({ pid, born }) {
+  return markOf(pid)?.born === born;
+}
+
+/**
+ * Ends a process and all of its group: asks, then forces after `graceMs`.
+ *
+ * @param {ProcessMark} mark
+ * @param {number} graceMs
+ */
+export async function endProcess(mark, graceMs) {
+  signalGroup(mark, "SIGTERM");
+  const deadline = Date.now() + graceMs;
+  while (isAlive(mark) && Date.now() < deadline) await new Promise((resolve) => setTimeout(resolve, 25));
+  if (isAlive(mark)) signalGroup(mark, "SIGKILL");
+}
+
+/** @param {ProcessMark} mark @param {NodeJS.Signals} signal */
+function signalGroup(mark, signal) {
+  if (!isAlive(mark)) return;
+  try {
+    process.kill(-mark.pid, signal);
+  } catch {
+    // It ended in between.
+  }
+}
+
+function bootOf() {
+  return fs.readFileSync("/proc/sys/kernel/random/boot_id", "utf8").trim();
+}
