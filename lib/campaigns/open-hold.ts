@@ -2,46 +2,42 @@ import type { Transaction } from "sequelize";
 import { change, row } from "@/lib/db";
 import { notify } from "@/lib/notify";
 import { nameOf, type By } from "@/lib/people/actor";
-import type { Hold } from "@/models/hold";
+import { recordEvent } from "@/lib/campaigns/record-event";
 
-type Opening = {
-  campaignId: string;
-  reason: Hold["reason"];
-  text: string;
-  by: By;
-  now: Date;
-  /** Protocol time; absent before a simulated rig's first report. */
-  clock?: Date;
-};
+export type HoldReason = "person" | "task" | "limit" | "failure" | "silence" | "takeOver" | "setAside";
+
+type OpenHold = { campaignId: string; reason: HoldReason; text: string; by: By; now: Date };
 
 /**
- * Opens a hold on a running or held campaign, with its line in the log; from then on no step goes out.
- * Of `person`, `silence`, `takeOver` and `setAside` one at a time is open: another asks for nothing new.
- * @returns The id of the hold, the one already open included.
+ * Opens a hold and holds the campaign. Reasons of which only one may be open (person, silence, take-over, set aside) keep the
+ * first. A campaign that has ended is left alone. Returns the id of the open hold, or null when there is nothing to hold.
  */
-export async function openHold(transaction: Transaction, { campaignId, reason, text, by, now, clock }: Opening): Promise<string> {
+export async function openHold(transaction: Transaction, { campaignId, reason, text, by, now }: OpenHold): Promise<string | null> {
+  const held = await change(
+    `update campaign set state = 'held' where id = $1 and state in ('running', 'held')`,
+    [campaignId],
+    transaction,
+  );
+  if (held === 0) return null;
   const opened = await row<{ id: string }>(
-    `insert into hold (campaign_id, reason, text, opened_by, opened_at, opened_clock) values ($1, $2, $3, $4, $5, $6)
-     on conflict (campaign_id, reason) where released_at is null and reason in ('person', 'silence', 'takeOver', 'setAside') do nothing
+    `insert into hold (campaign_id, reason, text, opened_by, opened_at, opened_clock)
+     select c.id, $2, $3, $4, $5, case when rig.clock = 'real' then $5 else rig.reported_clock end
+       from campaign c join rig on rig.id = c.rig_id where c.id = $1
+     on conflict do nothing
      returning id`,
-    [campaignId, reason, text, by === "longreed" ? null : by.id, now, clock ?? null],
+    [campaignId, reason, text, by === "longreed" ? null : by.id, now],
     transaction,
   );
   if (!opened) {
-    const standing = await row<{ id: string }>(
-      "select id from hold where campaign_id = $1 and reason = $2 and released_at is null",
+    const open = await row<{ id: string }>(
+      `select id from hold where campaign_id = $1 and reason = $2 and released_at is null`,
       [campaignId, reason],
       transaction,
     );
-    if (!standing) throw new Error(`hold ${reason} of campaign ${campaignId} was neither open nor opened`);
-    return standing.id;
+    return open?.id ?? null;
   }
-  await change("update campaign set state = 'held' where id = $1 and state = 'running'", [campaignId], transaction);
-  await change(
-    "insert into campaign_event (campaign_id, at, clock, kind, who, text) values ($1, $2, $3, 'hold', $4, $5)",
-    [campaignId, now, clock ?? null, nameOf(by), text],
-    transaction,
-  );
+  await recordEvent(transaction, { campaignId, now, kind: "hold", who: nameOf(by), text });
   await notify(`campaign:${campaignId}`, transaction);
+  await notify(`changed:campaign:${campaignId}`, transaction);
   return opened.id;
 }

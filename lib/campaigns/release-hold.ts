@@ -1,33 +1,32 @@
 import type { Transaction } from "sequelize";
-import { change, row } from "@/lib/db";
+import { recordEvent } from "@/lib/campaigns/record-event";
+import { change, rows } from "@/lib/db";
 import { notify } from "@/lib/notify";
 import { nameOf, type By } from "@/lib/people/actor";
+import type { HoldReason } from "@/lib/campaigns/open-hold";
 
-type Release = { holdId: string; text: string; by: By; now: Date; clock?: Date };
+type ReleaseHolds = { campaignId: string; reasons?: readonly HoldReason[]; holdId?: string; by: By; now: Date };
 
-/**
- * Ends one hold, with its line in the log. When it was the last open one, the campaign runs on: dispatch is woken
- * and decides what comes next. A hold already released stays as it was.
- */
-export async function releaseHold(transaction: Transaction, { holdId, text, by, now, clock }: Release): Promise<void> {
-  const released = await row<{ campaignId: string }>(
-    `update hold set released_by = $2, released_at = greatest($3, opened_at), released_clock = $4
-      where id = $1 and released_at is null returning campaign_id as "campaignId"`,
-    [holdId, by === "longreed" ? null : by.id, now, clock ?? null],
+/** Releases open holds by reason or id; when none is left the campaign runs on. Returns the reasons released. */
+export async function releaseHolds(transaction: Transaction, { campaignId, reasons, holdId, by, now }: ReleaseHolds): Promise<HoldReason[]> {
+  const released = await rows<{ reason: HoldReason }>(
+    `update hold set released_at = greatest(opened_at, $2), released_by = $3,
+       released_clock = (select case when rig.clock = 'real' then $2 else rig.reported_clock end
+                           from campaign c join rig on rig.id = c.rig_id where c.id = $1)
+      where campaign_id = $1 and released_at is null and ($4::text[] is null or reason = any($4)) and ($5::bigint is null or id = $5)
+      returning reason`,
+    [campaignId, now, by === "longreed" ? null : by.id, reasons ?? null, holdId ?? null],
     transaction,
   );
-  if (!released) return;
-  const { campaignId } = released;
+  if (released.length === 0) return [];
   await change(
     `update campaign set state = 'running', needs_advance = true
       where id = $1 and state = 'held' and not exists (select 1 from hold where campaign_id = $1 and released_at is null)`,
     [campaignId],
     transaction,
   );
-  await change(
-    "insert into campaign_event (campaign_id, at, clock, kind, who, text) values ($1, $2, $3, 'release', $4, $5)",
-    [campaignId, now, clock ?? null, nameOf(by), text],
-    transaction,
-  );
+  await recordEvent(transaction, { campaignId, now, kind: "release", who: nameOf(by), text: "The hold was released" });
   await notify(`campaign:${campaignId}`, transaction);
+  await notify(`changed:campaign:${campaignId}`, transaction);
+  return released.map(({ reason }) => reason);
 }

@@ -1,0 +1,43 @@
+import type { Transaction } from "sequelize";
+import { endSilence } from "@/lib/alarms/end-silence";
+import type { Agent } from "@/lib/agents/contract";
+import { row } from "@/lib/db";
+import { conflict } from "@/lib/errors";
+
+type Contact = { agent: Agent; session?: string; now: Date; clock?: Date };
+
+export type RigRow = {
+  id: string;
+  name: string;
+  clock: "real" | "simulated";
+  timeZone: string;
+  reportedClock: Date | null;
+  retiredAt: Date | null;
+};
+
+/**
+ * Notes that the agent was heard, moves a simulated rig's clock on (it never goes back), and refuses a session that another
+ * instance has ended. Locks the rig row: calls of one agent follow each other.
+ */
+export async function noteContact(transaction: Transaction, { agent, session, now, clock }: Contact): Promise<RigRow> {
+  const rig = await row<RigRow & { silentSince: Date | null }>(
+    `update rig set last_contact_at = greatest(rig.last_contact_at, $2), reported_clock = greatest(rig.reported_clock, $3)
+       from (select id, last_contact_at as silent_since from rig where id = $1 for update) before
+      where rig.id = before.id
+      returning rig.id, name, clock, time_zone as "timeZone", reported_clock as "reportedClock", retired_at as "retiredAt",
+        before.silent_since as "silentSince"`,
+    [agent.rigId, now, clock ?? null],
+    transaction,
+  );
+  if (!rig) throw new Error(`rig ${agent.rigId} of a valid token is gone`);
+  if (session !== undefined) {
+    const open = await row(
+      `update agent_session set last_seen_at = $3 where rig_id = $1 and session = $2 and ended_at is null returning id`,
+      [agent.rigId, session, now],
+      transaction,
+    );
+    if (!open) throw conflict("Another agent has taken over this rig; say hello again with `replace` to take it back", "other-agent");
+  }
+  await endSilence(transaction, { rigId: rig.id, lastContactAt: rig.silentSince, now });
+  return rig;
+}

@@ -1,0 +1,41 @@
+import type { Transaction } from "sequelize";
+import { openAlarm } from "@/lib/alarms/open-alarm";
+import { openHold } from "@/lib/campaigns/open-hold";
+import { change, row } from "@/lib/db";
+import { notify } from "@/lib/notify";
+import type { StepFailure } from "@/models/json";
+
+type FailStep = { step: { id: string; campaignId: string; rigId: string }; failure: StepFailure; now: Date };
+
+/** Nothing more can be tried by itself: the step has failed, the campaign holds, and people are told. `resume` here issues it again. */
+export async function failStep(transaction: Transaction, { step, failure, now }: FailStep): Promise<void> {
+  await change(
+    `update step set state = 'failed', closed_at = $2, lease = null, lease_expires_at = null, failure = $3 where id = $1`,
+    [step.id, now, JSON.stringify(failure)],
+    transaction,
+  );
+  const where = await row<{ label: string; rig: string; sensorId: string; clock: Date | null }>(
+    `select s.label, rig.name as rig, c.sensor_id as "sensorId", case when rig.clock = 'real' then $2::timestamptz else rig.reported_clock end as clock
+       from step s join campaign c on c.id = s.campaign_id join rig on rig.id = s.rig_id where s.id = $1`,
+    [step.id, now],
+    transaction,
+  );
+  if (!where) throw new Error(`step ${step.id} is gone`);
+  const text = `${where.label}: ${failure.message || failure.code}`;
+  await openHold(transaction, { campaignId: step.campaignId, reason: "failure", text, by: "longreed", now });
+  await openAlarm(transaction, {
+    now,
+    clock: where.clock,
+    rigId: step.rigId,
+    campaignId: step.campaignId,
+    sensorId: where.sensorId,
+    source: "system",
+    kind: `step-${failure.code}`,
+    stepId: step.id,
+    text: `${where.rig}: ${text}`,
+    actionText: "The step was given up and the campaign holds.",
+    mail: true,
+  });
+  await change(`update campaign set needs_advance = true where id = $1`, [step.campaignId], transaction);
+  await notify(`campaign:${step.campaignId}`, transaction);
+}

@@ -1,0 +1,165 @@
+import { randomBytes } from "node:crypto";
+import type { Transaction } from "sequelize";
+import type { RigRow } from "@/lib/agents/contact";
+import { LEASE_S } from "@/lib/agents/contract";
+import { protocolTime } from "@/lib/agents/rig-clock";
+import type { StepAnswer } from "@/lib/agents/schema";
+import { change, row } from "@/lib/db";
+import { notify } from "@/lib/notify";
+import type { StepPlan } from "@/lib/protocol/types";
+import { askForALook } from "@/lib/steps/ask-for-a-look";
+import { failStep } from "@/lib/steps/fail-step";
+import { missingRanges } from "@/lib/steps/missing";
+import type { StepProgress } from "@/models/json";
+
+export type OpenStep = {
+  id: string;
+  campaignId: string;
+  campaignNumber: number;
+  campaignState: string;
+  parking: string;
+  rigId: string;
+  sequence: number;
+  kind: StepAnswer["kind"];
+  role: string | null;
+  medium: string | null;
+  slot: string | null;
+  cycle: number;
+  label: string;
+  detour: string | null;
+  params: StepPlan["params"];
+  state: "ready" | "out";
+  attempt: number;
+  emptyAttempts: number;
+  stored: number;
+  storedAtIssue: number;
+  done: StepProgress | null;
+  port: number | null;
+  liquidName: string | null;
+  maxAttempts: number;
+};
+
+const OPEN_STEP = `
+  select s.id, s.campaign_id as "campaignId", c.rig_number as "campaignNumber", c.state as "campaignState", c.parking, s.rig_id as "rigId",
+         s.sequence, s.kind, s.role, s.medium, s.slot, s.cycle, s.label, s.detour, s.params, s.state, s.attempt,
+         s.empty_attempts as "emptyAttempts", s.stored, s.stored_at_issue as "storedAtIssue", s.done, slot.port, liquid.name as "liquidName",
+         coalesce((v.definition->>'maxAttempts')::int, 3) as "maxAttempts"
+    from step s
+    join campaign c on c.id = s.campaign_id
+    join protocol_version v on v.id = s.protocol_version_id
+    left join campaign_slot slot on slot.campaign_id = c.id and slot.slot = coalesce(s.slot, s.medium)
+    left join lot on lot.id = slot.lot_id
+    left join liquid on liquid.id = lot.liquid_id
+   where s.rig_id = $1 and s.state in ('ready', 'out') and s.kind not in ('wait', 'ask') and not c.set_aside
+   order by (s.state = 'out') desc, s.id
+   limit 1
+   for update of s`;
+
+type GiveOut = { rig: RigRow; session?: string; now: Date };
+
+/** Gives the rig's open step out under a fresh lease, or nothing. A physical act whose outcome nobody knows is not given out again blindly. */
+export async function giveOut(transaction: Transaction, { rig, session, now }: GiveOut): Promise<StepAnswer | undefined> {
+  const step = await row<OpenStep>(OPEN_STEP, [rig.id], transaction);
+  if (!step) return undefined;
+
+  const wanted = step.campaignState === "running" || (step.detour === "park" && step.parking === "running");
+  if (!wanted) {
+    if (step.state === "out") await takeBack(transaction, step, now);
+    return undefined;
+  }
+  if (step.state === "out") {
+    const emptyAttempts = step.stored > step.storedAtIssue ? 0 : step.emptyAttempts + 1;
+    if (emptyAttempts >= step.maxAttempts) {
+      await failStep(transaction, {
+        step,
+        now,
+        failure: { code: "other", message: `given out ${emptyAttempts} times in a row and nothing came back`, retry: false },
+      });
+      return undefined;
+    }
+    step.emptyAttempts = emptyAttempts;
+    if (await nobodyKnows(transaction, step, rig)) {
+      await askForALook(transaction, { step, now });
+      return undefined;
+    }
+  }
+  return lend(transaction, { step, rig, session, now });
+}
+
+/** An agent that lost its memory asks while its campaign is held or stopped: the step waits, or is over. */
+async function takeBack(transaction: Transaction, step: OpenStep, now: Date) {
+  const state = step.campaignState === "held" ? "ready" : "skipped";
+  await change(
+    `update step set state = $2, lease = null, lease_expires_at = null, closed_at = case when $2 = 'skipped' then $3::timestamptz end where id = $1`,
+    [step.id, state, now],
+    transaction,
+  );
+  await change(`update campaign set needs_advance = true where id = $1`, [step.campaignId], transaction);
+  await notify(`campaign:${step.campaignId}`, transaction);
+}
+
+/** A fill or rinse that was out, without a word of how far it came, by an agent that did not say it can repeat that kind. */
+async function nobodyKnows(transaction: Transaction, step: OpenStep, rig: RigRow): Promise<boolean> {
+  if ((step.kind !== "fill" && step.kind !== "rinse") || step.done) return false;
+  const session = await row<{ repeatable: string[] }>(
+    `select repeatable from agent_session where rig_id = $1 and ended_at is null`,
+    [rig.id],
+    transaction,
+  );
+  return !session?.repeatable.includes(step.kind);
+}
+
+type Lend = { step: OpenStep; rig: RigRow; session?: string; now: Date };
+
+async function lend(transaction: Transaction, { step, rig, session, now }: Lend): Promise<StepAnswer> {
+  const lease = randomBytes(18).toString("base64url");
+  const leaseExpiresAt = new Date(now.getTime() + LEASE_S * 1000);
+  const clock = protocolTime(rig, now) ?? now;
+  await change(
+    `update step set state = 'out', attempt = attempt + 1, empty_attempts = $2, stored_at_issue = stored, lease = $3, lease_expires_at = $4,
+       given_at = coalesce(given_at, $5), started_clock = coalesce(started_clock, $6) where id = $1`,
+    [step.id, step.emptyAttempts, lease, leaseExpiresAt, now, clock],
+    transaction,
+  );
+  await change(
+    `insert into step_lease (lease, step_id, rig_id, agent_session_id, given_at)
+     values ($1, $2, $3, (select id from agent_session where rig_id = $3 and ended_at is null and session = coalesce($4, session)), $5)`,
+    [lease, step.id, rig.id, session ?? null, now],
+    transaction,
+  );
+  await notify(`changed:campaign:${step.campaignId}`, transaction);
+
+  const repeats = "repeats" in step.params ? step.params.repeats : 0;
+  const missing = step.kind === "measure" && step.attempt > 0 ? await missingRanges(transaction, step.id, repeats) : undefined;
+  return {
+    id: step.id,
+    campaignId: step.campaignId,
+    campaignNumber: step.campaignNumber,
+    sequence: step.sequence,
+    kind: step.kind,
+    ...(step.role ? { role: step.role } : {}),
+    attempt: step.attempt + 1,
+    lease,
+    leaseExpiresAt: leaseExpiresAt.toISOString(),
+    resumeFrom: missing ? (missing[0]?.[0] ?? repeats) : 0,
+    ...(missing ? { missing } : {}),
+    ...(step.done ? { done: step.done } : {}),
+    cycle: step.cycle,
+    label: step.label,
+    params: agentParams(step),
+  };
+}
+
+/** What the interpreter planned, with the port that the slot is bound to; what only Longreed needs is left out. */
+function agentParams(step: OpenStep): StepAnswer["params"] {
+  const { params } = step;
+  if ("sweep" in params) {
+    const { repeats, pauseS, sweep } = params;
+    const medium = step.medium as string;
+    const liquid = medium !== "air" && step.port !== null ? { slot: medium, port: step.port, name: step.liquidName ?? medium } : undefined;
+    return { medium, ...(liquid ? { liquid } : {}), repeats, pauseS, sweep };
+  }
+  if (step.kind === "fill" || step.kind === "rinse") return { port: step.port as number, ...(params as { volumeMl: number }) };
+  return params as StepAnswer["params"];
+}
+
