@@ -1,0 +1,23 @@
+import { z } from "zod";
+import { rows } from "@/lib/db";
+import { idSchema } from "@/lib/http/ids";
+import { cutPage, readCursor, type Page } from "@/lib/http/paging";
+import type { LoadAnswer } from "@/lib/rigs/schema";
+
+type LoadQuery = { rigId: string; limit: number; cursor?: string };
+type LoadRow = Omit<LoadAnswer, "loadedAt"> & { loadedAt: Date };
+
+/** What was put on a rig's ports, newest first. */
+export async function findLoads({ rigId, limit, cursor }: LoadQuery): Promise<Page<LoadAnswer>> {
+  const [id] = readCursor(cursor, z.tuple([idSchema])) ?? [null];
+  const found = await rows<LoadRow>(
+    `select l.id, l.port, l.how, l.volume_ml as "volumeMl", lot.id as "lotId", lot.code as "lotCode",
+            q.id as "liquidId", q.name as "liquidName", p.name as "loadedBy", l.loaded_at as "loadedAt"
+       from load l join lot on lot.id = l.lot_id join liquid q on q.id = lot.liquid_id left join person p on p.id = l.loaded_by
+      where l.rig_id = $1 and ($2::bigint is null or l.id < $2)
+      order by l.id desc limit $3`,
+    [rigId, id, limit + 1],
+  );
+  const { items, nextCursor } = cutPage(found, limit, (load) => [load.id]);
+  return { items: items.map((load) => ({ ...load, loadedAt: load.loadedAt.toISOString() })), nextCursor };
+}
