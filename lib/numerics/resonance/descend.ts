@@ -1,14 +1,14 @@
 import type { Guess } from "@/lib/numerics/resonance/first-guess";
 import type { PreparedSweep } from "@/lib/numerics/resonance/prepare";
-import { projectedModel, type ProjectedModel } from "@/lib/numerics/resonance/projected-model";
+import { projectedCost, projectedModel, type ProjectedModel } from "@/lib/numerics/resonance/projected-model";
 import type { Readout } from "@/lib/numerics/resonance/types";
 
 const MOST_STEPS = 60;
 /** Longest step: in half-widths, and in ln Q. */
 const LONGEST_SHIFT = 1.5;
 const LONGEST_STRETCH = 1;
-/** Done when the next step is this small against the standard errors (squared), or against a half-width (noise-free data). */
-const SMALL_AGAINST_ERROR = 1e-9;
+/** Done after a step this small against the standard errors (squared), or against a half-width (noise-free data). */
+const SMALL_AGAINST_ERROR = 1e-6;
 const SMALL_AGAINST_WIDTH = 1e-13;
 
 /**
@@ -44,6 +44,10 @@ export function descend(
       gain <= (SMALL_AGAINST_ERROR * Math.max(0, here.cost)) / freedom ||
       (Math.abs(shift) < SMALL_AGAINST_WIDTH && Math.abs(stretch) < SMALL_AGAINST_WIDTH);
     if (small && damping <= 1) {
+      f0 *= Math.exp(shift / (2 * q));
+      q *= Math.exp(stretch);
+      projectedCost(p, readout, f0, q, here);
+      evaluations++;
       settled = true;
       break;
     }

@@ -5,7 +5,7 @@ import type { Readout } from "@/lib/numerics/resonance/types";
 export type Guess = { f0: number; q: number };
 
 /** Passes of the circle fit; each one weights by the pole the last one found. */
-const CIRCLE_PASSES = 3;
+const CIRCLE_PASSES = 2;
 
 /**
  * First guess by an algebraic circle fit with the phase law built in, blind to offset and slope.

@@ -1,3 +1,4 @@
+import { isBent } from "@/lib/numerics/resonance/bend";
 import { descend } from "@/lib/numerics/resonance/descend";
 import { failedFit } from "@/lib/numerics/resonance/failed-fit";
 import { circleGuess, gridGuess, type Guess } from "@/lib/numerics/resonance/first-guess";
@@ -9,8 +10,9 @@ import type { FitOptions, Readout, ResonanceFit, Sweep } from "@/lib/numerics/re
 
 type Solution = Guess & { settled: boolean; model: ProjectedModel; residuals: Residuals };
 
-/** Below this amplitude to noise, or with correlated residuals, a solution is doubted and the grid is asked too. */
+/** Below this amplitude to noise, or with residuals correlated beyond DOUBTFUL_SIGMAS/√n, a solution is doubted and the grid is asked too. */
 const TRUSTED_SNR = 6;
+const DOUBTFUL_SIGMAS = 3;
 /** A resonance must explain this much of the sum of squares, in variances of one quadrature, beyond 2 ln n. */
 const LEAST_GAIN = 20;
 
@@ -27,13 +29,13 @@ export function fitComplexSweep(sweep: Extract<Sweep, { kind: "complex" }>, opti
   const solve = (start: Guess): Solution => {
     const end = descend(p, readout, start, models);
     evaluations += end.evaluations + 1;
-    const model = { ...models[0] };
+    const model = { ...models[0], columns: models[0].columns.slice() };
     return { ...end, model, residuals: residualsOf(p, readout, end.f0, end.q, model) };
   };
   const trusted = (s: Solution): boolean =>
     s.settled && s.f0 >= p.low && s.f0 <= p.high &&
     Math.hypot(s.model.aRe, s.model.aIm) ** 2 > (TRUSTED_SNR ** 2 * s.residuals.squares) / freedom &&
-    s.residuals.lag1 < 3 / Math.sqrt(p.n);
+    s.residuals.lag1 < DOUBTFUL_SIGMAS / Math.sqrt(p.n);
 
   const first = guess ? { f0: guess.f0Hz, q: guess.q } : circleGuess(p);
   let best = first && solve(first);
@@ -61,7 +63,7 @@ function better(one: Solution | undefined, other: Solution | undefined): Solutio
 function describe(
   p: PreparedSweep,
   { f0, q, model, residuals }: Solution,
-  { readout: _readout, dwellS, freedom, evaluations }: { readout: Readout; dwellS?: number; freedom: number; evaluations: number },
+  { readout, dwellS, freedom, evaluations }: { readout: Readout; dwellS?: number; freedom: number; evaluations: number },
 ): ResonanceFit {
   const variance = residuals.squares / freedom;
   const determinant = model.hh * model.qq - model.hq * model.hq;
@@ -76,7 +78,8 @@ function describe(
   const f0q = (-perShift * q * variance * model.hq) / determinant;
   const noise = Math.sqrt(variance);
   const snr = noise > 0 ? amplitude / noise : Infinity;
-  const bent = false;
+  const doubtful = residuals.lag1 > DOUBTFUL_SIGMAS / Math.sqrt(p.n);
+  const { bent, evaluations: more } = isBent(p, readout, { f0, q, residuals }, doubtful);
   return {
     f0Hz: f0,
     q,
@@ -91,7 +94,7 @@ function describe(
       pointsInBand: countInBand(p.f, p.n, f0, q), lag1: residuals.lag1, bent, dwellS,
     }),
     ...linearPart(p, model),
-    evaluations,
+    evaluations: evaluations + more,
   };
 }
 

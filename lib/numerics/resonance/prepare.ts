@@ -14,6 +14,8 @@ export type PreparedSweep = {
   im: Float64Array;
   /** Σ(re² + im²). */
   energy: number;
+  /** The same sum of the data as they came. */
+  rawEnergy: number;
   /** What was taken out: mean, and component along `slope`. */
   meanRe: number;
   meanIm: number;
@@ -42,9 +44,9 @@ export function checkSweep(sweep: Sweep): void {
   }
   for (const column of columns) {
     if (column.length !== n) throw new RangeError(`a sweep of ${n} frequencies has ${column.length} values`);
-    for (let i = 0; i < n; i++) {
-      if (!Number.isFinite(column[i])) throw new RangeError(`value ${i} of the sweep is not finite`);
-    }
+    let zero = 0; // a finite number less itself is 0, anything else NaN
+    for (let i = 0; i < n; i++) zero += column[i] - column[i];
+    if (zero !== 0) throw new RangeError(`value ${column.findIndex((v) => !Number.isFinite(v))} of the sweep is not finite`);
   }
 }
 
@@ -71,7 +73,7 @@ function emptyWorkspace(capacity: number): PreparedSweep {
   const column = () => new Float64Array(capacity);
   return {
     n: 0, f: column(), inverseF: column(), slope: column(), re: column(), im: column(),
-    energy: 0, meanRe: 0, meanIm: 0, slopeRe: 0, slopeIm: 0, slopeMean: 0, slopeNorm: 0,
+    energy: 0, rawEnergy: 0, meanRe: 0, meanIm: 0, slopeRe: 0, slopeIm: 0, slopeMean: 0, slopeNorm: 0,
     low: 0, high: 0, descending: false,
   };
 }
@@ -155,4 +157,5 @@ function projectData(p: PreparedSweep): void {
   p.slopeRe = alongRe;
   p.slopeIm = alongIm;
   p.energy = energy;
+  p.rawEnergy = energy + alongRe * alongRe + alongIm * alongIm + n * (p.meanRe * p.meanRe + p.meanIm * p.meanIm);
 }

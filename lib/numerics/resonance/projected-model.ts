@@ -28,12 +28,17 @@ export type ProjectedModel = {
   /** Projected derivative columns times the residual. */
   gradientH: number;
   gradientQ: number;
+  /** Unscaled columns V and U (see projectedModel): sums with the constant and the slope, and E⊥ᴴ times each. */
+  columns: Float64Array;
 };
+
+/** Places in `columns`: V's six numbers, then U's. */
+export const COLUMN = { meanRe: 0, meanIm: 1, slopeRe: 2, slopeIm: 3, eRe: 4, eIm: 5, perColumn: 6 } as const;
 
 export function emptyProjectedModel(): ProjectedModel {
   return {
     cost: 0, aRe: 0, aIm: 0, norm: 0, meanRe: 0, meanIm: 0, slopeRe: 0, slopeIm: 0,
-    hh: 0, hq: 0, qq: 0, gradientH: 0, gradientQ: 0,
+    hh: 0, hq: 0, qq: 0, gradientH: 0, gradientQ: 0, columns: new Float64Array(12),
   };
 }
 
@@ -90,7 +95,7 @@ export function projectedModel(p: PreparedSweep, readout: Readout, f0: number, q
   let eyR = 0, eyI = 0, vyR = 0, vyI = 0, uyR = 0, uyI = 0;
   let e1R = 0, e1I = 0, v1R = 0, v1I = 0, u1R = 0, u1I = 0;
   let esR = 0, esI = 0, vsR = 0, vsI = 0, usR = 0, usI = 0;
-  let ee = 0, vv = 0, uu = 0, evR = 0, evI = 0, euR = 0, euI = 0;
+  let ee = 0, vv = 0, uu = 0, evI = 0, euR = 0, euI = 0;
   for (let i = 0; i < n; i++) {
     const x = scale * (f[i] - f0) * (f[i] + f0) * inverseF[i];
     const w = f0 * inverseF[i];
@@ -110,17 +115,17 @@ export function projectedModel(p: PreparedSweep, readout: Readout, f0: number, q
     const s = slope[i];
     const yR = re[i];
     const yI = im[i];
-    const e2 = eR * eR + eI * eI;
-    const v2 = vR * vR + vI * vI;
+    // |E|², EᴴV = |m|²|L|²L and |V|² all follow from the power.
+    const e2 = displacement ? w * w * power : power;
+    const v2 = e2 * power;
+    const gv = g * v2;
+    const ev = e2 * lIm;
     ee += e2;
     vv += v2;
-    uu += g * g * v2;
-    const cR = eR * vR + eI * vI;
-    const cI = eR * vI - eI * vR;
-    evR += cR;
-    evI += cI;
-    euR -= g * cI;
-    euI += g * cR;
+    uu += g * gv;
+    evI += ev;
+    euR -= g * ev;
+    euI += gv;
     eyR += eR * yR + eI * yI;
     eyI += eR * yI - eI * yR;
     const dR = vR * yR + vI * yI;
@@ -144,6 +149,7 @@ export function projectedModel(p: PreparedSweep, readout: Readout, f0: number, q
   }
 
   // Orthogonal to constant and slope.
+  let evR = vv;
   const perN = 1 / n;
   const norm = ee - (e1R * e1R + e1I * e1I) * perN - esR * esR - esI * esI;
   vv -= (v1R * v1R + v1I * v1I) * perN + vsR * vsR + vsI * vsI;
@@ -167,6 +173,19 @@ export function projectedModel(p: PreparedSweep, readout: Readout, f0: number, q
   out.meanIm = e1I;
   out.slopeRe = esR;
   out.slopeIm = esI;
+  const { columns } = out;
+  columns[0] = v1R;
+  columns[1] = v1I;
+  columns[2] = vsR;
+  columns[3] = vsI;
+  columns[4] = evR;
+  columns[5] = evI;
+  columns[6] = u1R;
+  columns[7] = u1I;
+  columns[8] = usR;
+  columns[9] = usI;
+  columns[10] = euR;
+  columns[11] = euI;
   out.hh = a2 * (uu - (euR * euR + euI * euI) / norm);
   out.qq = a2 * (vv - (evR * evR + evI * evI) / norm);
   out.hq = a2 * (uvR - (euR * evR + euI * evI) / norm);
