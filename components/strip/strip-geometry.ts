@@ -45,10 +45,10 @@ export const timeScale = (from: string, to: string, width: number) => {
   return (at: string | number) => (((typeof at === "number" ? at : Date.parse(at)) - start) / span) * width;
 };
 
-export function layoutStrip(input: StripInput, width: number, size: StripSize): StripLayout {
+export function layoutStrip(input: StripInput, width: number, size: StripSize, own?: Partial<StripMeasures>): StripLayout {
   const x = timeScale(input.from, input.to, width);
   const hasTrace = Boolean(input.trace && input.trace.length > 0);
-  const measures = stripMeasures(size, width, hasTrace);
+  const measures = { ...stripMeasures(size, width, hasTrace), ...own };
   const base = measures.top + measures.level;
   const roof = measures.top + measures.headroom;
   const nowX = input.now === undefined ? undefined : x(input.now);
