@@ -2,7 +2,7 @@ import next from "eslint-config-next/core-web-vitals";
 import typescript from "eslint-config-next/typescript";
 
 const config = [
-  { ignores: [".next/", "data/", "coverage/", "next-env.d.ts", "public/"] },
+  { ignores: [".next/", ".next-test/", "data/", "coverage/", "next-env.d.ts", "public/"] },
   ...next,
   ...typescript,
   {

@@ -27,6 +27,7 @@ export default defineConfig({
           name: "browser",
           include: ["tests/browser/**/*.test.ts"],
           globalSetup: "tests/setup/laboratory.ts",
+          setupFiles: "tests/setup/browser.ts",
           testTimeout: 180_000,
           hookTimeout: 180_000,
           maxWorkers: 1,

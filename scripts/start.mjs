@@ -176,7 +176,7 @@ function end(code) {
     const last = undoing.filter(({ name }) => name === "lock" || name === "PostgreSQL");
     await Promise.allSettled(undoing.filter((part) => !last.includes(part)).map(({ undo }) => undo()));
     for (const { undo } of last.reverse()) await undo();
-    say("Stopped.");
+    if (code === 0) say("Stopped.");
     process.exit(code);
   })());
 }

@@ -47,6 +47,30 @@ function signalGroup(mark, signal) {
   }
 }
 
+/**
+ * The processes that carry this variable in their environment, which children inherit.
+ *
+ * @param {string} variable
+ * @param {string} value
+ * @returns {ProcessMark[]}
+ */
+export function markedProcesses(variable, value) {
+  const entry = `${variable}=${value}`;
+  return fs
+    .readdirSync("/proc")
+    .filter((name) => /^\d+$/.test(name) && Number(name) !== process.pid && environmentOf(name).includes(entry))
+    .flatMap((name) => markOf(Number(name)) ?? []);
+}
+
+/** @param {string} pid */
+function environmentOf(pid) {
+  try {
+    return fs.readFileSync(`/proc/${pid}/environ`, "utf8").split("\0");
+  } catch {
+    return [];
+  }
+}
+
 function bootOf() {
   return fs.readFileSync("/proc/sys/kernel/random/boot_id", "utf8").trim();
 }
