@@ -3,7 +3,8 @@ import path from "node:path";
 
 /** Rows of a CSV in tests/reference/: `#` lines are passed over, the first other line names the columns. */
 export function referenceTable(name: string): Record<string, number>[] {
-  return referenceText(name).map((row) => Object.fromEntries(Object.entries(row).map(([key, cell]) => [key, Number(cell)])));
+  const number = (cell: string) => (cell === "inf" ? Infinity : Number(cell));
+  return referenceText(name).map((row) => Object.fromEntries(Object.entries(row).map(([key, cell]) => [key, number(cell)])));
 }
 
 /** The same with the cells as they stand. */

@@ -32,19 +32,24 @@ export function discreteEdf(
   // Averaging phase over m is one more integration followed by one more difference of span m.
   const differences = shape.differences + (shape.averaged ? 1 : 0);
   const integrations = 1 - alpha / 2 + (shape.averaged ? 1 : 0);
-  const step = shape.overlapping ? 1 : m;
+  const step = shape.overlapping ? 1 : m; // from one term to the next
+  const span = m / step;
+
+  const lags = 2 * (shape.differences + 1) * span;
+  const phase = new Float64Array(lags + differences * span + 1);
+  for (let k = 0; k < phase.length; k++) phase[k] = phaseCovariance(k * step, integrations);
 
   const weights = alternatingBinomials(differences);
-  const covariance = (lag: number) => {
-    let sum = 0;
+  const correlationSquared = new Float64Array(lags + 1);
+  let variance = 0;
+  for (let k = 0; k <= lags; k++) {
+    let covariance = 0;
     for (let i = -differences; i <= differences; i++) {
-      sum += weights[i + differences] * phaseCovariance(Math.abs(lag + i * m), integrations);
+      covariance += weights[i + differences] * phase[Math.abs(k + i * span)];
     }
-    return sum;
-  };
-  const variance = covariance(0);
-  const correlationSquared = new Float64Array(2 * (shape.differences + 1) * (shape.overlapping ? m : 1) + 1);
-  for (let k = 0; k < correlationSquared.length; k++) correlationSquared[k] = (covariance(k * step) / variance) ** 2;
+    if (k === 0) variance = covariance;
+    correlationSquared[k] = (covariance / variance) ** 2;
+  }
 
   return (values) => {
     const n = 1 + Math.floor((values + (shape.averaged ? 1 : 0) - differences * m) / step);

@@ -12,13 +12,19 @@ const totalEdf: Partial<Record<Alpha, readonly [b: number, c: number]>> = {
 };
 
 /**
+ * Most that the mirrored ends add to the overlapping Allan deviation's edf. It keeps the published line, made for long
+ * averaging times, from promising more than there are terms at short ones.
+ */
+const totalGain = 2.5;
+
+/**
  * Equivalent degrees of freedom of a stability variance pooled over stretches:
  *
  *   edf = (Σ n)² / Σ (n² / edf of the stretch)
  *
  * with n the terms of each stretch. Within a stretch the exact covariance of discrete power-law noise for short
- * terms, Greenhall and Riley's combined algorithm for long ones; the total deviation has its own published edf, in
- * phase noise (where none is published) the smaller one of the overlapping Allan deviation.
+ * terms, Greenhall and Riley's combined algorithm for long ones. The total deviation has its own published edf, but at
+ * most 2.5 more than the overlapping Allan deviation, and in phase noise, where none is published, that one's.
  *
  * @param lengths Number of values of each stretch; those too short for a term are passed over.
  * @param alpha Exponent of the noise; for Allan statistics not below −2.
@@ -49,9 +55,10 @@ export function edf(
 }
 
 function edfOfStretch(statistic: Statistic, { alpha, m }: { alpha: Alpha; m: number }): (values: number) => number {
-  const total = statistic === "totdev" ? totalEdf[alpha] : undefined;
-  if (total) return (values) => (total[0] * values) / m - total[1];
   const shape = statisticShapes[statistic];
   const method = (shape.differences + 1) * m <= longestTerm ? discreteEdf : greenhallRileyEdf;
-  return method(shape, { alpha, m });
+  const ofShape = method(shape, { alpha, m });
+  const total = statistic === "totdev" ? totalEdf[alpha] : undefined;
+  if (!total) return ofShape;
+  return (values) => Math.min((total[0] * values) / m - total[1], ofShape(values) + totalGain);
 }

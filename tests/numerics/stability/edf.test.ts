@@ -65,4 +65,8 @@ describe("total deviation", () => {
   ] as const)("edf = b T/τ − c, α = %i", (alpha, expected) => {
     expect(edf("totdev", { lengths: [1000], alpha, m: 100 })).toBeCloseTo(expected, 12);
   });
+
+  test("at short averaging times it promises no more than there are terms", () => {
+    for (const alpha of [2, 1, 0, -1, -2] as const) expect(edf("totdev", { lengths: [200], alpha, m: 1 })).toBeLessThan(199);
+  });
 });
