@@ -1,3 +1,5 @@
+"use client";
+
 import Link from "next/link";
 import type { ButtonHTMLAttributes, ReactNode } from "react";
 import { classNames } from "./class-names";

@@ -58,7 +58,7 @@ export function PageRow({ margin, children, className }: { margin?: ReactNode; c
 /** The sentence of the page: what matters, first. */
 export function PageSentence({ margin, actions, children }: { margin?: ReactNode; actions?: ReactNode; children: ReactNode }) {
   return (
-    <section className="page-row page-head sentence">
+    <section className="page-row page-head with-sentence">
       <div className="margin">{margin}</div>
       <div className="body">
         <h1 className="say flex-1">{children}</h1>
