@@ -148,6 +148,7 @@ export const liquidAnswer = z.object({
 });
 
 export const liquidPage = pageOf(liquidAnswer);
+export const liquidCreated = z.object({ id: z.string(), letter: z.string() });
 
 export type LiquidAnswer = z.output<typeof liquidAnswer>;
 export type LiquidQuery = z.output<typeof liquidQuery>;

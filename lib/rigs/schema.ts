@@ -117,6 +117,9 @@ export const rigAnswer = z.object({
 
 export const rigPage = pageOf(rigAnswer);
 
+export const heldAnswer = z.object({ holdId: z.string() });
+export const wasteAnswer = z.object({ wasteMl: z.number() });
+
 export const tokenAnswer = z.object({
   id: z.string(),
   name: z.string(),

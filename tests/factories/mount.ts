@@ -15,5 +15,6 @@ export async function buildMount(given: Given = {}): Promise<Mount> {
      values ($1, $2, $3, tstzrange($4, $5, '[)'), $6, $4) returning id`,
     [sensorId, rigId, given.position ?? 1, given.from ?? now, given.to ?? null, given.mountedBy ?? null],
   );
-  return Mount.findByPk(made?.id, { rejectOnEmpty: true });
+  if (!made) throw new Error("no mount was made");
+  return Mount.findByPk(made.id, { rejectOnEmpty: true });
 }
