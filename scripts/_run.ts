@@ -1,1 +1,0 @@
-import {run} from "@/scripts/bench/fits"; run().then(r=>console.log(r[0].value));
