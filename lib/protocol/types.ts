@@ -1,4 +1,4 @@
-import type { Definition } from "./schema";
+import type { Definition, FillBlock, LeafBlock, SettleBlock } from "./schema";
 
 /** What `next` needs to know of the world. Plain data, gathered by the caller; protocol time is rig time. */
 export type Facts = {
@@ -38,18 +38,52 @@ export type PhaseFacts = {
   unusable: number;
 };
 
-export type Cell = { content: "air" | "unknown" } | { content: "liquid"; slot: string; volumeMl: number; sinceMs: number };
+/** What is in the cell. `by` says what brought the liquid: only a `fill` is made again after parking. */
+export type Cell =
+  | { content: "air" | "unknown" }
+  | { content: "liquid"; slot: string; volumeMl: number; sinceMs: number; by?: FillBlock };
 
-/** One turn of a container on the way to the present block, or the block itself (last). Ids survive versions, places in a list need not. */
-export type PathEntry = { id: string; turn?: number; stage?: "blocks" | "measure" };
+/**
+ * One turn of a container on the way to the present block, or the block itself (last). Ids survive versions, places in a
+ * list need not. The marks from `pending` on belong to the last entry only.
+ */
+export type PathEntry = {
+  id: string;
+  turn?: number;
+  stage?: "blocks" | "measure";
+  /** On an `untilClean`: a person let it pass. */
+  passed?: true;
+  /** The block has not been made (again) yet; without it the path stands on the step last made. */
+  pending?: true;
+  /** Its effect on the cell and the set-point has been taken into the cursor. */
+  booked?: true;
+  /** The step made, or to be made next, is the search for the resonance, not the measurement itself. */
+  find?: true;
+  /** 2 where the measurement is made once more because its first run was unusable. */
+  attempt?: 2;
+};
 
-/** A way off the main line: what runs there, where it stands, and how often it was taken. */
+/** What a place in the protocol counts on: what is in the cell, and the `settle` that was last done (with its temperature). */
+export type CellState = { cell: Cell; settled: SettleBlock | null };
+
+/** Why a step is there that the protocol's main line does not name. */
+export type DetourKind = "park" | "cleanAgain" | "reference" | "restore" | "find" | "again";
+
+/** A way off the main line: what runs there and where it stands. The last in the list is the one under way. */
 export type Detour = {
-  kind: "park" | "cleanAgain" | "reference" | "find" | "again";
+  kind: "park" | "cleanAgain" | "reference" | "restore";
   path: PathEntry[];
-  /** The `measure` block that the detour serves or repeats. */
+  /** The cycle its steps belong to. */
+  cycle: number;
+  /** The limits that asked for `cleanAgain`, also on the reference that follows it. */
+  limitIds?: string[];
+  /** On `reference`: the block to measure, and the medium that its `each` stands for. */
   measureId?: string;
-  limitId?: string;
+  medium?: string;
+  /** On `restore`: what the place it returns to counts on. */
+  wanted?: CellState;
+  /** On `restore`, once it is under way: the blocks that bring it about. */
+  blocks?: LeafBlock[];
 };
 
 /** Where a campaign stands. Small JSON; stored with the step that it led to, in one transaction. */
@@ -65,10 +99,26 @@ export type Cursor = {
   cell: Cell;
   /** Set by `settle`, null before the first. */
   setPointC: number | null;
+  /** The `settle` that brought the set-point, its temperature resolved. */
+  settled?: SettleBlock | null;
+  /** Cell and set-point as the present cycle began. */
+  cycleStart?: CellState;
+  /** The first reference measured at the set-point it names. */
+  reference?: { measureId: string; medium: string; setPointC: number | null };
+  /** Limits that asked for `cleanAgain` and wait for the next phase boundary. */
+  due?: { limitId: string; maxTimes: number }[];
+  /** Turns of `cleanAgain` taken, by limit id, since that limit last was kept in the medium where it was broken. */
+  cleanedAgain: Record<string, { times: number; medium: string }>;
+  /** Why `next` last answered with a hold. */
+  held?: "failure" | "untilClean" | "cleanAgain";
+  /** Since a park began: what was there before. `begun` once a step of it was made. */
+  parked?: CellState & { begun: boolean };
+  /** Carried out by the following `next`. */
+  redirection?: Exclude<Redirection, { kind: "cleanAgain" }>;
+  /** The main line is at its end, a detour may still be under way. */
+  ended?: true;
   /** Set when everything has been done. */
-  finished?: boolean;
-  /** Turns of `cleanAgain` taken, by limit id, since that limit last was kept. */
-  cleanedAgain: Record<string, number>;
+  finished?: true;
 };
 
 export type SweepParams = { startHz: number; stopHz: number; points: number; dwellS: number; driveV: number };
@@ -79,8 +129,7 @@ type StepBase = {
   cycle: number;
   setPointC: number | null;
   label: string;
-  /** Why a step is there that the protocol's main line does not name. */
-  detour?: Detour["kind"];
+  detour?: DetourKind;
 };
 
 /** A step as the interpreter makes it; the caller adds port and lot of a slot. */
