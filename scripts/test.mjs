@@ -17,7 +17,7 @@ Object.assign(process.env, {
   LONGREED_TEST_RUN: home,
   LONGREED_DIST_DIR: distDir,
   LONGREED_FULL: process.argv.includes("--full") ? "1" : "",
-  ...(process.stdout.isTTY && { FORCE_COLOR: "1" }),
+  [process.stdout.isTTY ? "FORCE_COLOR" : "NO_COLOR"]: "1",
 });
 /** @type {(() => Promise<void>) | undefined} */
 let stopDatabase;

@@ -5,7 +5,7 @@ import { PlainError, run } from "./run.mjs";
 
 /** What no page is made of. */
 const outside = new Set(
-  "node_modules data coverage tests scripts docs migrations rig-simulator next-env.d.ts eslint.config.mjs vitest.config.ts".split(" "),
+  "node_modules data coverage tests scripts docs migrations rig-simulator next-env.d.ts eslint.config.mjs vitest.config.mts".split(" "),
 );
 
 /**
