@@ -1,0 +1,60 @@
+import type { Step } from "../contract";
+import type { Session } from "./session";
+
+/** After these pauses the rig asks whether a date is all that is waited for; together some 4 s. */
+const watchMs = [40, 80, 160, 320, 640, 1280, 1500];
+
+/**
+ * Asks for the next step; undefined when there is none for now. A fast clock that has only a date to wait for jumps there; another
+ * asks again when the date has come.
+ */
+export async function ask(session: Session): Promise<Step | undefined> {
+  const { rig, client, server } = session;
+  if (!rig.isFast) {
+    const step = await client.next(waitFor(session), rig.reportedClock(), session.signal);
+    if (!step) await session.tryBeat();
+    return step;
+  }
+
+  for (;;) {
+    const poll = new AbortController();
+    const jumped = new Jumped();
+    const watching = watch(session, () => poll.abort(jumped), poll.signal);
+    try {
+      return await client.next(server.waitS, rig.reportedClock(), AbortSignal.any([session.signal, poll.signal]));
+    } catch (error) {
+      if (error !== jumped) throw error;
+    } finally {
+      poll.abort(new Jumped());
+      await watching;
+    }
+  }
+}
+
+/** The clock has moved on, so the poll must tell it. */
+class Jumped extends Error {}
+
+async function watch(session: Session, onJump: () => void, signal: AbortSignal): Promise<void> {
+  const { rig } = session;
+  try {
+    for (let i = 0; !signal.aborted; i++) {
+      await session.sleep(watchMs[i] ?? session.server.heartbeatS * 1000, signal);
+      await session.tryBeat();
+      if (signal.aborted) return;
+      if (session.dueAtMs !== undefined && session.dueAtMs > rig.clock.nowMs()) {
+        rig.jumpTo(session.dueAtMs);
+        onJump();
+        return;
+      }
+    }
+  } catch {
+    // The poll was answered, or the session ended: `ask` knows.
+  }
+}
+
+/** Whole seconds of real time until the date that is waited for, at most what the server allows. */
+function waitFor({ rig, dueAtMs, server }: Session): number {
+  if (dueAtMs === undefined) return server.waitS;
+  const factor = rig.speed.kind === "times" ? rig.speed.factor : 1;
+  return Math.min(server.waitS, Math.max(0, Math.ceil((dueAtMs - rig.clock.nowMs()) / 1000 / factor)));
+}

@@ -1,0 +1,100 @@
+import { FluidRangeError } from "@/lib/fluids/fluid-range-error";
+import type { Outcome, Step } from "../contract";
+import { stepName, type World } from "../world";
+import { ask } from "./ask";
+import { Refused } from "./client";
+import { Crash } from "./faults";
+import { measure } from "./measure";
+import { moveLiquid, settle } from "./physical";
+import { Session, SessionLost, type SessionOptions } from "./session";
+import { Superseded } from "./uploader";
+
+export type AgentOptions = SessionOptions & { untilIdle?: boolean };
+
+const afterCrashMs = 500;
+const afterRefusalMs = 1000;
+const otherAgentMs = 10_000;
+
+/**
+ * Drives a rig until the signal is aborted, or until there is nothing to do: hello, then step after step. A crash loses the session and
+ * all memory and starts over. Throws `Refused` when the server does not know the token.
+ */
+export async function runAgent(options: AgentOptions): Promise<void> {
+  const { log, signal, sleep } = options;
+  while (!signal.aborted) {
+    const session = new Session(options);
+    try {
+      await session.open();
+      log(`connected as ${session.server.rig.name}`);
+      await work(session, options.untilIdle ?? false);
+      return;
+    } catch (error) {
+      if (signal.aborted) return;
+      const pauseMs = pauseAfter(error);
+      if (pauseMs === undefined) throw error;
+      log(`${(error as Error).message}; starting again`);
+      await (sleep ?? session.sleep)(options.rig.isFast && error instanceof Crash ? 0 : pauseMs, signal).catch(() => undefined);
+    } finally {
+      session.close(new SessionLost("the session is over"));
+    }
+  }
+}
+
+/** How long to wait before the next hello, or undefined where no hello helps. */
+function pauseAfter(error: unknown): number | undefined {
+  if (error instanceof Crash) return afterCrashMs;
+  if (error instanceof SessionLost) return otherAgentMs;
+  if (error instanceof Refused && error.code === "other-agent") return otherAgentMs;
+  return undefined;
+}
+
+async function work(session: Session, untilIdle: boolean): Promise<void> {
+  const incomplete: Incomplete = new Map();
+  for (;;) {
+    const step = await ask(session);
+    if (step) await perform(session, (incomplete.get(stepName(step)) ?? 0) > 1 ? fromTheStart(step) : step, incomplete);
+    else if (untilIdle && session.dueAtMs === undefined) return;
+  }
+}
+
+/** How often the server found readings missing at a step's end. The second time all are sent again: known ones do no harm. */
+type Incomplete = Map<string, number>;
+
+const fromTheStart = (step: Step): Step => ({ ...step, missing: undefined, resumeFrom: 0 });
+
+async function perform(session: Session, step: Step, incomplete: Incomplete): Promise<void> {
+  const { rig, client, log } = session;
+  const start = rig.begin(step);
+  session.take(step);
+  log(`step ${step.sequence}: ${step.label || step.kind}${step.attempt > 1 ? `, attempt ${step.attempt}` : ""}`);
+  try {
+    const outcome = await carryOut(session, step, start);
+    if (outcome.outcome === "done") rig.done(step);
+    if (outcome.outcome === "failed") log(`step ${step.sequence} failed: ${outcome.failure.message}`);
+    session.release(outcome.outcome === "failed" ? outcome.failure.message : undefined);
+    await client.finish(step.id, step.lease, outcome);
+  } catch (error) {
+    session.release();
+    if (error instanceof Superseded) return log(`step ${step.sequence}: ${error.message}`);
+    if (!(error instanceof Refused) || error.code === "other-agent" || error.status === 401 || error.status === 403) throw error;
+    log(`step ${step.sequence}: ${error.message}`);
+    if (error.status === 422) incomplete.set(stepName(step), (incomplete.get(stepName(step)) ?? 0) + 1);
+    if (error.status !== 409) await session.sleep(afterRefusalMs, session.signal);
+  }
+}
+
+async function carryOut(session: Session, step: Step, start: World): Promise<Outcome> {
+  try {
+    switch (step.kind) {
+      case "measure":
+        return await measure(session, step, start);
+      case "settle":
+        return await settle(session, step, start);
+      default:
+        return await moveLiquid(session, step, start);
+    }
+  } catch (error) {
+    if (!(error instanceof FluidRangeError)) throw error;
+    return { outcome: "failed", failure: { code: "instrument", message: error.message, retry: false } };
+  }
+}
