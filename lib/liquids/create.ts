@@ -22,7 +22,7 @@ type NewLiquid = {
   hazards?: Hazards;
 };
 
-export function createLiquid({ by, now, name, letter, model, massFraction, table, hazards = {} }: NewLiquid): Promise<{ id: string; letter: string }> {
+export async function createLiquid({ by, now, name, letter, model, massFraction, table, hazards = {} }: NewLiquid): Promise<{ id: string; letter: string }> {
   demand(by, "edit liquids");
   return inTransaction(async (transaction) => {
     // Two liquids made at once would choose the same letter.

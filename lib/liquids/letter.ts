@@ -12,6 +12,7 @@ export function chooseLetter(name: string, taken: ReadonlySet<string>): string |
   const initials = (plain.match(/[A-Z]+/g) ?? []).map((word) => word.charAt(0));
   const [first = "L"] = initials;
   const candidates = [
+    first,
     ...initials,
     ...letters,
     ...DIGITS.map((digit) => first + digit),

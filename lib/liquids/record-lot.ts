@@ -14,7 +14,7 @@ import { Lot } from "@/models/lot";
 type NewLot = { by: Actor; now: Date; liquidId: string; code: string; receivedAt?: Date; expiresAt?: Date; certificate?: CertificateRow[] };
 
 /** Records one delivered bottle of a liquid. */
-export function recordLot({ by, now, liquidId, code, receivedAt, expiresAt, certificate = [] }: NewLot): Promise<{ id: string }> {
+export async function recordLot({ by, now, liquidId, code, receivedAt, expiresAt, certificate = [] }: NewLot): Promise<{ id: string }> {
   demand(by, "edit liquids");
   return inTransaction(async (transaction) => {
     const liquid = await Liquid.findByPk(liquidId, { transaction, lock: transaction.LOCK.SHARE });
@@ -32,7 +32,7 @@ export function recordLot({ by, now, liquidId, code, receivedAt, expiresAt, cert
 type LotChange = { by: Actor; now: Date; lotId: string; receivedAt?: Date | null; expiresAt?: Date | null; certificate?: CertificateRow[] };
 
 /** Corrects dates or the certificate of a lot; what stood before is in the audit log. */
-export function updateLot({ by, now, lotId, ...wanted }: LotChange): Promise<LotAnswer> {
+export async function updateLot({ by, now, lotId, ...wanted }: LotChange): Promise<LotAnswer> {
   demand(by, "edit liquids");
   return inTransaction(async (transaction) => {
     const lot = await Lot.findByPk(lotId, { transaction, lock: transaction.LOCK.UPDATE });

@@ -13,7 +13,7 @@ import { Liquid } from "@/models/liquid";
 type LiquidChange = { by: Actor; now: Date; liquidId: string; name?: string; letter?: string; hazards?: Hazards; retired?: boolean };
 
 /** Changes name, letter or hazards (which are replaced whole). A liquid that stands on a port or that an open campaign needs is not retired. */
-export function updateLiquid({ by, now, liquidId, name, letter, hazards, retired }: LiquidChange): Promise<LiquidAnswer> {
+export async function updateLiquid({ by, now, liquidId, name, letter, hazards, retired }: LiquidChange): Promise<LiquidAnswer> {
   demand(by, "edit liquids");
   return inTransaction(async (transaction) => {
     const liquid = await Liquid.findByPk(liquidId, { transaction, lock: transaction.LOCK.UPDATE });

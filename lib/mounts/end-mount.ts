@@ -8,7 +8,7 @@ import { demand, type Actor } from "@/lib/people/actor";
 type Ending = { by: Actor; now: Date; mountId: string; endedAt?: Date; note?: string };
 
 /** Records that a sensor was taken out of its rig; a campaign that uses it there waits until it is back. */
-export function endMount({ by, now, mountId, endedAt = now, note }: Ending): Promise<{ id: string }> {
+export async function endMount({ by, now, mountId, endedAt = now, note }: Ending): Promise<{ id: string }> {
   demand(by, "record mounts");
   if (endedAt > now) throw impossible("A mount cannot end in the future", { errors: [{ path: "endedAt", message: "lies in the future" }] });
   return inTransaction(async (transaction) => {

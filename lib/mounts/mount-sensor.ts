@@ -16,7 +16,7 @@ type Mounting = { by: Actor; now: Date; sensorId: string; rigId: string; positio
  * Records that a sensor was clamped in a rig. What it was clamped in before ends there; a campaign that used it on another rig
  * waits until it is back. A mount task for this sensor on this rig is answered by it, and the rig's campaign goes on with a new baseline.
  */
-export function mountSensor({ by, now, sensorId, rigId, position = 1, mountedAt = now, note }: Mounting): Promise<{ id: string }> {
+export async function mountSensor({ by, now, sensorId, rigId, position = 1, mountedAt = now, note }: Mounting): Promise<{ id: string }> {
   demand(by, "record mounts");
   if (mountedAt > now) throw impossible("A mount cannot lie in the future", { errors: [{ path: "mountedAt", message: "lies in the future" }] });
   return inTransaction(async (transaction) => {

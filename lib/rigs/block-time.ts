@@ -14,7 +14,7 @@ import { Rig } from "@/models/rig";
 type NewBlock = { by: Actor; now: Date; rigId: string; from: Date; to: Date; why: string };
 
 /** Keeps a rig free for service from one time to another. Two such times may not overlap. */
-export function blockTime({ by, now, rigId, from, to, why }: NewBlock): Promise<{ id: string }> {
+export async function blockTime({ by, now, rigId, from, to, why }: NewBlock): Promise<{ id: string }> {
   demand(by, "edit rigs");
   if (from >= to) throw impossible("The time must end after it begins", { errors: [{ path: "to", message: "is not after the beginning" }] });
   return inTransaction(async (transaction) => {
@@ -37,7 +37,7 @@ export function blockTime({ by, now, rigId, from, to, why }: NewBlock): Promise<
 }
 
 /** Withdraws a blocked time; it stays in the record. */
-export function unblockTime({ by, now, windowId }: { by: Actor; now: Date; windowId: string }): Promise<{ id: string }> {
+export async function unblockTime({ by, now, windowId }: { by: Actor; now: Date; windowId: string }): Promise<{ id: string }> {
   demand(by, "edit rigs");
   return inTransaction(async (transaction) => {
     const changed = await change("update maintenance_window set withdrawn_at = $2 where id = $1 and withdrawn_at is null", [windowId, now], transaction);

@@ -17,7 +17,7 @@ type NewRig = {
 };
 
 /** Makes a rig with its ports, all empty. */
-export function createRig({ by, now, ports, clock = "real", ...given }: NewRig): Promise<{ id: string }> {
+export async function createRig({ by, now, ports, clock = "real", ...given }: NewRig): Promise<{ id: string }> {
   demand(by, "edit rigs");
   return inTransaction(async (transaction) => {
     const rig = await refuseDouble("rig_name_key", `There is already a rig called ${given.name}; choose another name`, () =>

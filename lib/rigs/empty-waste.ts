@@ -7,7 +7,7 @@ import { fulfilTasks } from "@/lib/tasks/fulfil-tasks";
 import { Rig } from "@/models/rig";
 
 /** The waste container was emptied; tasks that asked for it are answered by that. */
-export function emptyWaste({ by, now, rigId }: { by: Actor; now: Date; rigId: string }): Promise<{ wasteMl: number }> {
+export async function emptyWaste({ by, now, rigId }: { by: Actor; now: Date; rigId: string }): Promise<{ wasteMl: number }> {
   demand(by, "record loads");
   return inTransaction(async (transaction) => {
     const rig = await Rig.findByPk(rigId, { transaction, lock: transaction.LOCK.UPDATE });

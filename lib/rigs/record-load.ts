@@ -28,7 +28,7 @@ type LotOnPort = { lotId: string; code: string; liquidId: string; liquidName: st
  * Records a bottle put on a port or topped up. A top up takes the same lot only. While a campaign draws from the port,
  * another liquid is refused, and another lot of the same liquid needs a confirmation and stands in the campaign's log.
  */
-export function recordLoad({ by, now, rigId, port, lotId, volumeMl, how, confirm = false }: NewLoad): Promise<{ id: string }> {
+export async function recordLoad({ by, now, rigId, port, lotId, volumeMl, how, confirm = false }: NewLoad): Promise<{ id: string }> {
   demand(by, "record loads");
   return inTransaction(async (transaction) => {
     const rig = await Rig.findByPk(rigId, { transaction, lock: transaction.LOCK.UPDATE });

@@ -14,7 +14,7 @@ type TakeOver = { by: Actor; now: Date; rigId: string; why?: string };
 type GiveBack = { by: Actor; now: Date; rigId: string; note?: string };
 
 /** A person works at the rig by hand: its campaign is held, no step goes out until the rig is given back. Taking over again changes nothing. */
-export function takeOverRig({ by, now, rigId, why }: TakeOver): Promise<{ holdId: string }> {
+export async function takeOverRig({ by, now, rigId, why }: TakeOver): Promise<{ holdId: string }> {
   demand(by, "take over rigs");
   return inTransaction(async (transaction) => {
     const rig = await lockedRig(rigId, transaction);
@@ -35,7 +35,7 @@ export function takeOverRig({ by, now, rigId, why }: TakeOver): Promise<{ holdId
 }
 
 /** Ends a take-over: the campaign runs on unless something else holds it. */
-export function giveBackRig({ by, now, rigId, note }: GiveBack): Promise<{ holdId: string }> {
+export async function giveBackRig({ by, now, rigId, note }: GiveBack): Promise<{ holdId: string }> {
   demand(by, "take over rigs");
   return inTransaction(async (transaction) => {
     const rig = await lockedRig(rigId, transaction);

@@ -13,7 +13,7 @@ import { Rig } from "@/models/rig";
 type NewAgentToken = { by: Actor; now: Date; rigId: string; name: string };
 
 /** Makes a token for a rig's agent. The answer is the only place where the token ever stands; its hash is kept. */
-export function createAgentToken({ by, now, rigId, name }: NewAgentToken): Promise<{ id: string; token: string }> {
+export async function createAgentToken({ by, now, rigId, name }: NewAgentToken): Promise<{ id: string; token: string }> {
   demand(by, "agent tokens");
   return inTransaction(async (transaction) => {
     const rig = await Rig.findByPk(rigId, { transaction, lock: transaction.LOCK.SHARE });
@@ -29,7 +29,7 @@ export function createAgentToken({ by, now, rigId, name }: NewAgentToken): Promi
 type Revocation = { by: Actor; now: Date; rigId: string; tokenId: string };
 
 /** Withdraws a token: the agent that uses it is refused from its next call on, and its session ends. Again changes nothing. */
-export function revokeAgentToken({ by, now, rigId, tokenId }: Revocation): Promise<{ id: string }> {
+export async function revokeAgentToken({ by, now, rigId, tokenId }: Revocation): Promise<{ id: string }> {
   demand(by, "agent tokens");
   return inTransaction(async (transaction) => {
     const token = await AgentToken.findOne({ where: { id: tokenId, rigId }, transaction, lock: transaction.LOCK.UPDATE });

@@ -23,7 +23,7 @@ type RigChange = {
 };
 
 /** Changes what may still change of a rig; an open campaign keeps its time zone and keeps it from being retired. */
-export function updateRig({ by, now, rigId, retired, ...wanted }: RigChange): Promise<RigAnswer> {
+export async function updateRig({ by, now, rigId, retired, ...wanted }: RigChange): Promise<RigAnswer> {
   demand(by, "edit rigs");
   return inTransaction(async (transaction) => {
     const rig = await Rig.findByPk(rigId, { transaction, lock: transaction.LOCK.UPDATE });

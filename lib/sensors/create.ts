@@ -17,7 +17,7 @@ type NewSensor = {
   note?: string;
 };
 
-export function createSensor({ by, now, ...given }: NewSensor): Promise<{ id: string }> {
+export async function createSensor({ by, now, ...given }: NewSensor): Promise<{ id: string }> {
   demand(by, "edit sensors");
   return inTransaction(async (transaction) => {
     const { id } = await refuseDouble("sensor_serial_key", `There is already a sensor ${given.serial}`, () =>

@@ -21,7 +21,7 @@ type SensorChange = {
 };
 
 /** Changes what may still change of a sensor. It is not retired while it is mounted or a campaign needs it. */
-export function updateSensor({ by, now, sensorId, retired, ...wanted }: SensorChange): Promise<SensorAnswer> {
+export async function updateSensor({ by, now, sensorId, retired, ...wanted }: SensorChange): Promise<SensorAnswer> {
   demand(by, "edit sensors");
   return inTransaction(async (transaction) => {
     const sensor = await Sensor.findByPk(sensorId, { transaction, lock: transaction.LOCK.UPDATE });
