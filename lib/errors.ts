@@ -58,5 +58,5 @@ export const impossible = (message: string, members?: Record<string, unknown>, c
 export const tooMany = (message: string, retryAfterS: number) =>
   new AppError(message, { code: "too-many-requests", status: 429, title: "Too many requests", retryAfterS });
 
-export const away = (message: string, retryAfterS = 5) =>
-  new AppError(message, { code: "unavailable", status: 503, title: "Not available for the moment", retryAfterS });
+export const away = (message: string, retryAfterS = 5, members?: Record<string, unknown>) =>
+  new AppError(message, { code: "unavailable", status: 503, title: "Not available for the moment", retryAfterS, members });

@@ -6,6 +6,9 @@ const { serverUrl, template } = inject("postgres");
 const name = `longreed_${randomUUID().replaceAll("-", "")}`;
 await createDatabase(serverUrl, name, template);
 process.env.DATABASE_URL = urlOf(serverUrl, name);
+process.env.AUTH_SECRET = "a secret of the tests, of no use elsewhere";
+process.env.APP_URL = "https://longreed.example";
+process.env.SMTP_URL = "smtp://127.0.0.1:1";
 
 // Hooks run last to first: the test file has closed its own connections by then.
 afterAll(() => dropDatabase(serverUrl, name));

@@ -1,0 +1,16 @@
+import type { ReactNode } from "react";
+import { QueryProvider } from "@/components/query-provider";
+import { Page } from "@/components/ui/page";
+import { env } from "@/lib/env";
+import { currentPerson } from "@/lib/people/current-person";
+import { getMe } from "@/lib/people/me";
+import { TopOfPage } from "./top-of-page";
+
+export default async function AppLayout({ children }: { children: ReactNode }) {
+  const me = await getMe({ by: await currentPerson(), now: new Date() });
+  return (
+    <QueryProvider>
+      <Page masthead={<TopOfPage me={me} demo={env().LONGREED_DEMO} />}>{children}</Page>
+    </QueryProvider>
+  );
+}

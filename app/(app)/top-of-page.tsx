@@ -1,0 +1,34 @@
+"use client";
+
+import { useQuery } from "@tanstack/react-query";
+import { useRouter } from "next/navigation";
+import { signOut } from "next-auth/react";
+import { Masthead } from "@/components/ui/masthead";
+import { MORE_PLACES } from "@/components/ui/places";
+import { meOptions } from "@/lib/people/client";
+import type { MeAnswer } from "@/lib/people/schema";
+import { may, type Permission } from "@/lib/permissions";
+
+const NEEDS: Readonly<Record<string, Permission>> = { "/people": "people", "/audit": "audit log", "/import": "edit campaigns" };
+
+/** The masthead with who is signed in, kept fresh. */
+export function TopOfPage({ me, demo }: { me: MeAnswer; demo: boolean }) {
+  const router = useRouter();
+  const { data } = useQuery({ ...meOptions(), initialData: me });
+  const leave = async () => {
+    await signOut({ redirect: false });
+    router.replace("/sign-in");
+    router.refresh();
+  };
+  return (
+    <Masthead
+      now={data.serverTime}
+      zone={data.laboratory.timeZone}
+      person={{ name: data.name, role: data.role }}
+      alarms={data.alarms}
+      more={MORE_PLACES.filter(({ href }) => !NEEDS[href] || may(data.role, NEEDS[href]))}
+      demo={demo && <><b>A demo laboratory.</b> Rigs, liquids and people are invented; mail goes nowhere.</>}
+      onSignOut={() => void leave()}
+    />
+  );
+}

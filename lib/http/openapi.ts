@@ -1,0 +1,166 @@
+import { z } from "zod";
+import type { Operation } from "@/lib/http/operation";
+
+type Json = Record<string, unknown>;
+
+const METHODS = ["GET", "POST", "PUT", "PATCH", "DELETE"] as const;
+type Method = (typeof METHODS)[number];
+
+/** One route file: its address as a template, and the operations that it exports by method. */
+export type DocumentedRoute = { path: string; operations: Partial<Record<Method, Operation>> };
+
+/** The operations among what a route module exports. */
+export function operationsOf(module: Record<string, unknown>): DocumentedRoute["operations"] {
+  const found: DocumentedRoute["operations"] = {};
+  for (const method of METHODS) {
+    const handler = module[method];
+    if (typeof handler === "function" && "operation" in handler) found[method] = handler.operation as Operation;
+  }
+  return found;
+}
+
+/** `campaigns/[id]/hold/route.ts` under `app/api` → `/api/campaigns/{id}/hold`. */
+export const pathOf = (file: string): string => `/api/${file.replace(/\/?route\.ts$/, "").replaceAll(/\[(\w+)\]/g, "{$1}")}`;
+
+/** OpenAPI 3.1 of all routes, from the schemas that validate them. */
+export function openApiDocument(routes: readonly DocumentedRoute[], server: string): Json {
+  const components: Record<string, unknown> = { Problem: PROBLEM };
+  const paths: Record<string, Json> = {};
+  for (const { path, operations } of routes.toSorted((a, b) => (a.path < b.path ? -1 : 1))) {
+    const entries = Object.entries(operations).map(([method, operation]) => [
+      method.toLowerCase(),
+      describe(path, method as Method, operation, components),
+    ]);
+    if (entries.length > 0) paths[path] = Object.fromEntries(entries);
+  }
+  return {
+    openapi: "3.1.0",
+    info: {
+      title: "Longreed",
+      version: "1",
+      description:
+        "Two faces: /api/agent for rig agents, the rest for people and scripts. Changes are additive; unknown answer fields are to be ignored. " +
+        "Times are RFC 3339 in UTC, units stand in the names. Errors are application/problem+json (RFC 9457).",
+    },
+    servers: [{ url: server }],
+    paths,
+    components: {
+      schemas: components,
+      securitySchemes: {
+        agent: { type: "http", scheme: "bearer", description: "The rig's agent token" },
+        token: { type: "http", scheme: "bearer", description: "A personal access token" },
+        session: { type: "apiKey", in: "cookie", name: "longreed-session", description: "The browser's session; changes need an Origin of Longreed itself" },
+      },
+    },
+  };
+}
+
+function describe(path: string, method: Method, operation: Operation, components: Record<string, unknown>): Json {
+  const { access, summary, description, status } = operation;
+  const id = operationId(method, path);
+  const agent = access === "agent";
+  const schemaOf = (schema: z.ZodType, io: "input" | "output", part: string) => jsonSchema(schema, io, `${id}_${part}`, components);
+  const content = (schema: unknown, types: readonly string[]) => Object.fromEntries(types.map((type) => [type, { schema }]));
+
+  const parameters = [
+    ...pathParameters(path, operation, schemaOf),
+    ...(operation.query ? parametersOf(schemaOf(operation.query, "input", "query"), "query") : []),
+    ...(agent ? [header("Agent-Session", "The session that hello gave; without it there is one implicit session", 64)] : []),
+    ...(!agent && method === "POST" && access !== "public"
+      ? [header("Idempotency-Key", "The same key again gets the first answer, for 30 days; with another body 422", 255)]
+      : []),
+  ];
+  const answer = operation.answer
+    ? content(schemaOf(operation.answer, "output", "answer"), ["application/json"])
+    : content({}, operation.produces ?? ["application/json"]);
+  const extra = operation.answer && operation.produces ? content({ type: "string" }, operation.produces) : {};
+  const empty = !operation.answer && !operation.produces;
+
+  return {
+    operationId: id,
+    summary,
+    ...(description && { description }),
+    tags: [agent ? "Rig agents" : (path.split("/")[2] ?? "api")],
+    "x-access": access,
+    security: access === "public" ? [] : agent ? [{ agent: [] }] : [{ session: [] }, { token: [] }],
+    ...(parameters.length > 0 && { parameters }),
+    ...((operation.body || operation.consumes) && {
+      requestBody: {
+        content: content(operation.body ? schemaOf(operation.body, "input", "body") : {}, [operation.consumes ?? "application/json"]),
+      },
+    }),
+    responses: {
+      [empty && status === 200 ? "204" : String(status)]: { description: summary, ...(!empty && { content: { ...answer, ...extra } }) },
+      default: { description: "A problem, see its type", content: { "application/problem+json": { schema: { $ref: "#/components/schemas/Problem" } } } },
+    },
+  };
+}
+
+const header = (name: string, description: string, maxLength: number): Json => ({
+  name,
+  in: "header",
+  required: false,
+  description,
+  schema: { type: "string", maxLength },
+});
+
+function pathParameters(path: string, { params }: Operation, schemaOf: (schema: z.ZodType, io: "input", part: string) => Json): Json[] {
+  const given = params ? parametersOf(schemaOf(params, "input", "params"), "path") : [];
+  const missing = [...path.matchAll(/\{(\w+)\}/g)].map(([, name]) => name).filter((name) => !given.some((parameter) => parameter.name === name));
+  return [...given, ...missing.map((name) => ({ name, in: "path", required: true, schema: { type: "string" } }))];
+}
+
+function parametersOf(schema: Json, where: "path" | "query"): Json[] {
+  const required = Array.isArray(schema.required) ? schema.required : [];
+  return Object.entries((schema.properties ?? {}) as Record<string, Json>).map(([name, property]) => ({
+    name,
+    in: where,
+    required: where === "path" || (required.includes(name) && property.default === undefined),
+    schema: property,
+  }));
+}
+
+const operationId = (method: string, path: string) =>
+  method.toLowerCase() + path.slice(4).replaceAll(/[/{}.-]+(\w?)/g, (_, letter: string) => letter.toUpperCase());
+
+/**
+ * A zod schema as JSON Schema 2020-12. What the schema defines for itself (recursion, schemas with an id) moves to the
+ * document's components, where references resolve.
+ */
+function jsonSchema(schema: z.ZodType, io: "input" | "output", name: string, components: Record<string, unknown>): Json {
+  const made = z.toJSONSchema(schema, { io, unrepresentable: "any" }) as Json;
+  const { $schema: _, $defs, ...own } = made;
+  const rename = (key: string) => (key.startsWith("__schema") ? `${name}_${key.slice(8)}` : key);
+  const root = JSON.stringify(own).includes('"$ref":"#"');
+  const moved = (value: unknown): unknown => {
+    if (Array.isArray(value)) return value.map(moved);
+    if (typeof value !== "object" || value === null) return value;
+    return Object.fromEntries(
+      Object.entries(value).map(([key, inner]) => {
+        if (key !== "$ref" || typeof inner !== "string") return [key, moved(inner)];
+        const target = inner === "#" ? name : rename(inner.replace("#/$defs/", ""));
+        return [key, `#/components/schemas/${target}`];
+      }),
+    );
+  };
+  for (const [key, definition] of Object.entries(($defs ?? {}) as Json)) components[rename(key)] = moved(definition);
+  if (!root) return moved(own) as Json;
+  components[name] = moved(own);
+  return { $ref: `#/components/schemas/${name}` };
+}
+
+const PROBLEM: Json = {
+  type: "object",
+  description: "RFC 9457. `type` is /problems/<code>; further members by code.",
+  required: ["type", "title", "status", "detail"],
+  properties: {
+    type: { type: "string" },
+    title: { type: "string" },
+    status: { type: "integer" },
+    detail: { type: "string" },
+    errors: {
+      type: "array",
+      items: { type: "object", required: ["path", "message"], properties: { path: { type: "string" }, message: { type: "string" } } },
+    },
+  },
+};
