@@ -33,7 +33,7 @@ export function identifyNoise(
   m: number,
   lowest: -2 | -4 = -2,
 ): IdentifiedNoise | undefined {
-  let series = stretches.filter((y) => y.length >= fewestAverages * m).map((y) => withoutLine(averages(y, m)));
+  let series = stretches.filter((y) => y.length >= fewestAverages * m).map((y) => takeLineOff(averages(y, m)));
 
   for (let differences = 0; ; differences++) {
     const r1 = pooledLagOne(series);
@@ -43,7 +43,7 @@ export function identifyNoise(
       const alpha = Math.max(lowest, Math.min(2, 0 - Math.round(2 * delta) - 2 * differences));
       return { alpha: alpha as Alpha, r1, delta, differences };
     }
-    series = series.map((z) => z.subarray(1).map((value, i) => value - z[i]));
+    series = series.map(differenceInPlace);
   }
 }
 
@@ -57,27 +57,40 @@ function averages(y: Float64Array, m: number): Float64Array {
   return means;
 }
 
-function withoutLine(z: Float64Array): Float64Array {
+/** Over z itself, which is returned. */
+function takeLineOff(z: Float64Array): Float64Array {
   const middle = (z.length - 1) / 2;
-  let mean = 0;
+  let sum = 0;
   let products = 0;
-  let squares = 0;
   for (let i = 0; i < z.length; i++) {
-    mean += z[i] / z.length;
+    sum += z[i];
     products += (i - middle) * z[i];
-    squares += (i - middle) ** 2;
   }
-  return z.map((value, i) => value - mean - (products / squares) * (i - middle));
+  const mean = sum / z.length;
+  const slope = products / ((z.length * (z.length ** 2 - 1)) / 12);
+  for (let i = 0; i < z.length; i++) z[i] -= mean + slope * (i - middle);
+  return z;
+}
+
+/** Over z itself, of which all but the last place is returned. */
+function differenceInPlace(z: Float64Array): Float64Array {
+  for (let i = 1; i < z.length; i++) z[i - 1] = z[i] - z[i - 1];
+  return z.subarray(0, z.length - 1);
 }
 
 function pooledLagOne(series: readonly Float64Array[]): number {
   let products = 0;
   let squares = 0;
   for (const z of series) {
-    const mean = z.reduce((sum, value) => sum + value, 0) / z.length;
+    let sum = 0;
+    for (let i = 0; i < z.length; i++) sum += z[i];
+    const mean = sum / z.length;
+    let before = 0;
     for (let i = 0; i < z.length; i++) {
-      squares += (z[i] - mean) ** 2;
-      if (i > 0) products += (z[i] - mean) * (z[i - 1] - mean);
+      const residual = z[i] - mean;
+      squares += residual * residual;
+      products += residual * before;
+      before = residual;
     }
   }
   return products / squares;
