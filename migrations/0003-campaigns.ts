@@ -49,7 +49,7 @@ export async function up({ context }: { context: QueryInterface }): Promise<void
       end_text text,
       cursor jsonb,
       cursor_text text,
-      parking text not null default 'none' check (parking in ('none', 'running', 'parked')),
+      parking text not null default 'none' check (parking in ('none', 'wanted', 'running', 'parked')),
       set_aside boolean not null default false,
       needs_advance boolean not null default false,
       planned jsonb,
@@ -60,7 +60,8 @@ export async function up({ context }: { context: QueryInterface }): Promise<void
       unique (rig_id, rig_number)
     );
     create unique index campaign_on_rig on campaign (rig_id)
-      where origin = 'protocol' and not set_aside and (state in ('running', 'held') or parking = 'running');
+      where origin = 'protocol' and not set_aside and (state in ('running', 'held') or parking in ('wanted', 'running'));
+    comment on column campaign.parking is 'wanted: as soon as the step in hand is over; running: park steps go out although the campaign is held or stopped';
     create index campaign_queue on campaign (rig_id, priority desc, queued_at) where state = 'queued';
     create index campaign_advance on campaign (id) where needs_advance;
     create index campaign_state on campaign (state, started_at desc);

@@ -48,6 +48,8 @@ export async function up({ context }: { context: QueryInterface }): Promise<void
     create index step_due on step (due_at) where kind = 'wait' and state = 'ready';
     comment on column step.empty_attempts is 'Attempts in a row that stored nothing new; maxAttempts counts these';
 
+    create index step_rig_open on step (rig_id) where state in ('ready', 'out');
+
     create table step_lease (
       lease text primary key,
       step_id bigint not null references step,
@@ -138,6 +140,17 @@ export async function up({ context }: { context: QueryInterface }): Promise<void
       foreign key (step_id, idx) references reading
     );
 
+    create table track (
+      mount_id bigint not null references mount,
+      medium text not null,
+      set_point_c double precision,
+      f0_hz double precision not null check (f0_hz > 0),
+      q double precision not null check (q > 0),
+      step_id bigint not null references step,
+      unique nulls not distinct (mount_id, medium, set_point_c)
+    );
+    comment on table track is 'The last good fit by mount, medium and set-point: what the next sweep is centred on';
+
     create table phase_summary (
       phase_id bigint not null references phase,
       fit_run_id bigint not null references fit_run,
@@ -161,7 +174,7 @@ export async function up({ context }: { context: QueryInterface }): Promise<void
       primary key (phase_id, fit_run_id)
     );
     alter table phase_summary alter column columns set storage external;
-    comment on column phase_summary.columns is 'The repeats in compact columns, little-endian: idx int32[n], at float64[n] ms, f0 float64[n], q float64[n], f0Std float64[n], temperature float64[n], flags uint16[n], leftOut uint8[n]; see lib/phases/columns.ts';
+    comment on column phase_summary.columns is 'The repeats in compact columns, little-endian: at float64[n] ms, f0 float64[n], q float64[n], f0Std float64[n], temperature float64[n], idx int32[n], flags uint16[n], leftOut uint8[n]; see lib/phases/columns.ts';
 
     create table exclusion (
       id bigint generated always as identity primary key,
@@ -194,6 +207,6 @@ export async function up({ context }: { context: QueryInterface }): Promise<void
 
 export async function down({ context }: { context: QueryInterface }): Promise<void> {
   await context.sequelize.query(`
-    drop table baseline, exclusion, phase_summary, fit, fit_run, sweep, reading, phase, step_lease, step;
+    drop table baseline, exclusion, phase_summary, track, fit, fit_run, sweep, reading, phase, step_lease, step;
   `);
 }

@@ -25,7 +25,7 @@ export class Campaign extends Model<InferAttributes<Campaign>, InferCreationAttr
   declare endText: CreationOptional<string | null>;
   declare cursor: CreationOptional<Cursor | null>;
   declare cursorText: CreationOptional<string | null>;
-  declare parking: CreationOptional<"none" | "running" | "parked">;
+  declare parking: CreationOptional<"none" | "wanted" | "running" | "parked">;
   declare setAside: CreationOptional<boolean>;
   declare needsAdvance: CreationOptional<boolean>;
   declare planned: CreationOptional<PlannedCampaign | null>;

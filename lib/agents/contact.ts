@@ -22,7 +22,7 @@ export type RigRow = {
 export async function noteContact(transaction: Transaction, { agent, session, now, clock }: Contact): Promise<RigRow> {
   const rig = await row<RigRow & { silentSince: Date | null }>(
     `update rig set last_contact_at = greatest(rig.last_contact_at, $2), reported_clock = greatest(rig.reported_clock, $3)
-       from (select id, last_contact_at as silent_since from rig where id = $1 for update) before
+       from (select id, last_contact_at as silent_since from rig where id = $1 for no key update) before
       where rig.id = before.id
       returning rig.id, name, clock, time_zone as "timeZone", reported_clock as "reportedClock", retired_at as "retiredAt",
         before.silent_since as "silentSince"`,

@@ -1,5 +1,5 @@
 /** What Longreed promises to rig agents in `hello`. */
-export const CONTRACT = 1;
+export const CONTRACT = 1 as const;
 export const LEASE_S = 60;
 export const HEARTBEAT_S = 15;
 export const WAIT_S = 25;

@@ -10,7 +10,7 @@ export async function nextDue(transaction: Transaction, rig: RigRow, now: Date):
   const occupying = await row<{ state: string; parking: string; dueAt: Date | null; kind: string | null; needsAdvance: boolean }>(
     `select c.state, c.parking, s.due_at as "dueAt", s.kind, c.needs_advance as "needsAdvance"
        from campaign c left join step s on s.campaign_id = c.id and s.state in ('ready', 'out')
-      where c.rig_id = $1 and c.origin = 'protocol' and not c.set_aside and (c.state in ('running', 'held') or c.parking = 'running')`,
+      where c.rig_id = $1 and c.origin = 'protocol' and not c.set_aside and (c.state in ('running', 'held') or c.parking in ('wanted', 'running'))`,
     [rig.id],
     transaction,
   );

@@ -114,6 +114,48 @@ export const finishBody = z.discriminatedUnion("outcome", [
 
 export const finishAnswer = z.object({ step: z.enum(["done", "ready", "failed"]), next: z.enum(["ask", "wait"]) });
 
+const values = z.array(z.number()).min(11).max(4001);
+const complex = { re: values, im: values };
+const grid = { startHz: z.number().positive(), stopHz: z.number().positive() };
+const aboutReading = {
+  index: z.int().min(0),
+  takenAt: z.iso.datetime({ offset: true }),
+  durationS: notNegative.optional(),
+  temperatureC: finite.optional(),
+  pressurePa: notNegative.optional(),
+  humidityPercent: z.number().min(0).max(100).optional(),
+};
+
+/** The upload as the API reference shows it; `parseReadings` checks it by hand with the same verdicts. */
+export const readingsContract = z.object({
+  lease: opaque,
+  readings: z
+    .array(
+      z.union([
+        z.object({ ...aboutReading, sweep: z.object({ ...grid, ...complex }) }),
+        z.object({ ...aboutReading, sweep: z.object({ ...grid, magnitude: values }) }),
+        z.object({ ...aboutReading, frequencyHz: values, ...complex }),
+        z.object({ ...aboutReading, frequencyHz: values, magnitude: values }),
+        z.object({
+          ...aboutReading,
+          ringDown: z.object({ sampleHz: z.number().positive(), startS: finite, volts: z.array(z.number()).min(16).max(65_536) }),
+        }),
+        z.object({
+          ...aboutReading,
+          fitted: z.object({
+            f0Hz: z.number().positive(),
+            q: z.number().positive(),
+            f0StdHz: notNegative.optional(),
+            qStd: notNegative.optional(),
+            amplitudeV: finite.optional(),
+          }),
+        }),
+      ]),
+    )
+    .min(1)
+    .max(500),
+});
+
 export const readingsAnswer = z.object({
   stored: z.array(z.int()),
   alreadyStored: z.array(z.int()),

@@ -12,7 +12,7 @@ export async function wakeDue(transaction: Transaction, { rigId, clock }: Due): 
       where rig_id = $1 and not needs_advance
         and ((state = 'queued' and (start_at is null or start_at <= $2)
               and not exists (select 1 from campaign other where other.rig_id = $1 and other.origin = 'protocol' and not other.set_aside
-                              and (other.state in ('running', 'held') or other.parking = 'running')))
+                              and (other.state in ('running', 'held') or other.parking in ('wanted', 'running'))))
           or ((state = 'running' or parking = 'running')
               and exists (select 1 from step s where s.campaign_id = campaign.id and s.kind = 'wait' and s.state = 'ready' and s.due_at <= $2)))
       returning id`,

@@ -43,7 +43,7 @@ const LEASED_STEP = `
     join protocol_version v on v.id = s.protocol_version_id
     left join campaign_slot slot on slot.campaign_id = c.id and slot.slot = s.slot
    where s.id = $1 and s.rig_id = $2
-   for update of s`;
+   for no key update of s`;
 
 /** The agent ends a step. Saying it again is a success; under a lease that was given out again it is not. */
 export function finishStep({ agent, session, stepId, body, now }: Finish) {

@@ -53,7 +53,7 @@ const OPEN_STEP = `
    where s.rig_id = $1 and s.state in ('ready', 'out') and s.kind not in ('wait', 'ask') and not c.set_aside
    order by (s.state = 'out') desc, s.id
    limit 1
-   for update of s`;
+   for no key update of s`;
 
 type GiveOut = { rig: RigRow; session?: string; now: Date };
 

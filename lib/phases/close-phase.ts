@@ -1,0 +1,157 @@
+import type { Transaction } from "sequelize";
+import { change, row, rows } from "@/lib/db";
+import { emptyColumns, encodeColumns, type PhaseColumns } from "@/lib/phases/columns";
+import { markLeftOut, summarise, type PhaseSummaryValues } from "@/lib/phases/summarise";
+
+export type ClosedPhase = {
+  phaseId: string;
+  fitRunId: string;
+  medium: string;
+  role: "reference" | "check" | "sample";
+  sequence: number;
+  cycle: number;
+  setPointC: number | null;
+  mountId: string | null;
+  readout: "velocity" | "displacement";
+  columns: PhaseColumns;
+  values: PhaseSummaryValues;
+};
+
+type PhaseRow = Omit<ClosedPhase, "columns" | "values"> & {
+  stepId: string;
+  campaignId: string;
+  discard: number;
+  givenUp: boolean;
+  tracked: boolean;
+};
+
+const PHASE = `
+  select p.id as "phaseId", r.id as "fitRunId", p.step_id as "stepId", p.campaign_id as "campaignId", p.medium, p.role, p.sequence, p.cycle,
+         p.set_point_c as "setPointC", p.mount_id as "mountId", p.readout, p.discard,
+         s.state in ('skipped', 'failed') as "givenUp",
+         coalesce(jsonb_path_query_first(v.definition, '$.** ? (@.id == $block).sweep.centre', jsonb_build_object('block', s.block_id)) = '"track"', false) as tracked
+    from phase p join step s on s.id = p.step_id join protocol_version v on v.id = s.protocol_version_id
+    join fit_run r on r.campaign_id = p.campaign_id and r.current
+   where p.step_id = $1`;
+
+/**
+ * Makes the summary of a step's phase from its fits in the current run; the same call brings it up to date after late
+ * readings or exclusions. Undefined for a step without a phase (`find`). All readings have to be fitted before.
+ */
+export async function closePhase(transaction: Transaction, { stepId, now }: { stepId: string; now: Date }): Promise<ClosedPhase | undefined> {
+  const phase = await row<PhaseRow>(PHASE, [stepId], transaction);
+  if (!phase) return undefined;
+  const { columns, pressurePa } = await readColumns(transaction, phase);
+  const excluded = await rows<{ idx: number }>(`select idx from exclusion where step_id = $1 and undone_at is null`, [stepId], transaction);
+  markLeftOut(columns, { discard: phase.discard, excluded: new Set(excluded.map(({ idx }) => idx)) });
+  const summary = summarise(columns, { medianR1: await medianR1(transaction, phase) });
+  const values = isWithoutValue(phase, summary) ? withoutValue(summary) : summary;
+  await writeSummary(transaction, phase, columns, values, pressurePa, now);
+  return { ...phase, columns, values };
+}
+
+/** A phase that was given up, or whose sweeps lost the resonance, keeps its readings and has no value. */
+const isWithoutValue = ({ givenUp, tracked }: PhaseRow, { n, unusable }: PhaseSummaryValues): boolean => givenUp || (tracked && unusable * 2 > n);
+
+const NO_VALUE = { n: 0, mean: NaN, sd: NaN, u: NaN, r1: NaN };
+
+const withoutValue = (summary: PhaseSummaryValues): PhaseSummaryValues => ({ ...summary, nUsed: 0, f0: NO_VALUE, q: NO_VALUE });
+
+type ReadingRow = {
+  idx: number;
+  at: Date;
+  temperatureC: number | null;
+  pressurePa: number | null;
+  f0Hz: number | null;
+  q: number | null;
+  f0StdHz: number | null;
+  flags: number;
+};
+
+async function readColumns(transaction: Transaction, { stepId, fitRunId }: PhaseRow): Promise<{ columns: PhaseColumns; pressurePa: number | null }> {
+  const readings = await rows<ReadingRow>(
+    `select r.idx, r.at, r.temperature_c as "temperatureC", r.pressure_pa as "pressurePa", f.f0_hz as "f0Hz", f.q, f.f0_std_hz as "f0StdHz",
+            coalesce(f.flags, r.flags) as flags
+       from reading r left join fit f on f.fit_run_id = $2 and f.step_id = r.step_id and f.idx = r.idx
+      where r.step_id = $1 order by r.idx`,
+    [stepId, fitRunId],
+    transaction,
+  );
+  const columns = emptyColumns(readings.length);
+  let pressures = 0;
+  let pressureSum = 0;
+  readings.forEach((reading, i) => {
+    columns.idx[i] = reading.idx;
+    columns.at[i] = reading.at.getTime();
+    columns.f0Hz[i] = reading.f0Hz ?? NaN;
+    columns.q[i] = reading.q ?? NaN;
+    columns.f0StdHz[i] = reading.f0StdHz ?? NaN;
+    columns.temperatureC[i] = reading.temperatureC ?? NaN;
+    columns.flags[i] = reading.flags;
+    if (reading.pressurePa !== null) {
+      pressures++;
+      pressureSum += reading.pressurePa;
+    }
+  });
+  return { columns, pressurePa: pressures > 0 ? pressureSum / pressures : null };
+}
+
+/** Median lag-1 autocorrelation of this medium's earlier phases in the campaign: the floor for short phases. */
+async function medianR1(transaction: Transaction, { campaignId, medium, sequence, fitRunId }: PhaseRow) {
+  const median = await row<{ f0: number | null; q: number | null }>(
+    `select percentile_cont(0.5) within group (order by s.f0_r1) as f0, percentile_cont(0.5) within group (order by s.q_r1) as q
+       from phase p join phase_summary s on s.phase_id = p.id and s.fit_run_id = $4
+      where p.campaign_id = $1 and p.medium = $2 and p.sequence < $3 and s.n_used > 2`,
+    [campaignId, medium, sequence, fitRunId],
+    transaction,
+  );
+  return median?.f0 == null || median.q == null ? undefined : { f0: median.f0, q: median.q };
+}
+
+async function writeSummary(
+  transaction: Transaction,
+  { phaseId, fitRunId }: PhaseRow,
+  columns: PhaseColumns,
+  { n, nUsed, unusable, f0, q, temperatureC, flagCounts }: PhaseSummaryValues,
+  pressurePa: number | null,
+  now: Date,
+) {
+  const number = (value: number) => (Number.isFinite(value) ? value : null);
+  await change(
+    `insert into phase_summary (phase_id, fit_run_id, n, n_used, unusable, f0_mean, f0_sd, f0_u, f0_r1, q_mean, q_sd, q_u, q_r1,
+       temperature_mean, temperature_sd, pressure_mean, flag_counts, columns, made_at)
+     values ($1, $2, $3, $4, $5, $6, $7, $8, $9, $10, $11, $12, $13, $14, $15, $16, $17, $18, $19)
+     on conflict (phase_id, fit_run_id) do update set n = excluded.n, n_used = excluded.n_used, unusable = excluded.unusable,
+       f0_mean = excluded.f0_mean, f0_sd = excluded.f0_sd, f0_u = excluded.f0_u, f0_r1 = excluded.f0_r1, q_mean = excluded.q_mean,
+       q_sd = excluded.q_sd, q_u = excluded.q_u, q_r1 = excluded.q_r1, temperature_mean = excluded.temperature_mean,
+       temperature_sd = excluded.temperature_sd, pressure_mean = excluded.pressure_mean, flag_counts = excluded.flag_counts,
+       columns = excluded.columns, made_at = excluded.made_at`,
+    [
+      phaseId,
+      fitRunId,
+      n,
+      nUsed,
+      unusable,
+      number(f0.mean),
+      number(f0.sd),
+      number(f0.u),
+      number(f0.r1),
+      number(q.mean),
+      number(q.sd),
+      number(q.u),
+      number(q.r1),
+      number(temperatureC.mean),
+      number(temperatureC.sd),
+      pressurePa,
+      JSON.stringify(flagCounts),
+      encodeColumns(columns),
+      now,
+    ],
+    transaction,
+  );
+  await change(
+    `update phase set closed_at = coalesce(closed_at, $2), started_at = coalesce($3, started_at), ended_at = coalesce($4, ended_at) where id = $1`,
+    [phaseId, now, columns.n > 0 ? new Date(columns.at[0]) : null, columns.n > 0 ? new Date(columns.at[columns.n - 1]) : null],
+    transaction,
+  );
+}

@@ -1,0 +1,51 @@
+/**
+ * The repeats of one phase in compact columns, oldest first: a campaign's series is read from a few hundred of these
+ * instead of tens of thousands of rows. Not yet fitted or not measured is NaN.
+ */
+export type PhaseColumns = {
+  n: number;
+  idx: Int32Array;
+  /** Rig time, ms since 1970. */
+  at: Float64Array;
+  f0Hz: Float64Array;
+  q: Float64Array;
+  f0StdHz: Float64Array;
+  temperatureC: Float64Array;
+  /** Bits of FLAGS. */
+  flags: Uint16Array;
+  /** 1 where the reading does not enter the phase value: discarded, flagged so, or excluded by a person. */
+  leftOut: Uint8Array;
+};
+
+const BYTES_EACH = 8 * 5 + 4 + 2 + 1;
+
+export function emptyColumns(n: number): PhaseColumns {
+  return columnsOn(new ArrayBuffer(n * BYTES_EACH), n);
+}
+
+/** Wide columns first, so that every view is aligned. */
+function columnsOn(buffer: ArrayBuffer, n: number): PhaseColumns {
+  return {
+    n,
+    at: new Float64Array(buffer, 0, n),
+    f0Hz: new Float64Array(buffer, 8 * n, n),
+    q: new Float64Array(buffer, 16 * n, n),
+    f0StdHz: new Float64Array(buffer, 24 * n, n),
+    temperatureC: new Float64Array(buffer, 32 * n, n),
+    idx: new Int32Array(buffer, 40 * n, n),
+    flags: new Uint16Array(buffer, 44 * n, n),
+    leftOut: new Uint8Array(buffer, 46 * n, n),
+  };
+}
+
+/** Little-endian bytes for `phase_summary.columns`. */
+export const encodeColumns = (columns: PhaseColumns): Buffer => Buffer.from(columns.at.buffer as ArrayBuffer);
+
+/** @throws RangeError when the length is no whole number of repeats. */
+export function decodeColumns(bytes: Buffer): PhaseColumns {
+  const n = bytes.byteLength / BYTES_EACH;
+  if (!Number.isInteger(n)) throw new RangeError(`${bytes.byteLength} bytes are no whole number of repeats of ${BYTES_EACH} bytes`);
+  const buffer = new ArrayBuffer(bytes.byteLength);
+  new Uint8Array(buffer).set(bytes);
+  return columnsOn(buffer, n);
+}

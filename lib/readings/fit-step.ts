@@ -1,0 +1,67 @@
+import type { Transaction } from "sequelize";
+import { change, inTransaction, row, rows } from "@/lib/db";
+import { flagBits } from "@/lib/numerics/resonance/flags";
+import type { Readout } from "@/lib/numerics/resonance/types";
+import { fitRecord } from "@/lib/readings/fit-record";
+import type { FitSettings } from "@/models/json";
+
+const BATCH = 200;
+
+type FitContext = { fitRunId: string; settings: FitSettings; readout: Readout; dwellS: number | undefined };
+
+/**
+ * Fits what of a step has no fit yet in the campaign's current run. Any number of processes may do it at once:
+ * the first result of a reading stays, and equal input gives an equal result. Returns how many were fitted.
+ */
+export async function fitStep(stepId: string): Promise<number> {
+  let fitted = 0;
+  for (;;) {
+    const n = await inTransaction((transaction) => fitBatch(transaction, stepId));
+    fitted += n;
+    if (n < BATCH) return fitted;
+  }
+}
+
+export async function fitBatch(transaction: Transaction, stepId: string): Promise<number> {
+  const context = await row<FitContext>(
+    `select r.id as "fitRunId", r.settings, v.definition->>'readout' as readout, (s.params->'sweep'->>'dwellS')::float8 as "dwellS"
+       from step s join fit_run r on r.campaign_id = s.campaign_id and r.current join protocol_version v on v.id = s.protocol_version_id
+      where s.id = $1`,
+    [stepId],
+    transaction,
+  );
+  if (!context) return 0;
+  const waiting = await rows<{ idx: number; kind: number; flags: number; startHz: number | null; stopHz: number | null; points: number; data: Buffer }>(
+    `select r.idx, r.kind, r.flags, w.start_hz as "startHz", w.stop_hz as "stopHz", w.points, w.data
+       from reading r join sweep w using (step_id, idx)
+      where r.step_id = $1 and not exists (select 1 from fit f where f.fit_run_id = $2 and f.step_id = $1 and f.idx = r.idx)
+      order by r.idx limit ${BATCH}`,
+    [stepId, context.fitRunId],
+    transaction,
+  );
+  if (waiting.length === 0) return 0;
+  const fits = waiting.map((stored) => ({ stored, fit: fitRecord(stored, context) }));
+  const column = (pick: (one: (typeof fits)[number]) => number) => fits.map((one) => finiteOrNull(pick(one)));
+  await change(
+    `insert into fit (fit_run_id, step_id, idx, f0_hz, q, f0_std_hz, q_std, f0_q_covariance, amplitude_v, noise_v, flags)
+     select $1, $2, * from unnest($3::int[], $4::float8[], $5::float8[], $6::float8[], $7::float8[], $8::float8[], $9::float8[], $10::float8[], $11::smallint[])
+     on conflict do nothing`,
+    [
+      context.fitRunId,
+      stepId,
+      waiting.map(({ idx }) => idx),
+      column(({ fit }) => fit.f0Hz),
+      column(({ fit }) => fit.q),
+      column(({ fit }) => fit.f0StdHz),
+      column(({ fit }) => fit.qStd),
+      column(({ fit }) => fit.covarianceF0Q),
+      column(({ fit }) => fit.amplitude),
+      column(({ fit }) => fit.noise),
+      fits.map(({ stored, fit }) => stored.flags | flagBits(fit.flags)),
+    ],
+    transaction,
+  );
+  return waiting.length;
+}
+
+const finiteOrNull = (value: number): number | null => (Number.isFinite(value) ? value : null);
