@@ -24,7 +24,7 @@ const rig = z.strictObject({
     minTemperatureC: z.number().optional(),
     maxTemperatureC: z.number().optional(),
   }),
-  /** Kinds of step that may be done again after a loss of memory. */
+  /** Kinds of step that may be done again after a loss of memory: fill and rinse where the rig measures what is in the cell. */
   repeatable: z.array(z.enum(["fill", "rinse", "drain", "dry"])).default(["drain", "dry"]),
   ports: z.array(z.strictObject({ port: z.int().min(1), name: z.string(), liquid: liquidModel, volumeMl: positive })),
   wasteCapacityMl: positive.default(5000),

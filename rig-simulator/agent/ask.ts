@@ -1,4 +1,5 @@
 import type { Step } from "../contract";
+import { linkedController } from "../linked-controller";
 import type { Session } from "./session";
 
 /** After these pauses the rig asks whether a date is all that is waited for; together some 4 s. */
@@ -8,24 +9,26 @@ const watchMs = [40, 80, 160, 320, 640, 1280, 1500];
  * Asks for the next step; undefined when there is none for now. A fast clock that has only a date to wait for jumps there; another
  * asks again when the date has come.
  */
-export async function ask(session: Session): Promise<Step | undefined> {
-  const { rig, client, server } = session;
+export async function ask(session: Session, longestWaitS = session.server.waitS): Promise<Step | undefined> {
+  const { rig, client } = session;
+  const longestS = Math.min(longestWaitS, session.server.waitS);
   if (!rig.isFast) {
-    const step = await client.next(waitFor(session), rig.reportedClock(), session.signal);
+    const step = await client.next(waitFor(session, longestS), rig.reportedClock(), session.signal);
     if (!step) await session.tryBeat();
     return step;
   }
 
   for (;;) {
-    const poll = new AbortController();
+    const { controller: poll, unlink } = linkedController(session.signal);
     const jumped = new Jumped();
     const watching = watch(session, () => poll.abort(jumped), poll.signal);
     try {
-      return await client.next(server.waitS, rig.reportedClock(), AbortSignal.any([session.signal, poll.signal]));
+      return await client.next(longestS, rig.reportedClock(), poll.signal);
     } catch (error) {
       if (error !== jumped) throw error;
     } finally {
-      poll.abort(new Jumped());
+      unlink();
+      poll.abort(jumped);
       await watching;
     }
   }
@@ -52,9 +55,9 @@ async function watch(session: Session, onJump: () => void, signal: AbortSignal):
   }
 }
 
-/** Whole seconds of real time until the date that is waited for, at most what the server allows. */
-function waitFor({ rig, dueAtMs, server }: Session): number {
-  if (dueAtMs === undefined) return server.waitS;
+/** Whole seconds of real time until the date that is waited for, at most the longest wait. */
+function waitFor({ rig, dueAtMs }: Session, longestS: number): number {
+  if (dueAtMs === undefined) return longestS;
   const factor = rig.speed.kind === "times" ? rig.speed.factor : 1;
-  return Math.min(server.waitS, Math.max(0, Math.ceil((dueAtMs - rig.clock.nowMs()) / 1000 / factor)));
+  return Math.min(longestS, Math.max(0, Math.ceil((dueAtMs - rig.clock.nowMs()) / 1000 / factor)));
 }

@@ -8,7 +8,7 @@ type LiquidStep = FillStep | RinseStep | DrainStep | DryStep;
 /** Where the step's work stands, in its own measure, and how to say so in a heartbeat. */
 type Work = { total: number; before: number; secondsEach: number; done: (amount: number) => Done };
 
-/** Fills, rinses, drains or dries: goes on from what was done already, tells its progress, fails as the scenario says. */
+/** Fills, rinses, drains or dries: goes on from what was done already, tells its progress at once, fails as the scenario says. */
 export async function moveLiquid(session: Session, step: LiquidStep, start: World): Promise<Outcome> {
   const { rig } = session;
   const shortage = shortageOf(session, step, start);
@@ -23,6 +23,8 @@ export async function moveLiquid(session: Session, step: LiquidStep, start: Worl
   const slices = rig.isFast ? 2 : 20;
   const share = (work.total - work.before) / slices;
   const until = step.kind === "dry" ? session.interruption : session.signal;
+  session.progress(work.done(work.before));
+  await session.tryBeat();
   for (let slice = 0; slice < slices && share > 0; slice++) {
     try {
       await rig.clock.pass(share * work.secondsEach, until);
@@ -31,7 +33,7 @@ export async function moveLiquid(session: Session, step: LiquidStep, start: Worl
       throw error;
     }
     session.progress(work.done(work.before + share * (slice + 1)));
-    if (rig.isFast) await session.tryBeat();
+    await session.tryBeat();
     if (slice + 1 === slices / 2) crashIfDue(rig.scenario, rig.world, step, 0);
     if (step.kind === "dry" && session.wish !== "none" && slice + 1 < slices) return { outcome: "interrupted" };
   }

@@ -14,6 +14,7 @@ export type AgentOptions = SessionOptions & { untilIdle?: boolean };
 const afterCrashMs = 500;
 const afterRefusalMs = 1000;
 const otherAgentMs = 10_000;
+const idleAfterS = 5;
 
 /**
  * Drives a rig until the signal is aborted, or until there is nothing to do: hello, then step after step. A crash loses the session and
@@ -51,7 +52,7 @@ function pauseAfter(error: unknown): number | undefined {
 async function work(session: Session, untilIdle: boolean): Promise<void> {
   const incomplete: Incomplete = new Map();
   for (;;) {
-    const step = await ask(session);
+    const step = await ask(session, untilIdle ? idleAfterS : undefined);
     if (step) await perform(session, (incomplete.get(stepName(step)) ?? 0) > 1 ? fromTheStart(step) : step, incomplete);
     else if (untilIdle && session.dueAtMs === undefined) return;
   }

@@ -1,5 +1,6 @@
 import { sleep as realSleep, type Sleep } from "../clock";
 import type { Done, HeartbeatAnswer, HelloAnswer, Step, Wish } from "../contract";
+import { linkedController } from "../linked-controller";
 import type { Rig } from "../rig";
 import { Client, Refused } from "./client";
 import type { Transport } from "./transport";
@@ -28,7 +29,7 @@ export class Session {
   server!: HelloAnswer;
   private readonly instance: string;
   private readonly ending = new AbortController();
-  private interrupt = new AbortController();
+  private interrupt: ReturnType<typeof linkedController>;
   private current: { step: Step; done?: Done } | undefined;
   private message: string | undefined;
 
@@ -38,6 +39,7 @@ export class Session {
     this.instance = instance;
     this.sleep = sleep;
     this.signal = AbortSignal.any([signal, this.ending.signal]);
+    this.interrupt = linkedController(this.signal);
     this.client = new Client(transport, this.signal, log, sleep);
   }
 
@@ -60,16 +62,18 @@ export class Session {
     this.ending.abort(reason);
   }
 
-  /** From now on heartbeats speak for this step. */
+  /** From now on heartbeats speak for this step. What is given out is wanted: an older wish no longer counts. */
   take(step: Step): void {
     this.current = { step, done: step.done };
-    this.interrupt = new AbortController();
+    this.interrupt = linkedController(this.signal);
     this.message = undefined;
-    this.heed(this.wish);
+    this.wish = "none";
   }
 
+  /** The step is over. A fault is told once: then the rig is idle, and may be given a date to wait for. */
   release(message?: string): void {
     this.current = undefined;
+    this.interrupt.unlink();
     this.message = message;
   }
 
@@ -79,12 +83,12 @@ export class Session {
 
   /** Aborted as soon as the server wishes hold or stop. */
   get interruption(): AbortSignal {
-    return AbortSignal.any([this.signal, this.interrupt.signal]);
+    return this.interrupt.controller.signal;
   }
 
   heed(wish: Wish): void {
     this.wish = wish;
-    if (wish !== "none") this.interrupt.abort(new Interrupted());
+    if (wish !== "none") this.interrupt.controller.abort(new Interrupted());
   }
 
   async beat(): Promise<HeartbeatAnswer> {
@@ -101,6 +105,7 @@ export class Session {
       wasteMl: world.wasteMl,
       message: this.message,
     });
+    if (!current) this.message = undefined;
     this.heed(answer.wish);
     this.dueAtMs = answer.dueAt === undefined ? undefined : Date.parse(answer.dueAt);
     rig.save();

@@ -1,5 +1,6 @@
 import { gzip } from "node:zlib";
 import { promisify } from "node:util";
+import { linkedController } from "../linked-controller";
 
 const compress = promisify(gzip);
 const worthCompressing = 2048;
@@ -25,8 +26,9 @@ export function httpTransport({ url, token }: { url: string; token: string }): T
     const large = body.length > worthCompressing;
     if (large) headers["content-encoding"] = "gzip";
     const payload = large ? new Uint8Array(await compress(body, { level: 1 })) : body;
+    const { controller, unlink } = linkedController(signal);
     try {
-      const response = await fetch(`${base}${path}`, { method: "POST", headers, body: payload, signal });
+      const response = await fetch(`${base}${path}`, { method: "POST", headers, body: payload, signal: controller.signal });
       const text = await response.text();
       const retryAfterS = Number(response.headers.get("retry-after") ?? Number.NaN);
       return {
@@ -37,6 +39,8 @@ export function httpTransport({ url, token }: { url: string; token: string }): T
     } catch (error) {
       if (signal?.aborted) throw signal.reason;
       throw new NoAnswer(error);
+    } finally {
+      unlink();
     }
   };
 }

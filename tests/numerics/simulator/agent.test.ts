@@ -43,7 +43,11 @@ async function run(server: ContractServer, rigOrScenario: Rig | Scenario, option
       : new Rig({ scenario: rigOrScenario, seed: options.seed ?? 7, speed: { kind: "fast" }, store: memoryStore(), clockStartMs });
   const log: string[] = [];
   // The heartbeat's timer stays real (30 s): only pauses shorter than that are skipped.
-  const sleep: Sleep = (ms, signal) => (ms >= 30_000 ? new Promise((_, reject) => signal?.addEventListener("abort", () => reject(signal.reason as Error))) : noWait(ms, signal));
+  const slept: number[] = [];
+  const sleep: Sleep = (ms, signal) => {
+    slept.push(ms);
+    return ms >= 30_000 ? new Promise((_, reject) => signal?.addEventListener("abort", () => reject(signal.reason as Error))) : noWait(ms, signal);
+  };
   await runAgent({
     rig,
     transport: badNetwork(httpTransport({ url, token: "t" }), rig, sleep),
@@ -53,7 +57,7 @@ async function run(server: ContractServer, rigOrScenario: Rig | Scenario, option
     log: (text) => log.push(text),
     sleep,
   });
-  return { rig, log };
+  return { rig, log, slept };
 }
 
 const plan = () => [measure(30), fill, measure(20, { liquid: { slot: "water", port: 1, name: "Water" }, medium: "water", sweep: { ...sweep, startHz: 2000, stopHz: 2500, dwellS: 0.1 } }), drain, rinse, dry, measure(30)];
@@ -108,7 +112,7 @@ describe("the agent", () => {
     const server = new ContractServer([fill]);
     const { rig } = await run(server, scenario({ crashes: [{ kind: "fill" }] }));
     const told = server.calls.filter(({ path, body }) => path.endsWith("/heartbeat") && body.done).map(({ body }) => body.done);
-    expect(told.slice(0, 3)).toEqual([{ volumeMl: 10 }, { volumeMl: 15 }, { volumeMl: 20 }]);
+    expect(told).toEqual([{ volumeMl: 0 }, { volumeMl: 10 }, { volumeMl: 10 }, { volumeMl: 15 }, { volumeMl: 20 }]);
     expect(rig.world.ports[1]).toBe(1980);
   });
 
@@ -187,9 +191,10 @@ describe("the agent", () => {
       refused.set(path, times);
       return times <= 2 && !path.endsWith("/heartbeat") ? { status: times === 1 ? 503 : 429, headers: { "retry-after": "2" } } : undefined;
     };
-    await run(server, scenario());
+    const { slept } = await run(server, scenario());
     expect(server.stored(1)).toHaveLength(5);
     expect(server.finishes).toHaveLength(1);
+    expect(slept.filter((ms) => ms === 2000)).toHaveLength(2 * refused.size - 2);
   });
 
   it("reports the pump's failure as often as the scenario says", async () => {
