@@ -2,6 +2,8 @@
 
 import { useId, useRef, useState, type ReactNode } from "react";
 import { classNames } from "@/components/ui/class-names";
+import { PowerOfTen } from "@/components/ui/quantity";
+import { formatNumber } from "@/lib/format";
 import { saveText, svgOf, tableAsCsv } from "./save";
 
 export type TwinColumn = { head: string; right?: boolean };
@@ -22,6 +24,13 @@ type PlotProps = {
 };
 
 const MOST_ROWS_SHOWN = 500;
+
+/** Eight significant digits; far from one as a power of ten. */
+function asShown(value: string | number | null): ReactNode {
+  if (typeof value !== "number") return value;
+  if (value !== 0 && (Math.abs(value) < 1e-3 || Math.abs(value) >= 1e9)) return <PowerOfTen value={value} decimals={2} />;
+  return formatNumber(Number(value.toPrecision(8)));
+}
 
 /** Frame of every plot: the drawing, its sentence, its table, and the offers Table, SVG and CSV. */
 export function Plot({ label, sentence, file, twin, className, children }: PlotProps) {
@@ -49,7 +58,7 @@ export function Plot({ label, sentence, file, twin, className, children }: PlotP
                 {data.rows.slice(0, MOST_ROWS_SHOWN).map((row, i) => (
                   <tr key={i}>
                     {row.map((value, column) => (
-                      <td key={column} className={data.columns[column]?.right ? "right num" : undefined}>{data.shown ? data.shown(value, column) : value}</td>
+                      <td key={column} className={data.columns[column]?.right ? "right num" : undefined}>{data.shown ? data.shown(value, column) : asShown(value)}</td>
                     ))}
                   </tr>
                 ))}
