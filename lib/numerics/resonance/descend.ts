@@ -9,7 +9,11 @@ const LONGEST_SHIFT = 1.5;
 const LONGEST_STRETCH = 1;
 /** Done after a step this small against the standard errors (squared), or against a half-width (noise-free data). */
 const SMALL_AGAINST_ERROR = 1e-6;
-const SMALL_AGAINST_WIDTH = 1e-13;
+const SMALL_AGAINST_WIDTH = 1e-11;
+/** One unit in the last place of f0 is this many half-widths, times Q. */
+const F0_ROUNDING = 4 * 2 ** -52;
+/** Costs this close, against the energy of the data, differ by rounding only. */
+const ROUNDING = 1e-14;
 
 /**
  * Least squares over (ln f0, ln Q) from a first guess: Gauss–Newton on the projected problem, damped after Levenberg
@@ -42,7 +46,7 @@ export function descend(
     if (!Number.isFinite(gain)) break;
     const small =
       gain <= (SMALL_AGAINST_ERROR * Math.max(0, here.cost)) / freedom ||
-      (Math.abs(shift) < SMALL_AGAINST_WIDTH && Math.abs(stretch) < SMALL_AGAINST_WIDTH);
+      (Math.abs(shift) < SMALL_AGAINST_WIDTH + F0_ROUNDING * q && Math.abs(stretch) < SMALL_AGAINST_WIDTH);
     if (small && damping <= 1) {
       f0 *= Math.exp(shift / (2 * q));
       q *= Math.exp(stretch);
@@ -58,13 +62,12 @@ export function descend(
     const nextQ = q * Math.exp(stretch);
     projectedModel(p, readout, nextF0, nextQ, there);
     evaluations++;
-    if (there.cost <= here.cost || (small && Math.abs(there.cost - here.cost) < 1e-9 * p.energy)) {
+    if (there.cost <= here.cost + ROUNDING * p.energy) {
       f0 = nextF0;
       q = nextQ;
       [here, there] = [there, here];
       damping = damping < 1e-3 ? 0 : damping / 10;
     } else if (damping > 1e8) {
-      settled = small;
       break;
     } else {
       damping = Math.max(1e-2, damping * 10);

@@ -6,16 +6,20 @@ import {
   type MagnitudeModel, type MagnitudeParameters, type MagnitudeSweep,
 } from "@/lib/numerics/resonance/magnitude-model";
 import { checkSweep } from "@/lib/numerics/resonance/prepare";
+import { riceMean } from "@/lib/numerics/resonance/rice";
 import { inverseColumn, solveCholesky } from "@/lib/numerics/resonance/small-linear";
 import type { FitOptions, Readout, ResonanceFit, Sweep } from "@/lib/numerics/resonance/types";
 
-const MOST_STEPS = 80;
+const MOST_STEPS = 200;
 /** Rounds in which the noise, and with it the bias of the modulus, is found anew. */
 const NOISE_ROUNDS = 3;
 /** Where |z| is below this many noises anywhere, its mean is Rice's. */
 const RICE_BELOW = 5;
+/** Done when a step promises less than this share of a variance. */
+const SMALL_GAIN = 1e-5;
 /** A direction the data do not determine (slope across a large offset) is held by this share of its own weight. */
 const RIDGE = 1e-9;
+const DOUBTFUL_SIGMAS = 3;
 const LEAST_GAIN = 20;
 
 type Noise = { sigma: number; weight: Float64Array };
@@ -35,10 +39,13 @@ export function fitMagnitudeSweep(sweep: Extract<Sweep, { kind: "magnitude" }>, 
   const starts = guess ? [...guesses, { ...guesses[0], f0: guess.f0Hz, q: guess.q }] : guesses;
   let evaluations = tried;
   let best: Solution | undefined;
-  for (const start of starts) {
-    const end = descendMagnitude(data, readout, start, even, free);
-    evaluations += end.evaluations;
-    if (end.settled && (!best || isBetter(end, best))) best = end;
+  for (const wave of [starts, varied(guesses)]) {
+    for (const start of wave) {
+      const end = descendMagnitude(data, readout, start, even, free);
+      evaluations += end.evaluations;
+      if (end.settled && (!best || isBetter(end, best))) best = end;
+    }
+    if (best && lag1Of(best.model.residual) < DOUBTFUL_SIGMAS / Math.sqrt(n)) break;
   }
   if (!best) return failedFit(evaluations);
 
@@ -61,6 +68,25 @@ function isBetter(one: Solution, other: Solution): boolean {
   return Math.hypot(one.at.bRe, one.at.bIm) < Math.hypot(other.at.bRe, other.at.bIm);
 }
 
+/** Further starts, for when the first end in a side valley: wider and narrower, the offset turned against the resonance. */
+function varied(guesses: MagnitudeParameters[]): MagnitudeParameters[] {
+  return guesses.flatMap((guess) =>
+    [0.6, 1, 1.6].flatMap((stretch) =>
+      [1, -1].map((sign) => ({ ...guess, q: guess.q * stretch, bRe: sign * guess.bRe, bIm: -guess.bIm, cRe: sign * guess.cRe, cIm: -guess.cIm })),
+    ),
+  );
+}
+
+function lag1Of(residual: Float64Array): number {
+  let products = 0;
+  let squares = residual[0] ** 2;
+  for (let i = 1; i < residual.length; i++) {
+    squares += residual[i] ** 2;
+    products += residual[i] * residual[i - 1];
+  }
+  return squares > 0 ? products / squares : 0;
+}
+
 function sorted({ frequencyHz, magnitude }: Extract<Sweep, { kind: "magnitude" }>): MagnitudeSweep {
   const n = frequencyHz.length;
   const order = Uint32Array.from(frequencyHz.keys()).sort((i, j) => frequencyHz[i] - frequencyHz[j]);
@@ -72,12 +98,11 @@ function sorted({ frequencyHz, magnitude }: Extract<Sweep, { kind: "magnitude" }
 }
 
 /** Weights of the next round: the variance of a modulus, 2σ² + ν² − mean², falls from σ² to 0.43σ² where ν vanishes. */
-function riceNoise({ modulus, mean }: MagnitudeModel, sigma: number): Noise {
-  const biased = mean.every((m, i) => m === modulus[i]);
-  const weight = modulus.map((nu, i) => {
-    if (biased) return nu < sigma ? 1 / 0.43 : 1;
-    const variance = 2 * sigma * sigma + (nu - mean[i]) * (nu + mean[i]);
-    return (sigma * sigma) / Math.min(Math.max(variance, 0.4 * sigma * sigma), sigma * sigma);
+function riceNoise({ modulus }: MagnitudeModel, sigma: number): Noise {
+  const weight = modulus.map((nu) => {
+    const mean = riceMean(nu, sigma);
+    const variance = 2 * sigma * sigma + (nu - mean) * (nu + mean);
+    return (sigma * sigma) / Math.min(Math.max(variance, 0.42 * sigma * sigma), sigma * sigma);
   });
   return { sigma, weight };
 }
@@ -97,7 +122,7 @@ function descendMagnitude(data: MagnitudeSweep, readout: Readout, start: Magnitu
     const step = here.gradient.slice(0, free);
     if (!solveCholesky(matrix, step, free)) break;
     const gain = step.reduce((sum, d, j) => sum + d * here.gradient[j], 0);
-    const small = gain <= (1e-8 * here.cost) / data.n + 1e-26 * energy;
+    const small = damping <= 1 && gain <= (SMALL_GAIN * here.cost) / data.n + 1e-26 * energy;
     const cut = Math.max(1, Math.abs(step[0]), Math.abs(step[1]));
     const next = stepped(at, step, cut);
     magnitudeModel(data, readout, next, noise, there);
@@ -159,17 +184,11 @@ function describe(
   const qq = q * q * noise * noise * second[1];
   const f0q = perShift * q * noise * noise * first[1];
   const snr = noise > 0 ? a / noise : Infinity;
-  let products = 0;
-  let squares = 0;
-  for (let i = 0; i < n; i++) {
-    squares += model.residual[i] ** 2;
-    if (i > 0) products += model.residual[i] * model.residual[i - 1];
-  }
   return {
     f0Hz: f0, q, f0StdHz: Math.sqrt(f0f0), qStd: Math.sqrt(qq), covariance: { f0f0, f0q, qq }, amplitude: a, noise, snr,
     flags: judge({
       f0Hz: f0, q, snr, low: f[0], high: f[n - 1], points: n, pointsInBand: countInBand(f, n, f0, q),
-      lag1: squares > 1e-24 * n * mean * mean ? products / squares : 0, bent: false, dwellS,
+      lag1: noise > 1e-12 * mean ? lag1Of(model.residual) : 0, bent: false, dwellS,
     }),
     a: { re: a, im: 0 }, b: { re: at.bRe, im: at.bIm }, c: { re: at.cRe, im: at.cIm }, evaluations,
   };

@@ -23,14 +23,14 @@ export function magnitudeGuesses(sweep: MagnitudeSweep, readout: Readout): { gue
   const span = f[n - 1] - low;
   let evaluations = 0;
   let bestCost = Infinity;
-  let best = { f0: low + span / 2, q: (low + span / 2) / span, alpha: 0, beta: 0, gamma: 0 };
+  let best = { f0: low + span / 2, q: (low + span / 2) / span, alpha: 0, beta: 0, gamma: 0, delta: 0 };
   const attempt = (f0: number, halfWidth: number): void => {
     const q = f0 / (2 * halfWidth);
     const cost = linearCost(sweep, readout, f0, q);
     evaluations++;
     if (cost < bestCost) {
       bestCost = cost;
-      best = { f0, q, alpha: right[0], beta: right[1], gamma: right[2] };
+      best = { f0, q, alpha: right[0], beta: right[1], gamma: right[2], delta: right[3] };
     }
   };
   const peaks = extremes(sweep);
@@ -40,7 +40,7 @@ export function magnitudeGuesses(sweep: MagnitudeSweep, readout: Readout): { gue
     else for (const f0 of peaks) for (let k = -2; k <= 2; k++) attempt(f0 + (k * halfWidth) / 2, halfWidth);
   }
 
-  const { f0, q, alpha, beta, gamma } = best;
+  const { f0, q, alpha, beta, gamma, delta } = best;
   const offset = Math.max(0, gamma);
   const half = alpha + 2 * offset;
   const root = Math.sqrt(Math.max(0, half * half - alpha * alpha - beta * beta));
@@ -48,9 +48,10 @@ export function magnitudeGuesses(sweep: MagnitudeSweep, readout: Readout): { gue
     const a = Math.sqrt(Math.max(power, 1e-6 * (Math.abs(alpha) + Math.abs(beta)) + Number.MIN_VALUE));
     const inPhase = (alpha - a * a) / (2 * a);
     const across = beta / (2 * a);
-    return readout === "velocity"
-      ? { f0, q, a, bRe: inPhase, bIm: across, cRe: 0, cIm: 0 }
-      : { f0, q, a, bRe: across, bIm: -inPhase, cRe: 0, cIm: 0 };
+    const [bRe, bIm] = readout === "velocity" ? [inPhase, across] : [across, -inPhase];
+    // |b + cs|² rises by 2b̄c·s: a slope along b explains it.
+    const along = offset > 0 ? Math.max(-1, Math.min(1, delta / (2 * offset))) : 0;
+    return { f0, q, a, bRe, bIm, cRe: along * bRe, cIm: along * bIm };
   });
   return { guesses, evaluations };
 }
