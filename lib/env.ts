@@ -46,6 +46,9 @@ const schema = variables
     if (given.LONGREED_DEMO && !loopback.has(new URL(given.APP_URL).hostname)) {
       refuse("APP_URL", "must name this machine itself in demo mode, which is for loopback only");
     }
+    if (!given.LONGREED_DEMO && new URL(given.DATABASE_URL).password.startsWith(generatedSecretPrefix)) {
+      refuse("DATABASE_URL", "holds a password that was generated for a demo");
+    }
     if (!given.LONGREED_DEMO && given.AUTH_SECRET.startsWith(generatedSecretPrefix)) {
       refuse("AUTH_SECRET", "was generated for a demo; make one of your own, for example with: openssl rand -base64 32");
     }

@@ -76,7 +76,8 @@ async function wrapperFor(directory) {
   const change = ["setpriv", `--reuid=${uid}`, `--regid=${gid}`, "--clear-groups"];
   for (const wrapper of [change, [...change, ...passThrough]]) {
     const [file = "", ...args] = wrapper;
-    const probe = await run(file, [...args, "test", "-w", directory], { cwd: "/" });
+    // Not `test -w`: the kernel answers that question as if the account had no capabilities.
+    const probe = await run(file, [...args, "test", "-d", `${directory}/.`], { cwd: "/" });
     if (probe.code === 0) return wrapper;
   }
   return undefined;

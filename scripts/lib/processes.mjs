@@ -31,19 +31,22 @@ export function isAlive({ pid, born }) {
  * @param {number} graceMs
  */
 export async function endProcess(mark, graceMs) {
-  signalGroup(mark, "SIGTERM");
+  send(mark, "SIGTERM");
   const deadline = Date.now() + graceMs;
   while (isAlive(mark) && Date.now() < deadline) await new Promise((resolve) => setTimeout(resolve, 25));
-  if (isAlive(mark)) signalGroup(mark, "SIGKILL");
+  if (isAlive(mark)) send(mark, "SIGKILL");
 }
 
-/** @param {ProcessMark} mark @param {NodeJS.Signals} signal */
-function signalGroup(mark, signal) {
+/** Signals the process and, where it leads a group, all of it. @param {ProcessMark} mark @param {NodeJS.Signals} signal */
+function send(mark, signal) {
   if (!isAlive(mark)) return;
-  try {
-    process.kill(-mark.pid, signal);
-  } catch {
-    // It ended in between.
+  for (const target of [-mark.pid, mark.pid]) {
+    try {
+      process.kill(target, signal);
+      return;
+    } catch {
+      // It leads no group, or ended in between.
+    }
   }
 }
 
