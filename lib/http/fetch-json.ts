@@ -25,6 +25,10 @@ export class ProblemError extends Error {
   ) {
     super(message);
   }
+
+  get detail(): string {
+    return this.message;
+  }
 }
 
 type Call<A> = {

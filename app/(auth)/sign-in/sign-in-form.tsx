@@ -29,7 +29,7 @@ export function SignInForm({ next, demo }: Props) {
   }
 
   return (
-    <>
+    <div className="ways">
       <form
         onSubmit={(event) => {
           event.preventDefault();
@@ -59,7 +59,7 @@ export function SignInForm({ next, demo }: Props) {
           </ul>
         </section>
       )}
-    </>
+    </div>
   );
 }
 

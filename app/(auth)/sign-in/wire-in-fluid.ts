@@ -1,12 +1,13 @@
 export type Fluid = { densityKgM3: number; viscosityPaS: number };
-export type Wire = { radiusM: number; densityKgM3: number; vacuumHz: number };
+/** `vacuumQ`: what its clamps leave of it without any fluid. */
+export type Wire = { radiusM: number; densityKgM3: number; vacuumHz: number; vacuumQ: number };
 
 /**
  * Resonance frequency and quality factor of a thin round wire that swings in a fluid at rest.
  *
- *   f₀ = f_vac / √(1 + (ρ/ρ_w) k),  Q = (1 + (ρ/ρ_w) k) / ((ρ/ρ_w) k′),  k + i k′ of Γ at Re = 2πf₀ρR²/η
+ *   f₀ = f_vac / √(1 + (ρ/ρ_w) k),  1/Q = (ρ/ρ_w) k′ / (1 + (ρ/ρ_w) k) + 1/Q_vac,  k and k′ at Re = 2πf₀ρR²/η
  *
- * Small amplitudes, no inner damping of the wire, no wall near. The frequency is found by iteration.
+ * Small amplitudes, no wall near. The frequency is found by iteration.
  *
  * Source: G. G. Stokes (1851) for the drag on a swinging cylinder; J. E. Sader, J. Appl. Phys. 84, 64 (1998), eqs. 4 and 9
  * for its form as Γ.
@@ -21,7 +22,7 @@ export function wireInFluid(wire: Wire, fluid: Fluid): { f0Hz: number; q: number
     f0Hz = next;
   }
   const { k, kPrime } = stokesDrag((2 * Math.PI * f0Hz * fluid.densityKgM3 * wire.radiusM ** 2) / fluid.viscosityPaS);
-  return { f0Hz, q: (1 + ratio * k) / (ratio * kPrime) };
+  return { f0Hz, q: 1 / ((ratio * kPrime) / (1 + ratio * k) + 1 / wire.vacuumQ) };
 }
 
 /**
