@@ -8,7 +8,7 @@ import type { RigAnswer, RigQuery } from "@/lib/rigs/schema";
 import { presentRig, type RigRow } from "@/lib/rigs/present";
 
 /** What a rig is doing comes from the campaign that occupies it: running, held and not set aside, or still parking. */
-export const OCCUPIES = "c.origin = 'protocol' and not c.set_aside and (c.state in ('running', 'held') or c.parking = 'running')";
+export const OCCUPIES = "c.origin = 'protocol' and not c.set_aside and (c.state in ('running', 'held') or c.parking in ('wanted', 'running'))";
 
 const SELECT = `
   select r.id, r.name, r.time_zone as "timeZone", r.clock, r.waste_capacity_ml as "wasteCapacityMl", r.waste_ml as "wasteMl",
