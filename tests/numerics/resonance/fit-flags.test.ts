@@ -1,0 +1,126 @@
+import { describe, expect, it } from "vitest";
+import { bentPower } from "@/lib/numerics/resonance/bent-model";
+import { fitResonance } from "@/lib/numerics/resonance/fit-resonance";
+import { linearGrid, type FitOptions } from "@/lib/numerics/resonance/types";
+import { Dice, noisySweep, type ComplexSweep } from "@/tests/numerics/resonance/sweeps";
+
+const F0 = 1000;
+const Q = 100;
+const HALF_WIDTH = F0 / (2 * Q);
+const velocity: FitOptions = { readout: "velocity" };
+
+function sweepOf({ from, to, points = 201, snr = 200, q = Q, seed = 1 }: { from: number; to: number; points?: number; snr?: number; q?: number; seed?: number }): ComplexSweep {
+  const dice = new Dice(seed);
+  const parameters = { readout: "velocity" as const, f0Hz: F0, q, a: dice.phasor(1), b: dice.phasor(3) };
+  return noisySweep(linearGrid(from, to, points), parameters, 1 / snr, dice);
+}
+
+/** A hardening or softening resonance swept in the order of its frequencies, keeping to its branch. */
+function bentSweep(bend: number, { snr = 300, descending = false, seed = 2 } = {}): ComplexSweep {
+  const dice = new Dice(seed);
+  const frequencyHz = linearGrid(F0 - 8 * HALF_WIDTH, F0 + 8 * HALF_WIDTH, 201);
+  if (descending) frequencyHz.reverse();
+  let near = 0.5;
+  const re = new Float64Array(201);
+  const im = new Float64Array(201);
+  frequencyHz.forEach((f, i) => {
+    const local = bend * (F0 / f) ** 3;
+    const x = Q * (f / F0 - F0 / f);
+    near = bentPower(x, local, near);
+    const shifted = x - local * near;
+    re[i] = near + dice.normal() / snr;
+    im[i] = -shifted * near + dice.normal() / snr;
+  });
+  return { kind: "complex", frequencyHz, re, im };
+}
+
+describe("flags, one by one", () => {
+  it("a good sweep has none", () => {
+    expect(fitResonance(sweepOf({ from: 970, to: 1030 }), velocity).flags).toEqual([]);
+  });
+
+  it("edge: f0 outside the middle 80 %", () => {
+    expect(fitResonance(sweepOf({ from: 995, to: 1055 }), velocity).flags).toContain("edge");
+    expect(fitResonance(sweepOf({ from: 945, to: 1005 }), velocity).flags).toContain("edge");
+    expect(fitResonance(sweepOf({ from: 993, to: 1053 }), velocity).flags).not.toContain("edge");
+  });
+
+  it("bent: the peak is pushed by more than 0.1 half-width, either way, swept either way", () => {
+    for (const bend of [0.2, 0.8, 2.5, -0.2, -1]) {
+      for (const descending of [false, true]) {
+        expect(fitResonance(bentSweep(bend, { descending }), velocity).flags).toContain("bent");
+      }
+    }
+  });
+
+  it("bent: not below 0.1 half-width, and not for a straight oscillator", () => {
+    expect(fitResonance(bentSweep(0.05, { snr: 3000 }), velocity).flags).not.toContain("bent");
+    expect(fitResonance(bentSweep(0), velocity).flags).toEqual([]);
+  });
+
+  it("bent: not when the noise hides it", () => {
+    expect(fitResonance(bentSweep(0.15, { snr: 15 }), velocity).flags).not.toContain("bent");
+  });
+
+  it("narrow: span below 2.5 half-widths", () => {
+    const fit = (halfWidths: number) =>
+      fitResonance(sweepOf({ from: F0 - (halfWidths / 2) * HALF_WIDTH, to: F0 + (halfWidths / 2) * HALF_WIDTH, snr: 3000 }), velocity);
+    expect(fit(2.2).flags).toContain("narrow");
+    expect(fit(2.8).flags).not.toContain("narrow");
+  });
+
+  it("sparse: fewer than 3 points inside the half-power band", () => {
+    const fit = (points: number) => fitResonance(sweepOf({ from: 949, to: 1051, points, snr: 1000 }), velocity);
+    expect(fit(19).flags).toContain("sparse");
+    expect(fit(41).flags).not.toContain("sparse");
+  });
+
+  it("noisy: amplitude below 5 noises", () => {
+    const fit = (snr: number) => fitResonance(sweepOf({ from: 970, to: 1030, points: 401, snr }), velocity);
+    expect(fit(3.5).flags).toContain("noisy");
+    expect(fit(8).flags).not.toContain("noisy");
+  });
+
+  it("distorted: residuals follow each other", () => {
+    const sweep = sweepOf({ from: 970, to: 1030, snr: 1000 });
+    const ripple = sweep.re.map((v, i) => v + 0.02 * Math.sin(i / 6));
+    expect(fitResonance({ ...sweep, re: ripple }, velocity).flags).toContain("distorted");
+  });
+
+  it("rushed: dwell below 5 ring-down times Q/(πf0)", () => {
+    const ringDown = Q / (Math.PI * F0);
+    const sweep = sweepOf({ from: 970, to: 1030 });
+    expect(fitResonance(sweep, { ...velocity, dwellS: 4.8 * ringDown }).flags).toEqual(["rushed"]);
+    expect(fitResonance(sweep, { ...velocity, dwellS: 5.2 * ringDown }).flags).toEqual([]);
+    expect(fitResonance(sweep, velocity).flags).toEqual([]);
+  });
+
+  it("failed: noise alone, a constant, one single frequency; every number is NaN", () => {
+    const dice = new Dice(3);
+    const frequencyHz = linearGrid(900, 1100, 201);
+    const noise = () => Float64Array.from({ length: 201 }, () => dice.normal());
+    const flat = new Float64Array(201).fill(2);
+    for (const sweep of [
+      { kind: "complex" as const, frequencyHz, re: noise(), im: noise() },
+      { kind: "complex" as const, frequencyHz, re: flat, im: flat },
+      { kind: "complex" as const, frequencyHz: new Float64Array(201).fill(1000), re: noise(), im: noise() },
+      { kind: "magnitude" as const, frequencyHz, magnitude: flat },
+    ]) {
+      const fit = fitResonance(sweep, velocity);
+      expect(fit.flags).toEqual(["failed"]);
+      expect([fit.f0Hz, fit.q, fit.f0StdHz, fit.qStd, fit.amplitude, fit.noise, fit.snr, fit.covariance.f0q, fit.a.re]).toEqual(new Array(9).fill(NaN));
+    }
+  });
+
+  it("failed: noise alone is not taken for a resonance, 300 times over", () => {
+    const dice = new Dice(4);
+    const frequencyHz = linearGrid(900, 1100, 201);
+    let taken = 0;
+    for (let k = 0; k < 300; k++) {
+      const re = Float64Array.from({ length: 201 }, () => dice.normal());
+      const im = Float64Array.from({ length: 201 }, () => dice.normal());
+      if (!fitResonance({ kind: "complex", frequencyHz, re, im }, velocity).flags.includes("failed")) taken++;
+    }
+    expect(taken).toBeLessThanOrEqual(3);
+  });
+});
