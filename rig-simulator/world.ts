@@ -53,7 +53,8 @@ export function worldAt(world: World, step: Step): World {
 
 /** The world after a step was done. Doing it twice is doing it once. */
 export function worldAfter(world: World, step: Step, scenario: Scenario): World {
-  const { last: _, ...before } = worldAt(world, step);
+  const before = { ...worldAt(world, step) };
+  delete before.last;
   const seconds = nominalSeconds(before, step, scenario);
   const after: World = {
     ...before,

@@ -1,4 +1,5 @@
 import { requireRange } from "./fluid-range-error";
+import { interpolateCubic } from "./interpolate";
 
 type State = { temperatureC: number; massFraction: number };
 
@@ -27,6 +28,8 @@ export function glycerolWaterViscosity({ temperatureC: t, massFraction: c }: Sta
   return water ** alpha * glycerol ** (1 - alpha);
 }
 
+const tenths = [0, 1, 2, 3, 4, 5, 6, 7, 8, 9, 10];
+
 /** g/cm³ at mass fractions 0, 0.1 … 1 of glycerol. */
 const densityAt = {
   t20: [0.99823, 1.0221, 1.0469, 1.0727, 1.0993, 1.1263, 1.1538, 1.18125, 1.2085, 1.2351, 1.26108],
@@ -47,18 +50,7 @@ const densityAt = {
 export function glycerolWaterDensity({ temperatureC: t, massFraction: c }: State): number {
   requireRange("Density of glycerol and water", "temperature / °C", t, glycerolDensityRange.minC, glycerolDensityRange.maxC);
   requireRange("Density of glycerol and water", "mass fraction", c, 0, 1);
-  const first = Math.min(Math.max(Math.floor(c * 10) - 1, 0), 7);
-  const [at20, at25, at30] = [densityAt.t20, densityAt.t25, densityAt.t30].map((row) => cubic(row.slice(first, first + 4), c * 10 - first));
+  const [at20, at25, at30] = [densityAt.t20, densityAt.t25, densityAt.t30].map((row) => interpolateCubic(tenths, row, 10 * c));
   const x = (t - 25) / 5;
   return 1000 * (at25 + (x * (at30 - at20)) / 2 + (x * x * (at20 - 2 * at25 + at30)) / 2);
-}
-
-/** Lagrange's cubic through (0, y₀) … (3, y₃). */
-function cubic([y0, y1, y2, y3]: number[], x: number): number {
-  return (
-    (-y0 * (x - 1) * (x - 2) * (x - 3)) / 6 +
-    (y1 * x * (x - 2) * (x - 3)) / 2 -
-    (y2 * x * (x - 1) * (x - 3)) / 2 +
-    (y3 * x * (x - 1) * (x - 2)) / 6
-  );
 }
