@@ -37,3 +37,27 @@ export function solveLowerInPlace(l: Float64Array, b: Float64Array): Float64Arra
   }
   return b;
 }
+
+/** Inverse of A, all of it, from its factor L from `choleskyInPlace`, which is overwritten. */
+export function inverseFromCholesky(l: Float64Array, size: number): Float64Array {
+  // L⁻¹ over L, by columns of the lower triangle.
+  for (let j = 0; j < size; j++) {
+    l[j * size + j] = 1 / l[j * size + j];
+    for (let i = j + 1; i < size; i++) {
+      let sum = 0;
+      for (let k = j; k < i; k++) sum += l[i * size + k] * l[k * size + j];
+      l[i * size + j] = -sum / l[i * size + i];
+    }
+  }
+  const inverse = new Float64Array(size * size);
+  for (let k = 0; k < size; k++) {
+    const row = k * size;
+    for (let i = 0; i <= k; i++) {
+      for (let j = 0; j <= i; j++) inverse[i * size + j] += l[row + i] * l[row + j];
+    }
+  }
+  for (let i = 0; i < size; i++) {
+    for (let j = 0; j < i; j++) inverse[j * size + i] = inverse[i * size + j];
+  }
+  return inverse;
+}

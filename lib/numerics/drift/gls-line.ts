@@ -1,17 +1,15 @@
 import { blockMeans } from "@/lib/numerics/drift/block-means";
 import { choleskyInPlace, solveLowerInPlace } from "@/lib/numerics/drift/cholesky";
-import { powerLawVariogram } from "@/lib/numerics/drift/power-law-variogram";
+import {
+  differenceCovariance,
+  differencedSeries,
+  noiseExponents,
+  type DifferencedSeries,
+} from "@/lib/numerics/drift/differenced-series";
 import { studentTQuantile } from "@/lib/numerics/statistics/distributions";
-import { median } from "@/lib/numerics/statistics/median";
-
-/** Exponents averaged over, S_y(f) ∝ f^α: white to random walk in quarters. */
-const exponents = [0, -0.25, -0.5, -0.75, -1, -1.25, -1.5, -1.75, -2] as const;
 
 /** Values up to which the full covariance is used; its cost grows with the cube. */
 const mostValues = 300;
-
-/** Longest record in units of its median spacing. */
-const longestRecord = 10_000_000;
 
 export type GlsLine = {
   slope: number;
@@ -66,12 +64,8 @@ export function glsLine({
 
   const blocks = blockMeans({ x, y }, mostValues);
   const n = blocks.x.length;
-  const dx = differences(blocks.x);
-  if (!dx.every((step) => step > 0)) throw new RangeError("times must rise");
-  const dy = differences(blocks.y);
-  const grid = gridIndices(blocks.x, median(dx));
-
-  const fits = exponents.map((alpha) => slopeUnder(alpha, { dx, dy, grid }));
+  const series = differencedSeries(blocks);
+  const fits = noiseExponents.map((alpha) => slopeUnder(alpha, series));
   const { slope, u, alpha } = averageFits(fits);
   const t = studentTQuantile((1 + confidence) / 2, n - 2);
   return {
@@ -88,23 +82,9 @@ export function glsLine({
 
 type Fit = { alpha: number; slope: number; variance: number; logLikelihood: number };
 
-function slopeUnder(
-  alpha: number,
-  { dx, dy, grid }: { dx: Float64Array; dy: Float64Array; grid: Float64Array },
-): Fit {
+function slopeUnder(alpha: number, { dx, dy, grid }: DifferencedSeries): Fit {
   const size = dx.length;
-  const variogram = powerLawVariogram(alpha, grid[size]);
-  const covariance = new Float64Array(size * size);
-  for (let i = 0; i < size; i++) {
-    for (let j = 0; j <= i; j++) {
-      covariance[i * size + j] =
-        (variogram[grid[i + 1] - grid[j]] +
-          variogram[Math.abs(grid[i] - grid[j + 1])] -
-          variogram[grid[i + 1] - grid[j + 1]] -
-          variogram[grid[i] - grid[j]]) /
-        2;
-    }
-  }
+  const covariance = differenceCovariance(alpha, grid);
   const logDeterminant = choleskyInPlace(covariance, size);
   const line = solveLowerInPlace(covariance, dx.slice());
   const values = solveLowerInPlace(covariance, dy.slice());
@@ -130,18 +110,6 @@ function averageFits(fits: readonly Fit[]): { slope: number; u: number; alpha: n
   const slope = average((fit) => fit.slope);
   const variance = average((fit) => fit.variance + (fit.slope - slope) ** 2);
   return { slope, u: Math.sqrt(variance), alpha: average((fit) => fit.alpha) };
-}
-
-/** Whole numbers, strictly rising, nearest to the times in units of their median spacing; from 0. */
-function gridIndices(x: Float64Array, spacing: number): Float64Array {
-  if ((x[x.length - 1] - x[0]) / spacing > longestRecord) throw new RangeError("the record is too long for its spacing");
-  const indices = new Float64Array(x.length);
-  for (let i = 1; i < x.length; i++) indices[i] = Math.max(indices[i - 1] + 1, Math.round((x[i] - x[0]) / spacing));
-  return indices;
-}
-
-function differences(values: Float64Array): Float64Array {
-  return values.subarray(1).map((value, i) => value - values[i]);
 }
 
 function mean(values: Float64Array): number {
