@@ -4,7 +4,12 @@ import { findCampaignsToAdvance } from "@/lib/campaigns/to-advance";
 import { listener } from "@/lib/listener";
 import { fitStep } from "@/lib/readings/fit-step";
 
-type Options = { onError: (key: string, error: unknown) => void; onMail: () => void };
+type Options = {
+  onError: (key: string, error: unknown) => void;
+  onMail: () => Promise<void>;
+  /** A campaign has moved: it may have a new time to be looked at. */
+  onAdvanced: () => Promise<void>;
+};
 
 /**
  * Acts at once on what others commit: readings are fitted as they arrive, a finished step leads to the next. The same use cases
@@ -12,9 +17,12 @@ type Options = { onError: (key: string, error: unknown) => void; onMail: () => v
  *
  * @returns Ends listening and waits for the work in hand.
  */
-export async function startFastPath({ onError, onMail }: Options): Promise<() => Promise<void>> {
+export async function startFastPath({ onError, onMail, onAdvanced }: Options): Promise<() => Promise<void>> {
   const queue = new KeyedQueue(onError);
-  const advance = (campaignId: string) => queue.run(`campaign:${campaignId}`, () => advanceCampaign({ campaignId, now: new Date() }));
+  const advance = (campaignId: string) => queue.run(`campaign:${campaignId}`, async () => {
+      await advanceCampaign({ campaignId, now: new Date() });
+      queue.run("due", onAdvanced);
+    });
   const catchUp = () =>
     queue.run("catch up", async () => {
       for (const campaignId of await findCampaignsToAdvance({ now: new Date() })) advance(campaignId);
@@ -24,10 +32,10 @@ export async function startFastPath({ onError, onMail }: Options): Promise<() =>
     const [what, key] = topic.split(":", 2);
     if (what === "campaign") advance(key);
     else if (what === "fit") queue.run(topic, () => fitStep(key));
-    else if (what === "mail") onMail();
+    else if (what === "mail") queue.run("mail", onMail);
     else if (what === "*") {
       catchUp();
-      onMail();
+      queue.run("mail", onMail);
     }
   });
   catchUp();

@@ -31,3 +31,15 @@ export async function findCampaignsToAdvance({ now }: { now: Date }): Promise<st
   );
   return found.map(({ id }) => id);
 }
+
+/** When the clock will next make something of a campaign on a real rig: a wait that ends, or a start. Within 400 days. */
+export function findNextDue({ now }: { now: Date }): Promise<{ campaignId: string; dueAt: Date }[]> {
+  return rows<{ campaignId: string; dueAt: Date }>(
+    `select c.id as "campaignId", coalesce(s.due_at, c.start_at) as "dueAt"
+       from campaign c join rig on rig.id = c.rig_id and rig.clock = 'real'
+       left join step s on s.campaign_id = c.id and s.kind = 'wait' and s.state = 'ready'
+      where ((c.state = 'queued' and c.start_at > $1) or ((c.state = 'running' or c.parking = 'running') and s.due_at > $1))
+        and coalesce(s.due_at, c.start_at) < $1::timestamptz + interval '400 days'`,
+    [now],
+  );
+}

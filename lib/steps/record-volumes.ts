@@ -19,8 +19,7 @@ export async function recordVolumes(transaction: Transaction, stepId: string): P
     `update rig set waste_ml = waste_ml + drained.ml
        from (select s.rig_id,
                     case s.kind when 'rinse' then (s.params->>'volumeMl')::float8 * coalesce((s.params->>'times')::int, 1)
-                    else coalesce((select (b.cursor->'cell'->>'volumeMl')::float8 from step b
-                                    where b.campaign_id = s.campaign_id and b.sequence < s.sequence order by b.sequence desc limit 1), 0)
+                    else coalesce((s.cursor->'cell'->>'volumeMl')::float8, 0)
                     end as ml
                from step s where s.id = $1 and s.kind in ('rinse', 'drain')) drained
       where rig.id = drained.rig_id`,
