@@ -40,8 +40,8 @@ export function resolveSweep(
 /**
  * The wide sweep of a `find` step: the protocol's `search`, else around what is known of the sensor.
  *
- * Around a resonance known in the same medium at another set-point it reaches ±10 %; in air ±10 % around the nominal
- * value; in a liquid, which loads the resonator, from 0.4 to 1.05 of it. Points lie at most half a half-width apart as far
+ * Around a resonance known in the same medium, and around the nominal value in air, it reaches ±10 % or 10 half-widths,
+ * whichever is more (at most ±70 %); in a liquid, which loads the resonator, from 0.4 to 1.05 of the nominal value. Points lie at most half a half-width apart as far
  * as the rig allows, in a liquid with Q taken as a twentieth of the nominal one. (Our choices, no source.)
  */
 export function findSweep(
@@ -50,14 +50,15 @@ export function findSweep(
     search: Definition["search"];
     medium: string;
     nominal: Track;
-    /** A resonance in the same medium at another set-point. */
+    /** A resonance in the same medium, at this set-point or another. */
     elsewhere: Track | undefined;
     abilities: RigAbilities;
   },
 ): SweepParams | undefined {
   const around = elsewhere ?? (medium === "air" ? nominal : { f0Hz: nominal.f0Hz, q: Math.max(nominal.q / 20, 2) });
   checkTrack(around);
-  const wide = !elsewhere && medium !== "air" ? { from: 0.4, to: 1.05 } : { from: 0.9, to: 1.1 };
+  const reach = Math.min(0.7, Math.max(0.1, 10 / (2 * around.q)));
+  const wide = !elsewhere && medium !== "air" ? { from: 0.4, to: 1.05 } : { from: 1 - reach, to: 1 + reach };
   const fromHz = search?.fromHz ?? around.f0Hz * wide.from;
   const toHz = search?.toHz ?? around.f0Hz * wide.to;
   const range = clamp(fromHz, toHz, 0, abilities);

@@ -23,8 +23,8 @@ export function drive(definition: Definition, world: TestWorld, { from = start(d
   let cursor = from;
   for (;;) {
     const answer = next(definition, cursor, world.facts);
-    if (!isStep(answer.action)) return { steps, cursor: stored(answer.cursor), action: answer.action };
     if (steps.length === limit) return { steps, cursor, action: answer.action };
+    if (!isStep(answer.action)) return { steps, cursor: stored(answer.cursor), action: answer.action };
     cursor = stored(answer.cursor);
     steps.push(answer.action.step);
     world.do(answer.action.step);
