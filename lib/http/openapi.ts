@@ -129,7 +129,8 @@ const operationId = (method: string, path: string) =>
  */
 function jsonSchema(schema: z.ZodType, io: "input" | "output", name: string, components: Record<string, unknown>): Json {
   const made = z.toJSONSchema(schema, { io, unrepresentable: "any" }) as Json;
-  const { $schema: _, $defs, ...own } = made;
+  const { $defs, ...own } = made;
+  delete own.$schema;
   const rename = (key: string) => (key.startsWith("__schema") ? `${name}_${key.slice(8)}` : key);
   const root = JSON.stringify(own).includes('"$ref":"#"');
   const moved = (value: unknown): unknown => {

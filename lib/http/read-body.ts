@@ -1,5 +1,5 @@
 import { gunzipSync } from "node:zlib";
-import { invalid, tooLarge, unsupportedType, type FieldError } from "@/lib/errors";
+import { AppError, invalid, tooLarge, unsupportedType, type FieldError } from "@/lib/errors";
 
 /** After decoding. Uploads stream and do not come this way. */
 export const MAX_BODY_BYTES = 8 * 1024 * 1024;
@@ -61,15 +61,29 @@ export function refuseBadText(value: unknown): void {
 const storable = (text: string) => !text.includes("\0") && !/\p{Surrogate}/u.test(text);
 
 async function readAll(request: Request): Promise<Buffer> {
-  if (Number(request.headers.get("content-length") ?? 0) > MAX_BODY_BYTES) throw overLimit();
+  const announced = request.headers.get("content-length");
+  if (Number(announced ?? 0) > MAX_BODY_BYTES) throw overLimit();
   if (!request.body) return Buffer.alloc(0);
+  try {
+    // The server holds a body to its announced length, so that only one without needs to be counted as it comes.
+    return announced === null ? await readCounted(request.body) : Buffer.from(await request.arrayBuffer());
+  } catch (error) {
+    if (error instanceof AppError) throw error;
+    throw invalid([{ path: "", message: "the body ended too early" }]);
+  }
+}
 
+async function readCounted(body: ReadableStream<Uint8Array>): Promise<Buffer> {
   const chunks: Uint8Array[] = [];
   let length = 0;
-  for await (const chunk of request.body as unknown as AsyncIterable<Uint8Array>) {
-    length += chunk.length;
-    if (length > MAX_BODY_BYTES) throw overLimit();
-    chunks.push(chunk);
+  const reader = body.getReader();
+  for (let next = await reader.read(); !next.done; next = await reader.read()) {
+    length += next.value.length;
+    if (length > MAX_BODY_BYTES) {
+      await reader.cancel();
+      throw overLimit();
+    }
+    chunks.push(next.value);
   }
   return Buffer.concat(chunks, length);
 }
