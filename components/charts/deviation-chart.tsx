@@ -8,7 +8,7 @@ import { formatDuration } from "@/lib/format-time";
 import { HATCH } from "@/components/strip/tint";
 import { AxisX, AxisY } from "./axes";
 import { isDrawable, logRange, notMeasured, type DeviationCurve, type DeviationPoint } from "./deviation";
-import { CurveDrawing, labelPlaces, NoiseGuides } from "./deviation-curves";
+import { acrossShifts, CurveDrawing, labelPlaces, NoiseGuides } from "./deviation-curves";
 import { NoiseLanes, NOISE_LANE_PX } from "./noise-lanes";
 import { Plot } from "./plot";
 import { QuantityLabel, quantityText, type PlotQuantity } from "./plot-quantity";
@@ -47,11 +47,14 @@ export function DeviationChart({ label, sentence, file, curves, quantity = ALLAN
   const lanes = small || drawn.every(({ within }) => within.every(({ noise }) => !noise)) ? 0 : drawn.length * NOISE_LANE_PX + 40;
   const full = bottom + 44 + lanes;
 
-  const x = scaleLog<number>({ domain: logRange(points.map(({ point }) => point.tau), 1.6), range: [left, right] });
-  const y = scaleLog<number>({ domain: logRange(points.flatMap(({ point }) => [point.deviation, point.low, point.high]), 1.5), range: [bottom, top] });
+  const x = scaleLog<number>({ domain: logRange(points.map(({ point }) => point.tau), small ? 4 : 3, 1.6), range: [left, right] });
+  const y = scaleLog<number>({ domain: logRange(points.flatMap(({ point }) => [point.deviation, point.low, point.high]), 1.5, 2.4), range: [bottom, top] });
   const [x0 = 1, x1 = 10] = x.domain();
   const [y0 = 1, y1 = 10] = y.domain();
   const empty = notMeasured(drawn);
+  const labels = labelPlaces(drawn.map(({ within }) => within.at(-1)), x, y);
+  const acrossLabels = labelPlaces(drawn.map(({ across }) => across.at(-1)), x, y);
+  const shifts = acrossShifts(drawn, x);
 
   function onKeyDown(event: KeyboardEvent) {
     const last = points.length - 1;
@@ -64,7 +67,7 @@ export function DeviationChart({ label, sentence, file, curves, quantity = ALLAN
 
   const here = cursor === undefined ? undefined : points[cursor];
   return (
-    <Plot label={label} sentence={sentence} file={file} twin={() => deviationTwin(drawn, quantity, band)}>
+    <Plot label={label} sentence={sentence} file={file} twin={() => deviationTwin(drawn, quantity, band)} reading={here && <Reading point={here.point} name={here.curve.label} across={here.across} band={band} />}>
       <div ref={ref} style={{ minHeight: full }}>
         {width > 0 && (
           <svg width={width} height={full} role="img" aria-label={label} tabIndex={0} onKeyDown={onKeyDown} onBlur={() => setCursor(undefined)}>
@@ -82,8 +85,8 @@ export function DeviationChart({ label, sentence, file, curves, quantity = ALLAN
                 {x(empty[1]) - x(empty[0]) > 60 && <text className="halo" x={(x(empty[0]) + x(empty[1])) / 2} y={bottom - 10} textAnchor="middle">not measured</text>}
               </g>
             )}
-            <NoiseGuides curves={drawn} x={x} y={y} box={{ left, right, top, bottom }} small={small} />
-            {drawn.map((curve, i) => <CurveDrawing key={curve.id} curve={curve} x={x} y={y} top={top} labelY={labelPlaces(drawn, y, bottom)[i]} />)}
+            <NoiseGuides curves={drawn} x={x} y={y} right={right} small={small} />
+            {drawn.map((curve, i) => <CurveDrawing key={curve.id} curve={curve} x={x} y={y} top={top} labelY={labels[i]} acrossLabelY={acrossLabels[i]} shift={shifts[i] ?? 0} />)}
             {drawn.some(({ across }) => across.length > 0) && !small && <text className="halo" x={right} y={top + 12} textAnchor="end">hollow: from phase to phase</text>}
             {here && <circle cx={x(here.point.tau)} cy={y(here.point.deviation)} r="6.5" fill="none" stroke="var(--ink)" strokeWidth="1.6" />}
             <QuantityLabel quantity={quantity} x={left} y={8} />
@@ -91,11 +94,6 @@ export function DeviationChart({ label, sentence, file, curves, quantity = ALLAN
             {lanes > 0 && <NoiseLanes curves={drawn} x={x} left={left} top={bottom + 56} />}
           </svg>
         )}
-      </div>
-      <div className="plot-reading">
-        <span className="num whitespace-normal" aria-live="polite">
-          {here && <Reading point={here.point} name={here.curve.label} across={here.across} band={band} />}
-        </span>
       </div>
     </Plot>
   );

@@ -1,4 +1,4 @@
-import type { Pen } from "./pens";
+import type { Dash, Pen } from "./pens";
 
 /** One averaging time: deviation with the limits of its band, and how much it rests on. */
 export type DeviationPoint = {
@@ -19,6 +19,7 @@ export type DeviationCurve = {
   id: string;
   label: string;
   pen: Pen;
+  dash?: Dash;
   /** Inside phases: filled marks and a line. */
   within: readonly DeviationPoint[];
   /** From phase to phase: hollow marks with bars, no line. */
@@ -28,7 +29,7 @@ export type DeviationCurve = {
 export const isDrawable = ({ tau, deviation }: DeviationPoint): boolean => tau > 0 && deviation > 0 && Number.isFinite(tau) && Number.isFinite(deviation);
 
 /** A log axis that holds the values with room; always at least a decade. */
-export function logRange(values: Iterable<number>, room = 1.35): [number, number] {
+export function logRange(values: Iterable<number>, room = 1.35, roomBelow = room): [number, number] {
   let low = Infinity;
   let high = 0;
   for (const value of values) {
@@ -37,7 +38,7 @@ export function logRange(values: Iterable<number>, room = 1.35): [number, number
     high = Math.max(high, value);
   }
   if (low > high) return [1, 10];
-  low /= room;
+  low /= roomBelow;
   high *= room;
   const missing = Math.sqrt(Math.max(1, 10 / (high / low)));
   return [low / missing, high * missing];
@@ -68,19 +69,16 @@ export function noiseStretches(points: readonly DeviationPoint[]): { from: numbe
   return stretches;
 }
 
-/** Label places moved apart to at least `apart` pixels, in their order, by as little as a sweep down and back gives. */
-export function spreadLabels(places: readonly number[], apart: number, lowest: number): number[] {
-  const order = places.map((y, i) => ({ y, i })).sort((a, b) => a.y - b.y);
-  order.forEach((label, k) => {
-    const above = order[k - 1];
-    if (above && label.y - above.y < apart) label.y = above.y + apart;
-  });
-  for (let k = order.length - 1; k >= 0; k--) {
-    const label = order[k];
-    if (!label) continue;
-    label.y = Math.min(label.y, (order[k + 1]?.y ?? lowest + apart) - apart);
+/** Heights of labels, moved down until those nearer than `reach` along x are at least `apart` from each other. */
+export function spreadLabels(places: readonly { x: number; y: number }[], apart: number, reach: number): number[] {
+  const settled: { x: number; y: number }[] = [];
+  const heights = places.map(({ y }) => y);
+  const order = places.map((place, i) => ({ ...place, i })).sort((a, b) => a.y - b.y);
+  for (const { x, y, i } of order) {
+    const near = settled.filter((label) => Math.abs(label.x - x) < reach).map((label) => label.y);
+    const free = near.reduce((height, taken) => (height - taken < apart ? taken + apart : height), y);
+    settled.push({ x, y: free });
+    heights[i] = free;
   }
-  const spread = [...places];
-  for (const { y, i } of order) spread[i] = y;
-  return spread;
+  return heights;
 }

@@ -1,5 +1,5 @@
 import { noiseStretches, type DeviationCurve } from "./deviation";
-import { penOf } from "./pens";
+import { dashOf, penOf } from "./pens";
 
 export const NOISE_LANE_PX = 30;
 
@@ -12,7 +12,7 @@ export function NoiseLanes({ curves, x, left, top }: NoiseLanesProps) {
       <text className="label" x={left} y={top}>noise by stretch</text>
       {curves.map((curve, i) => {
         const y = top + 16 + i * NOISE_LANE_PX;
-        const { colour, dash } = penOf(curve.pen);
+        const { colour } = penOf(curve.pen);
         return (
           <g key={curve.id}>
             {[...noiseStretches(curve.within), ...noiseStretches(curve.across ?? [])].map(({ from, to, noise }) => {
@@ -20,7 +20,7 @@ export function NoiseLanes({ curves, x, left, top }: NoiseLanesProps) {
               const x1 = x(to) - 1.5;
               return (
                 <g key={`${from}-${noise}`}>
-                  <path d={`M${x0} ${y}H${x1}`} stroke={colour} strokeWidth="2" strokeDasharray={dash} />
+                  <path d={`M${x0} ${y}H${x1}`} stroke={colour} strokeWidth="2" strokeDasharray={dashOf(curve)} />
                   <path d={`M${x0} ${y - 4}v8M${x1} ${y - 4}v8`} stroke={colour} />
                   <text className="halo" x={(x0 + x1) / 2} y={y + 16} textAnchor="middle" style={{ fill: "var(--ink)" }}>{noise}</text>
                 </g>

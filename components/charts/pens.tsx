@@ -16,6 +16,12 @@ const PENS: Record<Pen, { colour: string; dash?: string; marker: Marker }> = {
 
 export const penOf = (pen: Pen) => PENS[pen];
 
+export type Dash = "solid" | "dashed" | "dotted";
+const DASHES: Record<Dash, string | undefined> = { solid: undefined, dashed: "7 3", dotted: "2 2.5" };
+
+/** The pen's own dash, unless another is asked for because two pens of a plot would have the same. */
+export const dashOf = ({ pen, dash }: { pen: Pen; dash?: Dash }): string | undefined => (dash ? DASHES[dash] : PENS[pen].dash);
+
 type PointMarkProps = { pen: Pen; x: number; y: number; r?: number; hollow?: boolean; marker?: Marker };
 
 export function PointMark({ pen, x, y, r = 3, hollow, marker = PENS[pen].marker }: PointMarkProps) {

@@ -19,6 +19,8 @@ type PlotProps = {
   /** File name without ending. */
   file: string;
   twin: () => Twin;
+  /** What the cursor stands on, in the line under the drawing. */
+  reading?: ReactNode;
   className?: string;
   children: ReactNode;
 };
@@ -33,7 +35,7 @@ function asShown(value: string | number | null): ReactNode {
 }
 
 /** Frame of every plot: the drawing, its sentence, its table, and the offers Table, SVG and CSV. */
-export function Plot({ label, sentence, file, twin, className, children }: PlotProps) {
+export function Plot({ label, sentence, file, twin, reading, className, children }: PlotProps) {
   const [open, setOpen] = useState(false);
   const drawing = useRef<HTMLDivElement>(null);
   const tableId = useId();
@@ -41,12 +43,15 @@ export function Plot({ label, sentence, file, twin, className, children }: PlotP
   return (
     <figure className={classNames("plot", className)} aria-label={label}>
       <div ref={drawing}>{children}</div>
-      {sentence && <figcaption className="caption">{sentence}</figcaption>}
-      <div className="offers" role="group" aria-label={`${label}, as`}>
-        <button type="button" aria-expanded={open} aria-controls={tableId} onClick={() => setOpen(!open)}>Table</button>
-        <button type="button" onClick={() => saveText(`${file}.svg`, "image/svg+xml", svgOf(drawing.current, label))}>SVG</button>
-        <button type="button" onClick={() => saveText(`${file}.csv`, "text/csv", tableAsCsv(twin()))}>CSV</button>
+      <div className="plot-reading">
+        <span className="num grow whitespace-normal" aria-live="polite">{reading}</span>
+        <div className="offers" role="group" aria-label={`${label}, as`}>
+          <button type="button" aria-expanded={open} aria-controls={tableId} onClick={() => setOpen(!open)}>Table</button>
+          <button type="button" onClick={() => saveText(`${file}.svg`, "image/svg+xml", svgOf(drawing.current, label))}>SVG</button>
+          <button type="button" onClick={() => saveText(`${file}.csv`, "text/csv", tableAsCsv(twin()))}>CSV</button>
+        </div>
       </div>
+      {sentence && <figcaption className="caption">{sentence}</figcaption>}
       <div id={tableId}>
         {data && (
           <div className="plot-twin" tabIndex={0} role="region" aria-label={`${label}, table`}>

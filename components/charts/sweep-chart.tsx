@@ -4,6 +4,7 @@ import { scaleLinear } from "@visx/scale";
 import { useState, type KeyboardEvent, type ReactNode } from "react";
 import { formatNumber } from "@/lib/format";
 import { AxisX, AxisY } from "./axes";
+import { stackPanels } from "./panel-places";
 import { Plot } from "./plot";
 import { QuantityLabel, quantityText, type PlotQuantity } from "./plot-quantity";
 import { rangeOf, roundTicks } from "./ticks";
@@ -37,16 +38,15 @@ export function SweepChart({ label, sentence, file, frequencyHz, panels, residua
   const x = scaleLinear<number>({ domain: rangeOf(frequencyHz, 0) ?? [0, 1], range: [LEFT, right] });
   const [x0 = 0, x1 = 1] = x.domain();
 
-  let bottom = 0;
+  const heights = panels.map((panel, i) => panel.height ?? (i === 0 ? 186 : 94));
+  const { tops, bottom: modelBottom } = stackPanels(heights, 22, 28);
   const places = panels.map((panel, i) => {
-    const top = bottom + (i === 0 ? 22 : 28);
-    const height = panel.height ?? (i === 0 ? 186 : 94);
-    bottom = top + height;
-    return { panel, top, y: scaleLinear<number>({ domain: rangeOf([...panel.measured, ...(panel.model ?? []), ...(i === 0 ? [0] : [])]) ?? [0, 1], range: [bottom, top] }) };
+    const top = tops[i] ?? 0;
+    const domain = rangeOf([...panel.measured, ...(panel.model ?? []), ...(i === 0 ? [0] : [])]) ?? [0, 1];
+    return { panel, top, y: scaleLinear<number>({ domain, range: [top + (heights[i] ?? 0), top] }) };
   });
-  const modelBottom = bottom;
-  const residualTop = bottom + 36;
-  if (residuals) bottom = residualTop + 70;
+  const residualTop = modelBottom + 36;
+  const bottom = residuals ? residualTop + 70 : modelBottom;
   const residualY = scaleLinear<number>({ domain: rangeOf([0, ...(residuals?.inPhase ?? []), ...(residuals?.quadrature ?? [])]) ?? [-1, 1], range: [bottom, residualTop] });
   const axisY = bottom + 6;
   const marks = f0Hz === undefined ? [] : q ? [f0Hz - f0Hz / (2 * q), f0Hz, f0Hz + f0Hz / (2 * q)] : [f0Hz];
@@ -64,8 +64,15 @@ export function SweepChart({ label, sentence, file, frequencyHz, panels, residua
   const here = cursor === undefined ? undefined : frequencyHz[cursor];
   const dots = (values: readonly number[], y: (value: number) => number) => frequencyHz.map((f, i) => (Number.isFinite(values[i]) ? `M${x(f).toFixed(1)} ${y(values[i] ?? 0).toFixed(1)}h0` : "")).join("");
   const rings = (values: readonly number[], y: (value: number) => number, r: number) => frequencyHz.map((f, i) => (Number.isFinite(values[i]) ? `M${(x(f) - r).toFixed(1)} ${y(values[i] ?? 0).toFixed(1)}a${r} ${r} 0 1 0 ${2 * r} 0a${r} ${r} 0 1 0 ${-2 * r} 0` : "")).join("");
+  const reading = here !== undefined && cursor !== undefined && (
+    <>
+      <b>{formatNumber(here)} Hz</b>
+      {panels.map((panel) => <span key={quantityText(panel.quantity)}>&ensp;{quantityText(panel.quantity)} <span className="value">{formatNumber(Number((panel.measured[cursor] ?? NaN).toPrecision(6)))}</span></span>)}
+      {residuals && <>&ensp;{quantityText(residuals.quantity)} <span className="value">{formatNumber(Number((residuals.inPhase[cursor] ?? NaN).toPrecision(3)), { signed: true })}</span></>}
+    </>
+  );
   return (
-    <Plot label={label} sentence={sentence} file={file} twin={() => sweepTwin(frequencyHz, panels, residuals)}>
+    <Plot label={label} sentence={sentence} file={file} twin={() => sweepTwin(frequencyHz, panels, residuals)} reading={reading}>
       <div ref={ref} style={{ minHeight: axisY + 48 }}>
         {width > 0 && (
           <svg width={width} height={axisY + 46} role="img" aria-label={label} tabIndex={0} onKeyDown={onKeyDown} onBlur={() => setCursor(undefined)}>
@@ -97,16 +104,6 @@ export function SweepChart({ label, sentence, file, frequencyHz, panels, residua
             <QuantityLabel quantity={{ words: "frequency", unit: "Hz" }} x={right} y={axisY + 40} anchor="end" />
           </svg>
         )}
-      </div>
-      <div className="plot-reading">
-        <span className="num whitespace-normal" aria-live="polite">
-          {here !== undefined && cursor !== undefined && (
-            <>
-              <b>{formatNumber(here)} Hz</b>{panels.map((panel) => <span key={quantityText(panel.quantity)}>&ensp;{quantityText(panel.quantity)} <span className="value">{formatNumber(Number((panel.measured[cursor] ?? NaN).toPrecision(6)))}</span></span>)}
-              {residuals && <>&ensp;{quantityText(residuals.quantity)} <span className="value">{formatNumber(Number((residuals.inPhase[cursor] ?? NaN).toPrecision(3)), { signed: true })}</span></>}
-            </>
-          )}
-        </span>
       </div>
     </Plot>
   );

@@ -3,6 +3,7 @@
 import { useMemo, useState, type KeyboardEvent, type ReactNode } from "react";
 import { formatCount, formatNumber, formatUncertain } from "@/lib/format";
 import { formatDate, formatDayTime } from "@/lib/format-time";
+import { placesWithRoom, stackPanels } from "./panel-places";
 import { Plot } from "./plot";
 import { quantityText } from "./plot-quantity";
 import { closedTimeAxis, timeTicks, trueTimeAxis, type TimeAxis } from "./time-axis";
@@ -49,13 +50,8 @@ export function TimeSeriesChart({ label, sentence, file, panels, from, to, zone,
   }, [closeGaps, phases, from, to, left, right, width]);
 
   const stops = useMemo(() => (axis ? panelStops(panels[0], axis, phases) : []), [panels, axis, phases]);
-  const tops: number[] = [];
-  let bottom = 0;
   const heights = panels.map((panel, i) => panel.height ?? HEIGHTS[i] ?? 64);
-  heights.forEach((height) => {
-    tops.push(bottom + (bottom === 0 ? HEADROOM : PANEL_GAP));
-    bottom = (tops[tops.length - 1] ?? 0) + height;
-  });
+  const { tops, bottom } = stackPanels(heights, HEADROOM, PANEL_GAP);
   const closed = (axis?.breaks.length ?? 0) > 0;
   const axisY = bottom + 6;
   const height = axisY + (closed ? 40 : 24);
@@ -88,8 +84,20 @@ export function TimeSeriesChart({ label, sentence, file, panels, from, to, zone,
   const stop = cursor === undefined ? undefined : stops[cursor];
   const mainScale = panels[0] && panelScale(panels[0], tops[0] ?? 0, heights[0] ?? 0);
   const part = whole && (whole.from !== from || whole.to !== to);
+  const reading = (
+    <>
+      {stop && panels[0] && (
+        <>
+          <b>{formatDayTime(stop.at, zone, to)}</b>&ensp;{quantityText(panels[0].quantity)}{" "}
+          <span className="value">{stop.u ? formatUncertain(stop.value, stop.u) : inFive(stop.value)}</span>
+          {stop.n > 1 && `, from ${inFive(stop.low)} to ${inFive(stop.high)} in ${formatCount(stop.n)} repeats`}
+        </>
+      )}
+      {part && whole && onWindow && <>{stop && " "}<button type="button" className="underline underline-offset-[3px]" onClick={() => onWindow(whole.from, whole.to)}>Whole run</button></>}
+    </>
+  );
   return (
-    <Plot label={label} sentence={sentence} file={file} twin={() => timeSeriesTwin(panels)}>
+    <Plot label={label} sentence={sentence} file={file} twin={() => timeSeriesTwin(panels)} reading={reading}>
       <div ref={ref} style={{ minHeight: height }}>
         {axis && (
           <svg width={width} height={height} role="img" aria-label={label} tabIndex={0} onKeyDown={onKeyDown} {...drag.handlers}>
@@ -105,21 +113,11 @@ export function TimeSeriesChart({ label, sentence, file, panels, from, to, zone,
           </svg>
         )}
       </div>
-      <div className="plot-reading">
-        <span className="num whitespace-normal" aria-live="polite">
-          {stop && panels[0] && (
-            <>
-              <b>{formatDayTime(stop.at, zone, to)}</b>&ensp;{quantityText(panels[0].quantity)}{" "}
-              <span className="value">{stop.u ? formatUncertain(stop.value, stop.u) : formatNumber(stop.value, { decimals: 2 })}</span>
-              {stop.n > 1 && `, from ${formatNumber(stop.low, { decimals: 2 })} to ${formatNumber(stop.high, { decimals: 2 })} in ${formatCount(stop.n)} repeats`}
-            </>
-          )}
-        </span>
-        {part && whole && onWindow && <button type="button" className="underline underline-offset-[3px]" onClick={() => onWindow(whole.from, whole.to)}>Whole run</button>}
-      </div>
     </Plot>
   );
 }
+
+const inFive = (value: number) => formatNumber(Number(value.toPrecision(5)));
 
 function nextStop(event: KeyboardEvent, here: number, stops: readonly { stretch: number }[]): number | undefined {
   const last = stops.length - 1;
@@ -147,20 +145,16 @@ function BottomAxis({ axis, phases, from, to, zone, y }: { axis: TimeAxis; phase
       </g>
     );
   }
-  let lastX = -Infinity;
+  const middles = axis.pieces.map(({ x0, x1 }) => (x0 + x1) / 2);
+  const roomy = placesWithRoom(middles, 46);
   return (
     <g>
-      {axis.pieces.map((piece) => {
-        const middle = (piece.x0 + piece.x1) / 2;
-        const room = middle - lastX > 46;
-        if (room) lastX = middle;
-        return (
-          <g key={piece.from}>
-            <path className="axis-line" d={`M${piece.x0} ${y}H${piece.x1}`} />
-            {room && <text x={middle} y={y + 15} textAnchor="middle">{formatDate(piece.from, zone)}</text>}
-          </g>
-        );
-      })}
+      {axis.pieces.map((piece, i) => (
+        <g key={piece.from}>
+          <path className="axis-line" d={`M${piece.x0} ${y}H${piece.x1}`} />
+          {roomy[i] && <text x={middles[i]} y={y + 15} textAnchor="middle">{formatDate(piece.from, zone)}</text>}
+        </g>
+      ))}
       {axis.breaks.map(({ x, after }) => (
         <g key={x}>
           <path d={`M${x - 2} ${y + 4}l4 -8`} stroke="var(--ink3)" />

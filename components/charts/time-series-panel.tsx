@@ -33,7 +33,7 @@ export const TimeSeriesPanel = memo(function TimeSeriesPanel({ panel, axis, phas
         </g>
       ))}
       {panel.notes?.map((note) => {
-        const x = axis.place(Date.parse(note.at));
+        const x = noteX(axis, Date.parse(note.at));
         return x === undefined ? null : (
           <g key={note.text}>
             <path d={`M${x} ${top + 2}V${top + height}`} stroke="var(--ink3)" strokeDasharray="2 2" />
@@ -45,6 +45,14 @@ export const TimeSeriesPanel = memo(function TimeSeriesPanel({ panel, axis, phas
     </g>
   );
 });
+
+/** A note in a closed gap stands at the break. */
+function noteX(axis: TimeAxis, at: number): number | undefined {
+  const inside = axis.place(at);
+  if (inside !== undefined || axis.breaks.length === 0) return inside;
+  const next = axis.pieces.findIndex(({ from }) => from > at);
+  return next > 0 ? axis.breaks[next - 1]?.x : undefined;
+}
 
 type At = (value: number) => string;
 

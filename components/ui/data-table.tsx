@@ -89,7 +89,7 @@ export function DataTable<Row extends RowData>(props: DataTableProps<Row>) {
   return (
     <div className="table-box">
       {problem}
-      <table className={classNames("data-table lines", tall && "tall", columns.some(({ width }) => width) && "fixed")} aria-label={label} aria-busy={refreshing || undefined}>
+      <table className={classNames("data-table lines", tall && "tall", columns.some(({ width }) => width) && "set-widths")} aria-label={label} aria-busy={refreshing || undefined}>
         <colgroup>{columns.map(({ id, width }) => <col key={id} style={width ? { width } : undefined} />)}</colgroup>
         <thead>
           {table.getHeaderGroups().map((group) => (
