@@ -52,12 +52,13 @@ export async function up({ context }: { context: QueryInterface }): Promise<void
 
     create table step_lease (
       lease text primary key,
+      ordinal bigint generated always as identity,
       step_id bigint not null references step,
       rig_id bigint not null references rig,
       agent_session_id bigint references agent_session,
       given_at timestamptz not null
     );
-    create index step_lease_step on step_lease (step_id);
+    create index step_lease_step on step_lease (step_id, ordinal desc);
 
     create table phase (
       id bigint generated always as identity primary key,

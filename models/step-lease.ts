@@ -3,6 +3,7 @@ import { sequelize } from "@/lib/db";
 
 export class StepLease extends Model<InferAttributes<StepLease>, InferCreationAttributes<StepLease>> {
   declare lease: string;
+  declare ordinal: CreationOptional<string>;
   declare stepId: string;
   declare rigId: string;
   declare agentSessionId: CreationOptional<string | null>;
@@ -12,6 +13,7 @@ export class StepLease extends Model<InferAttributes<StepLease>, InferCreationAt
 StepLease.init(
   {
     lease: { type: DataTypes.TEXT, primaryKey: true },
+    ordinal: { type: DataTypes.BIGINT },
     stepId: { type: DataTypes.BIGINT, allowNull: false },
     rigId: { type: DataTypes.BIGINT, allowNull: false },
     agentSessionId: { type: DataTypes.BIGINT },

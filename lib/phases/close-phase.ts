@@ -29,7 +29,7 @@ const PHASE = `
   select p.id as "phaseId", r.id as "fitRunId", p.step_id as "stepId", p.campaign_id as "campaignId", p.medium, p.role, p.sequence, p.cycle,
          p.set_point_c as "setPointC", p.mount_id as "mountId", p.readout, p.discard,
          s.state in ('skipped', 'failed') as "givenUp",
-         coalesce(jsonb_path_query_first(v.definition, '$.** ? (@.id == $block).sweep.centre', jsonb_build_object('block', s.block_id)) = '"track"', false) as tracked
+         coalesce(jsonb_path_query_first(v.definition, '$.** ? (@.id == $$block).sweep.centre', jsonb_build_object('block', s.block_id)) = '"track"', false) as tracked
     from phase p join step s on s.id = p.step_id join protocol_version v on v.id = s.protocol_version_id
     join fit_run r on r.campaign_id = p.campaign_id and r.current
    where p.step_id = $1`;

@@ -67,7 +67,7 @@ export function finishStep({ agent, session, stepId, body, now }: Finish) {
 async function alreadyEnded(transaction: Transaction, step: LeasedStep, lease: string): Promise<"done" | "ready" | "failed" | undefined> {
   if (step.current && step.state === "out") return undefined;
   const newest = await row<{ lease: string }>(
-    `select lease from step_lease where step_id = $1 order by given_at desc, lease desc limit 1`,
+    `select lease from step_lease where step_id = $1 order by ordinal desc limit 1`,
     [step.id],
     transaction,
   );
