@@ -3,13 +3,14 @@ import type { AddressInfo } from "node:net";
 import { gunzipSync } from "node:zlib";
 import type { Done, Reading, Step, Wish } from "@/rig-simulator/contract";
 
-type Plan = Pick<Step, "kind" | "params"> & { cycle?: number; dueAt?: string };
+type WhatToDo<S = Step> = S extends Step ? Pick<S, "kind" | "params"> : never;
+type Plan = WhatToDo & { cycle?: number; dueAt?: string };
 type Planned = Plan & { sequence: number; state: "ready" | "out" | "done" | "failed"; attempts: number; leases: string[]; done?: Done };
 
 /** What a test may do to a request before it is served: answer it itself, or note it and let it pass. */
-export type Meddle = (call: { path: string; body: Record<string, unknown>; number: number }) =>
-  | { status: number; body?: unknown; headers?: Record<string, string> }
-  | undefined;
+export type Meddle = (call: { path: string; body: Record<string, unknown>; number: number }) => Answer | undefined;
+
+type Answer = { status: number; body?: unknown; headers?: Record<string, string> };
 
 /** A small server that keeps the agent contract with a fixed list of steps, in memory. */
 export class ContractServer {
@@ -54,12 +55,12 @@ export class ContractServer {
     const body = JSON.parse(text.toString()) as Record<string, unknown>;
     this.calls.push({ path, body });
     if (typeof body.clock === "string") this.clockMs = Math.max(this.clockMs, Date.parse(body.clock));
-    const answer = this.meddle({ path, body, number: this.calls.length }) ?? this.answer(path, body);
-    response.writeHead(answer.status, { "content-type": "application/json", ...("headers" in answer ? answer.headers : {}) });
+    const answer: Answer = this.meddle({ path, body, number: this.calls.length }) ?? this.answer(path, body);
+    response.writeHead(answer.status, { "content-type": "application/json", ...answer.headers });
     response.end(answer.body === undefined ? undefined : JSON.stringify(answer.body));
   }
 
-  private answer(path: string, body: Record<string, unknown>): { status: number; body?: unknown } {
+  private answer(path: string, body: Record<string, unknown>): Answer {
     if (path.endsWith("/hello"))
       return {
         status: 200,
@@ -70,7 +71,7 @@ export class ContractServer {
       if (step && body.done) step.done = body.done as Done;
       const next = this.current();
       const dueAt = next?.state === "ready" && next.dueAt && Date.parse(next.dueAt) > this.clockMs ? next.dueAt : undefined;
-      return { status: 200, body: { wish: this.wish, dueAt } };
+      return { status: 200, body: { wish: this.wish, ...(dueAt ? { dueAt } : {}) } };
     }
     if (path.endsWith("/next")) return this.give();
     const [, sequence, act] = /steps\/(\d+)\/(readings|finish)$/.exec(path) ?? [];
@@ -83,7 +84,7 @@ export class ContractServer {
     return this.steps.find(({ state }) => state === "ready" || state === "out");
   }
 
-  private give(): { status: number; body?: unknown } {
+  private give(): Answer {
     const step = this.current();
     if (!step || this.wish !== "none" || (step.dueAt && Date.parse(step.dueAt) > this.clockMs)) return { status: 204 };
     const again = step.attempts > 0;
@@ -124,7 +125,7 @@ export class ContractServer {
     return gaps;
   }
 
-  private store(step: Planned, body: Record<string, unknown>): { status: number; body?: unknown } {
+  private store(step: Planned, body: Record<string, unknown>): Answer {
     const readings = body.readings as Reading[];
     if (readings.length > this.limits.maxReadings) return { status: 400, body: { detail: "too many readings" } };
     const answer = { stored: [] as number[], alreadyStored: [] as number[], differs: [] as number[] };
@@ -138,7 +139,7 @@ export class ContractServer {
     return { status: 200, body: { ...answer, lease, wish: this.wish } };
   }
 
-  private finish(step: Planned, body: Record<string, unknown>): { status: number; body?: unknown } {
+  private finish(step: Planned, body: Record<string, unknown>): Answer {
     if (body.lease !== step.leases.at(-1)) return { status: 409, body: { type: "/problems/lease-lost", detail: "given out again" } };
     const outcome = body.outcome as string;
     if (outcome === "done" && this.missing(step).length > 0) return { status: 422, body: { type: "/problems/incomplete", detail: "readings are missing" } };
