@@ -2,7 +2,7 @@ import { failedFit } from "@/lib/numerics/resonance/failed-fit";
 import { fft } from "@/lib/numerics/resonance/fft";
 import type { FitFlag } from "@/lib/numerics/resonance/flags";
 import { FEWEST_POINTS } from "@/lib/numerics/resonance/prepare";
-import { decayModel, emptyDecayModel } from "@/lib/numerics/resonance/ring-down-model";
+import { decayModel, emptyDecayModel, type DecayModel } from "@/lib/numerics/resonance/ring-down-model";
 import type { ResonanceFit } from "@/lib/numerics/resonance/types";
 
 export type RingDown = {
@@ -15,6 +15,8 @@ export type RingDown = {
 };
 
 const MOST_STEPS = 60;
+/** Done after a step that promises less than this share of a variance. */
+const SMALL_GAIN = 1e-6;
 const NOISY_SNR = 5;
 const DISTORTED_SIGMAS = 4;
 const LEAST_GAIN = 20;
@@ -43,56 +45,62 @@ export function fitRingDown({ sampleHz, startS, volts }: RingDown): ResonanceFit
   if (n < FEWEST_POINTS) throw new RangeError(`a ring-down needs at least ${FEWEST_POINTS} samples after switch-off, got ${n}`);
   if (!y.every(Number.isFinite)) throw new RangeError("a sample is not finite");
 
-  // Angles and decays are per sample up to the end.
-  const start = decayGuess(y);
+  const end = descendDecay(y, decayGuess(y));
+  return end.settled ? describeDecay(end, n, sampleHz) : failedFit(end.evaluations);
+}
+
+/** Angle ω and decay γ, both per sample. */
+type Decay = { omega: number; gamma: number };
+type DecaySolution = Decay & { model: DecayModel; settled: boolean; evaluations: number };
+
+/** Damped Gauss–Newton over (ω, γ). */
+function descendDecay(y: Float64Array, start: Decay): DecaySolution {
+  const n = y.length;
   let here = emptyDecayModel();
   let there = emptyDecayModel();
   let { omega, gamma } = start;
-  let evaluations = 1;
   let damping = 0;
   let settled = false;
-  if (decayModel(y, omega, gamma, here)) {
-    while (evaluations < MOST_STEPS) {
-      const ww = here.ww * (1 + damping);
-      const gg = here.gg * (1 + damping);
-      const determinant = ww * gg - here.wg ** 2;
-      let dOmega = (gg * here.gradientW - here.wg * here.gradientG) / determinant;
-      let dGamma = (ww * here.gradientG - here.wg * here.gradientW) / determinant;
-      const gain = dOmega * here.gradientW + dGamma * here.gradientG;
-      if (!Number.isFinite(gain)) break;
-      const small = gain <= (1e-6 * Math.max(0, here.cost)) / n || Math.abs(dOmega) + Math.abs(dGamma) < 1e-14;
-      const longest = gamma + 2 / n;
-      const cut = Math.max(1, Math.abs(dOmega) / longest, Math.abs(dGamma) / (0.7 * longest));
-      dOmega /= cut;
-      dGamma /= cut;
-      const solved = decayModel(y, omega + dOmega, Math.max(gamma + dGamma, gamma / 5), there);
-      evaluations++;
-      if (solved && (there.cost <= here.cost || small)) {
-        omega += dOmega;
-        gamma = Math.max(gamma + dGamma, gamma / 5);
-        [here, there] = [there, here];
-        damping = damping < 1e-3 ? 0 : damping / 10;
-      } else {
-        damping = Math.max(1e-2, damping * 10);
-      }
-      if (small) {
-        settled = true;
-        break;
-      }
-      if (damping > 1e8) break;
+  let evaluations = 1;
+  if (!decayModel(y, omega, gamma, here)) return { omega, gamma, model: here, settled, evaluations };
+  while (!settled && evaluations < MOST_STEPS && damping < 1e8) {
+    const ww = here.ww * (1 + damping);
+    const gg = here.gg * (1 + damping);
+    const determinant = ww * gg - here.wg ** 2;
+    let dOmega = (gg * here.gradientW - here.wg * here.gradientG) / determinant;
+    let dGamma = (ww * here.gradientG - here.wg * here.gradientW) / determinant;
+    const gain = dOmega * here.gradientW + dGamma * here.gradientG;
+    if (!Number.isFinite(gain)) break;
+    settled = damping <= 1 && (gain <= (SMALL_GAIN * here.squares) / n || Math.abs(dOmega) + Math.abs(dGamma) < 1e-14);
+    const longest = gamma + 2 / n;
+    const cut = Math.max(1, Math.abs(dOmega) / longest, Math.abs(dGamma) / (0.7 * longest));
+    dOmega /= cut;
+    dGamma /= cut;
+    const nextOmega = omega + dOmega;
+    const nextGamma = Math.max(gamma + dGamma, gamma / 5);
+    const solved = decayModel(y, nextOmega, nextGamma, there);
+    evaluations++;
+    if (solved && (there.squares <= here.squares || settled)) {
+      [omega, gamma] = [nextOmega, nextGamma];
+      [here, there] = [there, here];
+      damping = damping < 1e-3 ? 0 : damping / 10;
+    } else {
+      damping = Math.max(1e-2, damping * 10);
     }
   }
-  if (!settled || !(omega > 0) || omega >= Math.PI || !(gamma > 0)) return failedFit(evaluations);
+  return { omega, gamma, model: here, settled: settled && omega > 0 && omega < Math.PI && gamma > 0, evaluations };
+}
 
-  const variance = here.squares / (n - 5);
-  const determinant = here.ww * here.gg - here.wg ** 2;
-  if (!(determinant > 0) || here.energy - here.squares < (LEAST_GAIN + 2 * Math.log(n)) * variance) return failedFit(evaluations);
+/** From angle and decay to f0 and Q, variances carried along to first order. */
+function describeDecay({ omega, gamma, model, evaluations }: DecaySolution, n: number, sampleHz: number): ResonanceFit {
+  const variance = model.squares / (n - 5);
+  const determinant = model.ww * model.gg - model.wg ** 2;
+  if (!(determinant > 0) || model.energy - model.squares < (LEAST_GAIN + 2 * Math.log(n)) * variance) return failedFit(evaluations);
   const natural = Math.hypot(omega, gamma);
-  const q = natural / (2 * gamma);
   const perRadian = sampleHz / (2 * Math.PI);
-  const varW = (variance * here.gg) / determinant;
-  const varG = (variance * here.ww) / determinant;
-  const covWG = (-variance * here.wg) / determinant;
+  const varW = (variance * model.gg) / determinant;
+  const varG = (variance * model.ww) / determinant;
+  const covWG = (-variance * model.wg) / determinant;
   const f0W = (perRadian * omega) / natural;
   const f0G = (perRadian * gamma) / natural;
   const qW = omega / (2 * gamma * natural);
@@ -101,15 +109,15 @@ export function fitRingDown({ sampleHz, startS, volts }: RingDown): ResonanceFit
   const qq = qW * qW * varW + 2 * qW * qG * covWG + qG * qG * varG;
   const f0q = f0W * qW * varW + (f0W * qG + f0G * qW) * covWG + f0G * qG * varG;
   const noise = Math.sqrt(variance);
-  const amplitude = Math.hypot(here.cosine, here.sine);
+  const amplitude = Math.hypot(model.cosine, model.sine);
   const snr = noise > 0 ? amplitude / noise : Infinity;
   const flags: FitFlag[] = [];
   if (snr < NOISY_SNR) flags.push("noisy");
-  if (here.lag1 > DISTORTED_SIGMAS / Math.sqrt(n)) flags.push("distorted");
+  if (model.lag1 > DISTORTED_SIGMAS / Math.sqrt(n)) flags.push("distorted");
   return {
-    f0Hz: natural * perRadian, q, f0StdHz: Math.sqrt(f0f0), qStd: Math.sqrt(qq), covariance: { f0f0, f0q, qq },
+    f0Hz: natural * perRadian, q: natural / (2 * gamma), f0StdHz: Math.sqrt(f0f0), qStd: Math.sqrt(qq), covariance: { f0f0, f0q, qq },
     amplitude, noise, snr, flags,
-    a: { re: here.cosine, im: here.sine }, b: { re: here.constant, im: 0 }, c: { re: 0, im: 0 }, evaluations,
+    a: { re: model.cosine, im: model.sine }, b: { re: model.constant, im: 0 }, c: { re: 0, im: 0 }, evaluations,
   };
 }
 
@@ -117,7 +125,7 @@ export function fitRingDown({ sampleHz, startS, volts }: RingDown): ResonanceFit
  * Angle and decay per sample from the strongest line of the spectrum and its stronger neighbour: for a decaying tone
  * X[k] ∝ 1/(1 − ζ·e^(−2πik/n)) with ζ = e^(iω − γ), so two lines give ζ.
  */
-function decayGuess(y: Float64Array): { omega: number; gamma: number } {
+function decayGuess(y: Float64Array): Decay {
   const n = 2 ** Math.floor(Math.log2(y.length));
   const re = y.slice(0, n);
   const im = new Float64Array(n);

@@ -3,12 +3,16 @@ import { solveCholesky } from "@/lib/numerics/resonance/small-linear";
 import type { Readout } from "@/lib/numerics/resonance/types";
 
 const COLUMNS = 5;
-const EVEN_CENTRES = 48;
-const PEAKS = 8;
+/** Half-widths down to span/16 are tried all over the sweep, on data averaged to about this many points. */
+const WIDE_LEVELS = 5;
+const WIDE_POINTS = 80;
+/** Narrower ones where the data stand out most. */
+const PEAKS = 5;
 
 const gram = new Float64Array(COLUMNS ** 2);
 const right = new Float64Array(COLUMNS);
 const column = new Float64Array(COLUMNS);
+const projected = new Float64Array(COLUMNS);
 
 /**
  * First guesses for a magnitude sweep.
@@ -24,20 +28,28 @@ export function magnitudeGuesses(sweep: MagnitudeSweep, readout: Readout): { gue
   let evaluations = 0;
   let bestCost = Infinity;
   let best = { f0: low + span / 2, q: (low + span / 2) / span, alpha: 0, beta: 0, gamma: 0, delta: 0 };
-  const attempt = (f0: number, halfWidth: number): void => {
-    const q = f0 / (2 * halfWidth);
-    const cost = linearCost(sweep, readout, f0, q);
+  const attempt = (data: MagnitudeSweep, f0: number, q: number): void => {
+    const cost = linearCost(data, readout, f0, q);
     evaluations++;
     if (cost < bestCost) {
       bestCost = cost;
       best = { f0, q, alpha: right[0], beta: right[1], gamma: right[2], delta: right[3] };
     }
   };
-  const peaks = extremes(sweep);
-  for (let halfWidth = span; halfWidth > span / (2 * n); halfWidth /= 1.6) {
+  const coarse = averaged(sweep);
+  let halfWidth = span;
+  for (let level = 0; level < WIDE_LEVELS; level++, halfWidth /= 2) {
     const centres = Math.ceil((2 * span) / halfWidth);
-    if (centres <= EVEN_CENTRES) for (let k = 0; k <= centres; k++) attempt(low + (k / centres) * span, halfWidth);
-    else for (const f0 of peaks) for (let k = -2; k <= 2; k++) attempt(f0 + (k * halfWidth) / 2, halfWidth);
+    for (let k = 0; k <= centres; k++) {
+      const f0 = low + (k / centres) * span;
+      attempt(coarse, f0, f0 / (2 * halfWidth));
+    }
+  }
+  bestCost = Infinity;
+  attempt(sweep, best.f0, best.q);
+  const peaks = extremes(sweep);
+  for (; halfWidth > span / n; halfWidth /= 2) {
+    for (const f0 of peaks) for (let k = -1; k <= 1; k++) attempt(sweep, f0 + (k * halfWidth) / 2, f0 / (2 * halfWidth));
   }
 
   const { f0, q, alpha, beta, gamma, delta } = best;
@@ -54,6 +66,19 @@ export function magnitudeGuesses(sweep: MagnitudeSweep, readout: Readout): { gue
     return { f0, q, a, bRe, bIm, cRe: along * bRe, cIm: along * bIm };
   });
   return { guesses, evaluations };
+}
+
+/** The sweep in blocks of neighbouring points, about WIDE_POINTS of them: root mean square at the mean frequency. */
+function averaged({ n, f, s, y }: MagnitudeSweep): MagnitudeSweep {
+  const length = Math.max(1, Math.floor(n / WIDE_POINTS));
+  const blocks = Math.floor(n / length);
+  const mean = (column: Float64Array, square: boolean): Float64Array =>
+    Float64Array.from({ length: blocks }, (_, k) => {
+      let sum = 0;
+      for (let i = k * length; i < (k + 1) * length; i++) sum += square ? column[i] * column[i] : column[i];
+      return square ? Math.sqrt(sum / length) : sum / length;
+    });
+  return { n: blocks, f: mean(f, false), s: mean(s, false), y: mean(y, true) };
 }
 
 /** Σ of squared residuals of y² on the five columns; their coefficients are left in `right`. */
@@ -76,7 +101,7 @@ function linearCost({ n, f, s, y }: MagnitudeSweep, readout: Readout, f0: number
       for (let k = 0; k <= j; k++) gram[COLUMNS * j + k] += column[j] * column[k];
     }
   }
-  const projected = right.slice();
+  projected.set(right);
   if (!solveCholesky(gram, right, COLUMNS)) return Infinity;
   for (let j = 0; j < COLUMNS; j++) total -= projected[j] * right[j];
   return total;

@@ -12,7 +12,7 @@
 export function riceMean(nu: number, sigma: number): number {
   if (sigma === 0) return nu;
   const half = (nu * nu) / (4 * sigma * sigma);
-  if (half > 100) return nu + (sigma * sigma) / (2 * nu) + sigma ** 4 / (8 * nu ** 3);
+  if (half > 100) return nu + ((sigma * sigma) / (2 * nu)) * (1 + (sigma * sigma) / (4 * nu * nu));
   return sigma * Math.sqrt(Math.PI / 2) * ((1 + 2 * half) * scaledI0(half) + 2 * half * scaledI1(half));
 }
 

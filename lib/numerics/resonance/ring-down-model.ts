@@ -2,7 +2,6 @@ import { solveCholesky } from "@/lib/numerics/resonance/small-linear";
 
 /** The separable least-squares problem of a decaying tone at one (ω, γ), both per sample. */
 export type DecayModel = {
-  cost: number;
   /** Σr² formed sample by sample, Σy² about the mean, and lag-1 autocorrelation of the residuals. */
   squares: number;
   energy: number;
@@ -21,7 +20,7 @@ export type DecayModel = {
 
 export function emptyDecayModel(): DecayModel {
   return {
-    cost: 0, squares: 0, energy: 0, lag1: 0, cosine: 0, sine: 0, constant: 0,
+    squares: 0, energy: 0, lag1: 0, cosine: 0, sine: 0, constant: 0,
     ww: 0, wg: 0, gg: 0, gradientW: 0, gradientG: 0,
   };
 }
@@ -31,6 +30,8 @@ const COLUMNS = 5;
 const LINEAR = 3;
 /** The tone is carried on by turning a phasor, and set right from its angle this often. */
 const TURNS = 128;
+/** Residuals this small against the data are rounding and say nothing. */
+const ROUNDING = 2 ** -40;
 const gram = new Float64Array((COLUMNS + 1) * COLUMNS);
 const column = new Float64Array(COLUMNS + 1);
 
@@ -98,8 +99,7 @@ export function decayModel(y: Float64Array, omega: number, gamma: number, out: D
   out.constant = constant + mean;
   out.energy = energy;
   sumResiduals(y, { omega, gamma }, out);
-  out.cost = out.squares;
-  return Number.isFinite(out.cost);
+  return Number.isFinite(out.squares);
 }
 
 function sumResiduals(y: Float64Array, { omega, gamma }: { omega: number; gamma: number }, out: DecayModel): void {
@@ -120,5 +120,6 @@ function sumResiduals(y: Float64Array, { omega, gamma }: { omega: number; gamma:
     [c, s] = [c * turnR - s * turnI, c * turnI + s * turnR];
   }
   out.squares = squares;
-  out.lag1 = squares > 0 ? products / squares : 0;
+  const exact = squares <= ROUNDING ** 2 * (out.energy + y.length * out.constant ** 2);
+  out.lag1 = exact ? 0 : products / squares;
 }
