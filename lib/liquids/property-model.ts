@@ -2,10 +2,10 @@ import { liquidProperties, liquidRange, type LiquidModel, type LiquidProperties,
 import { FluidRangeError } from "@/lib/fluids/fluid-range-error";
 import type { PropertyRow } from "@/models/json";
 
-type Stored = { name: string; model: string; massFraction: number | null; table: readonly PropertyRow[] | null };
+export type StoredModel = { name: string; model: string; massFraction: number | null; table: readonly PropertyRow[] | null };
 
 /** The stored columns as the model that computes; they were checked when the liquid was made. */
-export function propertyModel({ name, model, massFraction, table }: Stored): LiquidModel {
+export function propertyModel({ name, model, massFraction, table }: StoredModel): LiquidModel {
   switch (model) {
     case "water":
     case "ethanol":
@@ -23,7 +23,7 @@ export function propertyModel({ name, model, massFraction, table }: Stored): Liq
 }
 
 /** Properties at a temperature, null outside the model's range. */
-export function propertiesAt(liquid: Stored, temperatureC: number): LiquidProperties | null {
+export function propertiesAt(liquid: StoredModel, temperatureC: number): LiquidProperties | null {
   try {
     return liquidProperties(propertyModel(liquid), temperatureC);
   } catch (error) {
@@ -32,4 +32,10 @@ export function propertiesAt(liquid: Stored, temperatureC: number): LiquidProper
   }
 }
 
-export const rangeOf = (liquid: Stored): LiquidRange => liquidRange(propertyModel(liquid));
+export const rangeOf = (liquid: StoredModel): LiquidRange => liquidRange(propertyModel(liquid));
+
+/** Viscosity by which a liquid gets its tint: at 20 °C, or at the end of its range that is nearest. */
+export function typicalViscosityMPaS(liquid: StoredModel): number | null {
+  const { minC, maxC } = rangeOf(liquid);
+  return propertiesAt(liquid, Math.min(Math.max(20, minC), maxC))?.viscosityMPaS ?? null;
+}

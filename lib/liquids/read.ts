@@ -5,8 +5,9 @@ import { notFound } from "@/lib/errors";
 import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page } from "@/lib/http/paging";
 import { hazardStatement } from "@/lib/liquids/ghs";
-import { propertiesAt, rangeOf } from "@/lib/liquids/property-model";
+import { propertiesAt, rangeOf, typicalViscosityMPaS } from "@/lib/liquids/property-model";
 import type { LiquidAnswer, LiquidQuery } from "@/lib/liquids/schema";
+import { tintOf } from "@/lib/liquids/tint";
 import type { PropertyRow } from "@/models/json";
 
 type LiquidRow = {
@@ -67,6 +68,7 @@ function presentLiquid({ ghs, flashPointC, waste, notWith, createdAt, retiredAt,
       waste,
       notWith,
     },
+    tint: tintOf(typicalViscosityMPaS(liquid)),
     at20C: propertiesAt(liquid, 20),
     range: { minC, maxC, uDensityKgM3, uViscosityPercent },
     createdAt: createdAt.toISOString(),

@@ -138,6 +138,7 @@ export const liquidAnswer = z.object({
     waste: z.string().nullable(),
     notWith: z.array(z.string()),
   }),
+  tint: z.union([z.literal(1), z.literal(2), z.literal(3)]),
   /** Density and viscosity at 20 °C; null where the model does not reach it. */
   at20C: z.object({ densityKgM3: z.number(), viscosityMPaS: z.number() }).nullable(),
   range: z.object({ minC: z.number(), maxC: z.number(), uDensityKgM3: z.number().nullable(), uViscosityPercent: z.number().nullable() }),

@@ -1,6 +1,9 @@
+import type { HoldReason } from "@/lib/campaigns/open-hold";
+import { typicalViscosityMPaS } from "@/lib/liquids/property-model";
+import { tintOf } from "@/lib/liquids/tint";
 import type { RigAnswer } from "@/lib/rigs/schema";
 import type { Campaign } from "@/models/campaign";
-import type { AgentAbilities } from "@/models/json";
+import type { AgentAbilities, PropertyRow } from "@/models/json";
 import type { Rig } from "@/models/rig";
 
 type PortJson = { number: number; remainingMl: number } & (
@@ -13,6 +16,9 @@ type PortJson = { number: number; remainingMl: number } & (
       liquidId: string;
       liquidName: string;
       letter: string;
+      model: string;
+      massFraction: number | null;
+      table: PropertyRow[] | null;
       loadedAt: string;
       fullMl: number;
     }
@@ -42,7 +48,8 @@ export type RigRow = {
   campaignState: Exclude<Campaign["state"], "draft" | "queued"> | null;
   cursorText: string | null;
   sensorSerial: string | null;
-  takenOver: boolean;
+  holds: HoldReason[];
+  plannedEnd: Date | null;
   queued: number;
   ports: PortJson[];
   mounts: { id: string; position: number; sensorId: string; serial: string; since: string }[];
@@ -72,7 +79,9 @@ export function presentRig(rig: RigRow): RigAnswer {
             state: campaignState,
             sensorSerial: rig.sensorSerial ?? "",
             cursorText: rig.cursorText,
-            takenOver: rig.takenOver,
+            takenOver: rig.holds.includes("takeOver"),
+            holds: rig.holds,
+            plannedEnd: iso(rig.plannedEnd),
           }
         : null,
     queued: rig.queued,
@@ -86,7 +95,7 @@ export function presentRig(rig: RigRow): RigAnswer {
 function presentPort(port: PortJson): RigAnswer["ports"][number] {
   const { number, remainingMl } = port;
   if (port.loadId === null) return { number, remainingMl, bottle: null };
-  const { loadId, lotId, lotCode, expiresAt, liquidId, liquidName, letter, loadedAt, fullMl } = port;
+  const { loadId, lotId, lotCode, expiresAt, liquidId, liquidName, letter, loadedAt, fullMl, model, massFraction, table } = port;
   return {
     number,
     remainingMl,
@@ -98,6 +107,7 @@ function presentPort(port: PortJson): RigAnswer["ports"][number] {
       liquidId,
       liquidName,
       letter,
+      tint: tintOf(typicalViscosityMPaS({ name: liquidName, model, massFraction, table })),
       fullMl: Math.max(fullMl, remainingMl),
       loadedAt: new Date(loadedAt).toISOString(),
     },

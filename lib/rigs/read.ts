@@ -18,7 +18,8 @@ const SELECT = `
          a.agent_name as "agentName", a.agent_version as "agentVersion",
          c.id as "campaignId", c.rig_number as "campaignNumber", c.name as "campaignName", c.state as "campaignState",
          c.cursor_text as "cursorText", s.serial as "sensorSerial",
-         exists (select 1 from hold h where h.campaign_id = c.id and h.reason = 'takeOver' and h.released_at is null) as "takenOver",
+         array(select distinct h.reason from hold h where h.campaign_id = c.id and h.released_at is null order by 1) as holds,
+         c.started_clock + make_interval(secs => (c.planned->>'seconds')::float8) as "plannedEnd",
          (select count(*)::int from campaign q where q.rig_id = r.id and q.state = 'queued') as queued,
          coalesce(p.ports, '[]') as ports, coalesce(m.mounts, '[]') as mounts
     from rig r
@@ -28,7 +29,8 @@ const SELECT = `
     left join lateral (
       select jsonb_agg(jsonb_build_object(
                'number', p.number, 'remainingMl', p.remaining_ml, 'loadId', l.id::text, 'lotId', lot.id::text, 'lotCode', lot.code,
-               'expiresAt', lot.expires_at, 'liquidId', q.id::text, 'liquidName', q.name, 'letter', q.letter, 'loadedAt', l.loaded_at,
+               'expiresAt', lot.expires_at, 'liquidId', q.id::text, 'liquidName', q.name, 'letter', q.letter,
+               'model', q.model, 'massFraction', q.mass_fraction, 'table', q.property_table, 'loadedAt', l.loaded_at,
                'fullMl', (select max(b.volume_ml) from load b where b.rig_id = p.rig_id and b.port = p.number and b.lot_id = l.lot_id))
              order by p.number) as ports
         from port p

@@ -63,6 +63,7 @@ const bottle = z.object({
   liquidId: z.string(),
   liquidName: z.string(),
   letter: z.string(),
+  tint: z.union([z.literal(1), z.literal(2), z.literal(3)]),
   /** What the bottle held when it was put there or, after a top up, the most that is known. */
   fullMl: z.number(),
   loadedAt: time,
@@ -106,6 +107,10 @@ export const rigAnswer = z.object({
       sensorSerial: z.string(),
       cursorText: z.string().nullable(),
       takenOver: z.boolean(),
+      /** Reasons of the open holds. */
+      holds: z.array(z.enum(["person", "task", "limit", "failure", "silence", "takeOver", "setAside"])),
+      /** When it will have ended, as planned when it was queued; late holds are not in it. */
+      plannedEnd: time.nullable(),
     })
     .nullable(),
   queued: z.int(),

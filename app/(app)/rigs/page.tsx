@@ -1,0 +1,24 @@
+import type { Metadata } from "next";
+import { Hydrated } from "@/components/hydrated";
+import { currentPerson } from "@/lib/people/current-person";
+import { contactsOptions, rigsOptions } from "@/lib/rigs/client";
+import { findContacts } from "@/lib/rigs/contacts";
+import { findRigs } from "@/lib/rigs/read";
+import { RigsScreen } from "./rigs-screen";
+
+export const metadata: Metadata = { title: "Rigs" };
+
+export default async function RigsPage() {
+  const { role } = await currentPerson();
+  const [rigs, contacts] = await Promise.all([findRigs({ limit: 50, retired: "false" }), findContacts({ now: new Date() })]);
+  return (
+    <Hydrated
+      data={[
+        [rigsOptions().queryKey, { pages: [rigs], pageParams: [null] }],
+        [contactsOptions().queryKey, contacts],
+      ]}
+    >
+      <RigsScreen role={role} />
+    </Hydrated>
+  );
+}
