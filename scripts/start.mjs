@@ -100,11 +100,12 @@ async function startDatabase(data, ports) {
   if (process.env.DATABASE_URL) return process.env.DATABASE_URL;
   const { ensurePostgres } = await import("./lib/debian.mjs");
   const { ensureDatabase, startPostgres } = await import("./lib/postgres.mjs");
+  const { watchPostgres } = await import("./lib/watch-postgres.mjs");
   await ensurePostgres(proceed);
   return proceed("Starting PostgreSQL", async () => {
     const password = data.secrets().databasePassword;
     const cluster = await startPostgres({ directory: data.clusterDirectory, port: ports.postgres, password });
-    undoing.push({ name: "PostgreSQL", undo: cluster.stop });
+    undoing.push({ name: "PostgreSQL", undo: watchPostgres(cluster, notice).stop });
     data.keepPorts({ ...ports, postgres: cluster.port });
     await ensureDatabase(cluster, "longreed");
     return cluster.urlOf("longreed");

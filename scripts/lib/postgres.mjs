@@ -9,7 +9,12 @@ const role = "app";
 /**
  * @typedef {{ directory: string, port: number, password?: string, durable?: boolean }} ClusterOptions
  *   `durable: false` trades safety against a power cut for speed: for tests only.
- * @typedef {{ port: number, urlOf: (database: string) => string, stop: () => Promise<void> }} Cluster
+ * @typedef {object} Cluster
+ * @property {number} port
+ * @property {(database: string) => string} urlOf
+ * @property {() => boolean} isRunning
+ * @property {() => Promise<void>} startAgain After the server died.
+ * @property {() => Promise<void>} stop
  */
 
 /**
@@ -45,12 +50,14 @@ export async function startPostgres({ directory: wished, port, password, durable
 
   if (!fs.existsSync(path.join(directory, "PG_VERSION"))) await initialise();
   const running = runningPort(directory);
-  if (running === undefined) await start();
   const actualPort = running ?? port;
+  if (running === undefined) await start();
 
   return {
     port: actualPort,
     urlOf: (database) => `postgres://${role}${password ? `:${password}` : ""}@127.0.0.1:${actualPort}/${database}`,
+    isRunning: () => runningPort(directory) !== undefined,
+    startAgain: start,
     async stop() {
       const [file = "", ...args] = asServer("pg_ctl", ["stop", "-D", directory, "-m", "fast", "-w", "-t", "60"]);
       await runSilently(file, args, { cwd: "/", env });
@@ -76,13 +83,14 @@ export async function startPostgres({ directory: wished, port, password, durable
   }
 
   async function start() {
+    removeForeignLock(directory);
     const logFile = path.join(directory, "server.log");
-    const settings = [`-p ${port}`, "-c listen_addresses=127.0.0.1", "-c unix_socket_directories=''", "-c timezone=UTC"];
+    const settings = [`-p ${actualPort}`, "-c listen_addresses=127.0.0.1", "-c unix_socket_directories=''", "-c timezone=UTC"];
     if (!durable) settings.push("-c fsync=off", "-c synchronous_commit=off", "-c full_page_writes=off");
     const options = ["-D", directory, "-l", logFile, "-w", "-t", "60", "-o", settings.join(" ")];
     const [file = "", ...args] = asServer("pg_ctl", ["start", ...options]);
     const code = await runSilently(file, args, { cwd: "/", env });
-    if (code !== 0) throw new PlainError(`PostgreSQL did not start on port ${port}; its last words are in ${logFile}.`);
+    if (code !== 0) throw new PlainError(`PostgreSQL did not start on port ${actualPort}; its last words are in ${logFile}.`);
   }
 }
 
@@ -104,22 +112,36 @@ export async function ensureDatabase(cluster, database) {
 }
 
 /**
- * The port of the server that runs in this directory. A lock left by a crash, whose process is gone or belongs to
- * another program by now, is removed: PostgreSQL itself would refuse to start when the number was used again.
+ * The port of the server that runs in this directory.
  *
  * @param {string} directory
  * @returns {number | undefined}
  */
 function runningPort(directory) {
-  const lock = path.join(directory, "postmaster.pid");
-  if (!fs.existsSync(lock)) return undefined;
-  const lines = fs.readFileSync(lock, "utf8").split("\n");
-  if (worksIn(Number(lines[0]), directory)) return Number(lines[3]);
-  fs.rmSync(lock);
-  return undefined;
+  const lines = readLock(directory);
+  return lines && worksIn(lines[0] ?? "", directory) ? Number(lines[3]) : undefined;
 }
 
-/** @param {number} pid @param {string} directory */
+/**
+ * Removes a lock whose process number was given to another program since a crash: PostgreSQL would take that one for a
+ * server and refuse to start. It judges every other stale lock itself, and must, while sessions of a dead server live.
+ *
+ * @param {string} directory
+ */
+function removeForeignLock(directory) {
+  const pid = readLock(directory)?.[0];
+  if (pid === undefined || !fs.existsSync(`/proc/${pid}`)) return;
+  if (fs.readdirSync("/proc").some((name) => /^\d+$/.test(name) && worksIn(name, directory))) return;
+  fs.rmSync(path.join(directory, "postmaster.pid"));
+}
+
+/** @param {string} directory */
+function readLock(directory) {
+  const lock = path.join(directory, "postmaster.pid");
+  return fs.existsSync(lock) ? fs.readFileSync(lock, "utf8").split("\n") : undefined;
+}
+
+/** @param {string} pid @param {string} directory */
 function worksIn(pid, directory) {
   try {
     return fs.readlinkSync(`/proc/${pid}/cwd`) === fs.realpathSync(directory);

@@ -2,9 +2,10 @@ import fs from "node:fs";
 import os from "node:os";
 import path from "node:path";
 import pg from "pg";
-import { afterEach, beforeEach, expect, test } from "vitest";
+import { afterEach, beforeEach, expect, test, vi } from "vitest";
 import { freePort } from "@/scripts/lib/ports.mjs";
 import { type Cluster, ensureDatabase, startPostgres } from "@/scripts/lib/postgres.mjs";
+import { watchPostgres } from "@/scripts/lib/watch-postgres.mjs";
 
 const password = "demo-of-this-test";
 let home: string;
@@ -24,8 +25,8 @@ afterEach(async () => {
 const directory = () => path.join(home, "postgres");
 const lock = () => path.join(directory(), "postmaster.pid");
 
-async function start(): Promise<Cluster> {
-  return (cluster = await startPostgres({ directory: directory(), port: await freePort(), password, durable: false }));
+async function start({ durable = false } = {}): Promise<Cluster> {
+  return (cluster = await startPostgres({ directory: directory(), port: await freePort(), password, durable }));
 }
 
 async function ask(url: string, sql: string): Promise<unknown> {
@@ -73,4 +74,17 @@ test("a lock left by a crash is recovered, even when its number belongs to anoth
   fs.writeFileSync(lock(), stale);
   const second = await start();
   expect(await ask(second.urlOf("postgres"), "SELECT answer FROM kept")).toBe(42);
+});
+
+test("a server that dies starts again on its port with all that was written, and it is said so", async () => {
+  const first = await start({ durable: true });
+  await ask(first.urlOf("postgres"), "CREATE TABLE kept AS SELECT 42 AS answer");
+  const notices: string[] = [];
+  const watch = watchPostgres(first, (line) => notices.push(line));
+  process.kill(Number(fs.readFileSync(lock(), "utf8").split("\n")[0]), "SIGKILL");
+  await vi.waitFor(() => expect(notices.at(-1)).toBe("PostgreSQL runs again"), { timeout: 20_000 });
+  expect(notices[0]).toBe("PostgreSQL died; starting it again");
+  expect(await ask(first.urlOf("postgres"), "SELECT answer FROM kept")).toBe(42);
+  await watch.stop();
+  expect(first.isRunning()).toBe(false);
 });
