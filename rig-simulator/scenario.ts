@@ -27,6 +27,8 @@ const rig = z.strictObject({
   /** Kinds of step that may be done again after a loss of memory: fill and rinse where the rig measures what is in the cell. */
   repeatable: z.array(z.enum(["fill", "rinse", "drain", "dry"])).default(["drain", "dry"]),
   ports: z.array(z.strictObject({ port: z.int().min(1), name: z.string(), liquid: liquidModel, volumeMl: positive })),
+  /** Whether heartbeats tell what is in the bottles. Without, the laboratory's book of loads stands. */
+  levelSensors: z.boolean().default(false),
   wasteCapacityMl: positive.default(5000),
   flowMlPerMin: positive.default(20),
   drainS: positive.default(60),

@@ -101,8 +101,7 @@ export class Session {
       lease: current?.step.lease,
       done: current?.done,
       temperatureC: Math.round((world.setPointC + world.residualC) * 1e4) / 1e4,
-      ports: scenario.rig.ports.map(({ port }) => ({ port, volumeMl: Math.max(0, world.ports[port]) })),
-      wasteMl: world.wasteMl,
+      ...(scenario.rig.levelSensors ? this.levels() : {}),
       message: this.message,
     });
     if (!current) this.message = undefined;
@@ -110,6 +109,14 @@ export class Session {
     this.dueAtMs = answer.dueAt === undefined ? undefined : Date.parse(answer.dueAt);
     rig.save();
     return answer;
+  }
+
+  private levels(): { ports: { port: number; volumeMl: number }[]; wasteMl: number } {
+    const { world, scenario } = this.rig;
+    return {
+      ports: scenario.rig.ports.map(({ port }) => ({ port, volumeMl: Math.max(0, world.ports[port]) })),
+      wasteMl: world.wasteMl,
+    };
   }
 
   /** As `beat`, where a failed heartbeat may be left out: the next one comes. */

@@ -73,6 +73,17 @@ describe("the agent", () => {
     expect(rig.world.wasteMl).toBe(50);
   });
 
+  it("tells in heartbeats how warm it is, and what is in the bottles where the rig has level sensors", async () => {
+    const beats = async (levelSensors: boolean) => {
+      const server = new ContractServer([fill, drain, rinse]);
+      const { rig } = loadScenario("quick");
+      await run(server, scenario({}, { rig: { ...rig, levelSensors } }));
+      return server.calls.filter(({ path }) => path.endsWith("/heartbeat")).map(({ body }) => body);
+    };
+    expect((await beats(true)).at(-1)).toMatchObject({ temperatureC: 20, ports: [{ port: 1, volumeMl: 1980 }, { port: 2, volumeMl: 1970 }], wasteMl: 50 });
+    expect((await beats(false)).every((body) => !("ports" in body) && !("wasteMl" in body))).toBe(true);
+  });
+
   it("keeps time by the work done in fast mode", async () => {
     const server = new ContractServer([measure(3), dry, measure(2)]);
     await run(server, scenario());
