@@ -24,7 +24,7 @@ const totalGain = 2.5;
  *
  * with n the terms of each stretch. Within a stretch the exact covariance of discrete power-law noise for short
  * terms, Greenhall and Riley's combined algorithm for long ones. The total deviation has its own published edf, but at
- * most 2.5 more than the overlapping Allan deviation, and in phase noise, where none is published, that one's.
+ * most 2.5 more than the overlapping Allan deviation's, and in phase noise, where none is published, that one's.
  *
  * @param lengths Number of values of each stretch; those too short for a term are passed over.
  * @param alpha Exponent of the noise; for Allan statistics not below −2.
@@ -60,5 +60,6 @@ function edfOfStretch(statistic: Statistic, { alpha, m }: { alpha: Alpha; m: num
   const ofShape = method(shape, { alpha, m });
   const total = statistic === "totdev" ? totalEdf[alpha] : undefined;
   if (!total) return ofShape;
-  return (values) => Math.min((total[0] * values) / m - total[1], ofShape(values) + totalGain);
+  return (values) =>
+    Math.min((total[0] * values) / m - total[1], ofShape(values) + totalGain, termsIn(statistic, values, m));
 }

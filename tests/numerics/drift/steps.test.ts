@@ -83,3 +83,19 @@ test("too few values, values without scatter, bad input", () => {
   expect(() => findSteps({ x: times(20), y: new Float64Array(19) })).toThrow(RangeError);
   expect(() => findSteps({ x: times(20), y: new Float64Array(20).fill(NaN) })).toThrow(RangeError);
 });
+
+test("a step without any scatter is found exactly", () => {
+  const found = findSteps({ x: times(20), y: Float64Array.from({ length: 20 }, (_, i) => (i < 8 ? 4 : 7)) });
+  expect(found).toHaveLength(1);
+  expect(found[0]).toMatchObject({ index: 8, at: 4 });
+  expect(found[0].size).toBeCloseTo(3, 9);
+  expect(found[0].u).toBeLessThan(1e-6);
+});
+
+test("more than 300 values are taken as blocks, the time is that of the block", () => {
+  const next = gaussian(31);
+  const x = times(450);
+  const found = findSteps({ x, y: x.map((_, i) => (i >= 200 ? 5 : 0) + next()) });
+  expect(found).toHaveLength(1);
+  expect(Math.abs(found[0].at - 100)).toBeLessThanOrEqual(1);
+});

@@ -4,7 +4,7 @@ import { discreteEdf } from "@/lib/numerics/stability/discrete-edf";
 import { edf } from "@/lib/numerics/stability/edf";
 import { greenhallRileyEdf } from "@/lib/numerics/stability/greenhall-riley-edf";
 import type { Alpha } from "@/lib/numerics/stability/power-law";
-import { statisticShapes } from "@/lib/numerics/stability/statistic-shape";
+import { statisticShapes, termsIn } from "@/lib/numerics/stability/statistic-shape";
 import { referenceTable, referenceText } from "@/tests/numerics/reference-table";
 import { relativeError } from "@/tests/numerics/relative-error";
 
@@ -68,5 +68,23 @@ describe("total deviation", () => {
 
   test("at short averaging times it promises no more than there are terms", () => {
     for (const alpha of [2, 1, 0, -1, -2] as const) expect(edf("totdev", { lengths: [200], alpha, m: 1 })).toBeLessThan(199);
+  });
+});
+
+describe.each(Object.keys(statisticShapes) as Statistic[])("%s at every length, factor and noise", (statistic) => {
+  const exponents = [2, 1, 0, -1, -2, -3, -4] as const;
+  const possible = exponents.filter((alpha) => alpha >= -2 || statisticShapes[statistic].differences === 3);
+
+  test.each(possible)("α = %i: at least one, at most the number of terms, never rising with the factor", (alpha) => {
+    for (const length of [3, 10, 40, 101, 250, 999, 5000]) {
+      let before = Infinity;
+      for (let m = 1; termsIn(statistic, length, m) > 0; m = Math.max(m + 1, Math.floor(1.1 * m))) {
+        const found = edf(statistic, { lengths: [length], alpha, m });
+        expect(found).toBeGreaterThan(0.99);
+        expect(found).toBeLessThanOrEqual(Math.max(termsIn(statistic, length, m), 1.14) * (1 + 1e-9));
+        expect(found).toBeLessThan(before * 1.002);
+        before = found;
+      }
+    }
   });
 });
