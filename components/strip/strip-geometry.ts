@@ -86,6 +86,9 @@ export function layoutStrip(input: StripInput, width: number, size: StripSize, o
   };
 }
 
+/** Drawn at least 1 to 2 px wide, so that every cycle keeps its shape. */
+const KEEPS_WIDTH: ReadonlySet<SegmentKind> = new Set<SegmentKind>(["fill", "liquid", "clean", "dry"]);
+
 type Piece = { from: number; to: number; planned: boolean; split: boolean };
 
 /** A phase that runs is split at now; what the agent has not told yet is not drawn. */
@@ -93,7 +96,7 @@ function piecesOf(segment: StripSegment, x: (at: string) => number, nowX: number
   const from = x(segment.from);
   const to = x(segment.to);
   const known = silentX !== undefined ? Math.min(to, silentX) : to;
-  if (known < from || (known === from && to > from)) return [];
+  if (known < from || (known === from && to > from && silentX !== undefined)) return [];
   if (segment.planned || nowX === undefined || known <= nowX) return [{ from, to: known, planned: segment.planned === true, split: false }];
   if (from >= nowX) return [{ from, to: known, planned: true, split: false }];
   return [
@@ -112,7 +115,7 @@ function shapeOf(segment: StripSegment, index: number, piece: Piece, { base, roo
   if (segment.kind === "end") {
     return { ...common, d: `M${x0 - 0.75} ${roof}V${base}`, line: `M${x0 - 4} ${roof}V${base}` };
   }
-  if (x1 <= x0) return undefined;
+  if (x1 <= x0 && !KEEPS_WIDTH.has(segment.kind)) return undefined;
 
   switch (segment.kind) {
     case "air":
