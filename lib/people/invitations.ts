@@ -36,7 +36,8 @@ export async function invite({ by, now, email, name, role }: Invite): Promise<{ 
       address: email,
       kind: `invitation:${made.id}`,
       subject: `${by.name} invites you to Longreed`,
-      sentences: [`${by.name} invites you to Longreed as ${role}.`, "The link is for you alone and good for seven days."],
+      sentence: `${by.name} invites you to Longreed as ${role}.`,
+      foot: "The link is for you alone and good for seven days.",
       button: { label: "Choose a password", link },
     });
     await audit(transaction, { by, now, action: "invite", entity: "invitation", entityId: made.id, detail: { email, role } });

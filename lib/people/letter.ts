@@ -1,4 +1,5 @@
 import type { Transaction } from "sequelize";
+import { frame } from "@/lib/mail/frame";
 import { notify } from "@/lib/notify";
 import { Notification } from "@/models/notification";
 
@@ -10,21 +11,21 @@ type Letter = {
   /** Unique for the person: one letter of each kind is ever written. */
   kind: string;
   subject: string;
-  sentences: readonly string[];
+  sentence: string;
+  foot: string;
   button: { label: string; link: string };
 };
 
 /** Puts a letter about an account into the outbox, in the transaction of what it tells of. */
-export async function writeLetter(transaction: Transaction, { now, personId, address, kind, subject, sentences, button }: Letter): Promise<void> {
-  const paragraphs = sentences.map((sentence) => `<p style="margin:0 0 12px">${escape(sentence)}</p>`).join("");
+export async function writeLetter(transaction: Transaction, { now, personId, address, kind, subject, sentence, foot, button }: Letter): Promise<void> {
   await Notification.create(
     {
       personId,
       address,
       kind,
       subject,
-      bodyText: [...sentences, `${button.label}: ${button.link}`].join("\n\n") + "\n",
-      bodyHtml: `<table role="presentation" style="max-width:620px;font:16px/24px sans-serif;color:#12262e"><tr><td>${paragraphs}<p><a href="${escape(button.link)}" style="color:#12262e;font-weight:600">${escape(button.label)}</a></p></td></tr></table>`,
+      bodyText: `${sentence}\n\n${button.label}: ${button.link}\n\n${foot}\n`,
+      bodyHtml: frame({ title: subject, sentence, facts: [], button, foot }),
       state: "waiting",
       createdAt: now,
     },
@@ -32,5 +33,3 @@ export async function writeLetter(transaction: Transaction, { now, personId, add
   );
   await notify("mail", transaction);
 }
-
-const escape = (text: string) => text.replaceAll("&", "&amp;").replaceAll("<", "&lt;").replaceAll(">", "&gt;").replaceAll('"', "&quot;");

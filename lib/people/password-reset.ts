@@ -28,7 +28,8 @@ export async function askForReset({ email, place, now }: { email: string; place:
       address: person.email,
       kind: `password-reset:${reset.id}`,
       subject: "A new password for Longreed",
-      sentences: ["Somebody, you we hope, asked for a new password.", "The link is good for an hour. Without it nothing changes."],
+      sentence: "Somebody, you we hope, asked for a new password.",
+      foot: "The link is good for an hour. Without it nothing changes.",
       button: { label: "Choose a new password", link: `${env().APP_URL}/new-password/${token}` },
     });
   });

@@ -1,0 +1,32 @@
+import type { Metadata } from "next";
+import { Hydrated } from "@/components/hydrated";
+import { PageSentence, Section } from "@/components/ui/page";
+import { ownTokensOptions } from "@/lib/people/client";
+import { currentPerson } from "@/lib/people/current-person";
+import { getMe } from "@/lib/people/me";
+import { findTokens } from "@/lib/people/tokens";
+import { NameForm } from "./name-form";
+import { PasswordForm } from "./password-form";
+import { TokensPanel } from "./tokens-panel";
+
+export const metadata: Metadata = { title: "Settings" };
+
+export default async function SettingsPage() {
+  const by = await currentPerson();
+  const now = new Date();
+  const [me, tokens] = await Promise.all([getMe({ by, now }), findTokens({ by, limit: 200 })]);
+  return (
+    <Hydrated data={[[ownTokensOptions().queryKey, tokens]]}>
+      <PageSentence margin={<b className="text-ink">{me.email}</b>}>{me.name}, {me.role}.</PageSentence>
+      <Section head="Name" note="As colleagues see it. Old records keep the name they were written with.">
+        <NameForm name={me.name} />
+      </Section>
+      <Section head="Password" note="All sessions end with a change, this one too.">
+        <PasswordForm email={me.email} />
+      </Section>
+      <Section head="Tokens for scripts" note={<>A script sends one as <code>Authorization: Bearer</code>. It may do what you may, or only read. Kept as a hash.</>}>
+        <TokensPanel zone={me.laboratory.timeZone} now={me.serverTime} />
+      </Section>
+    </Hydrated>
+  );
+}
