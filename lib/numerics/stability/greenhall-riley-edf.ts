@@ -37,7 +37,8 @@ type Pair = readonly [number, number];
  *
  * @param alpha Exponent of the noise; for Allan statistics not below −2.
  * @param m Averaging factor, a whole number ≥ 1.
- * @returns edf of a stretch by its number of values (phase points less one), which must be enough for one term. Good to a few percent except at m = 1 and 2: the readings are not averaged phase, see `discreteEdf`.
+ * @returns edf of a stretch by its number of values (phase points less one), which must be enough for one term. Good
+ *   to a few percent except at m = 1 and 2: the readings are not averaged phase, see `discreteEdf`.
  * @throws RangeError for a noise the statistic does not converge for, or a stretch without a term.
  *
  * Source: C. A. Greenhall and W. J. Riley, Uncertainty of stability variances based on finite differences, 35th PTTI
