@@ -3,7 +3,7 @@
 import { useInfiniteQuery } from "@tanstack/react-query";
 import { LinkButton } from "@/components/ui/button";
 import { More } from "@/components/ui/more";
-import { PageSentence, Section } from "@/components/ui/page";
+import { PageSentence, PageTitle, Section } from "@/components/ui/page";
 import { Empty, Loading, Problem } from "@/components/ui/states";
 import { capitalised, inWords, listOf, plural } from "@/lib/format";
 import { may, type Role } from "@/lib/permissions";
@@ -20,16 +20,20 @@ export function RigsScreen({ role }: { role: Role }) {
   const rigs = data?.pages.flatMap(({ items }) => items);
   const newRig = may(role, "edit rigs") && <LinkButton href="/rigs/new">New rig</LinkButton>;
 
-  if (!rigs) {
+  if (!rigs || rigs.length === 0) {
     return (
-      <PageSentence>{error ? <Problem error={error} onRetry={() => void refetch()} /> : <Loading label="the rigs" />}</PageSentence>
-    );
-  }
-  if (rigs.length === 0) {
-    return (
-      <PageSentence>
-        <Empty actions={newRig} note={newRig ? undefined : "An administrator makes rigs."}>No rig has been made yet.</Empty>
-      </PageSentence>
+      <>
+        <PageTitle actions={newRig}>Rigs</PageTitle>
+        <Section label="Rigs">
+          {rigs ? (
+            <Empty note={newRig ? undefined : "An administrator makes rigs."}>No rig has been made yet.</Empty>
+          ) : error ? (
+            <Problem error={error} onRetry={() => void refetch()} />
+          ) : (
+            <Loading label="the rigs" height={200} />
+          )}
+        </Section>
+      </>
     );
   }
   return (
