@@ -1,8 +1,8 @@
 import type { Metadata } from "next";
 import { notFound } from "next/navigation";
 import { Hydrated } from "@/components/hydrated";
-import { AppError } from "@/lib/errors";
 import { idSchema } from "@/lib/http/ids";
+import { orNotFound } from "@/lib/or-not-found";
 import { currentPerson } from "@/lib/people/current-person";
 import { may } from "@/lib/permissions";
 import { blockedTimesOptions, contactsOptions, loadsOptions, rigOptions, tokensOptions } from "@/lib/rigs/client";
@@ -21,10 +21,7 @@ export default async function RigPage({ params }: { params: Promise<{ id: string
   if (!id.success) notFound();
   const rigId = id.data;
   const now = new Date();
-  const rig = await getRig(rigId).catch((error: unknown) => {
-    if (error instanceof AppError && error.status === 404) notFound();
-    throw error;
-  });
+  const rig = await orNotFound(getRig(rigId));
   const [contacts, loads, blocked, tokens] = await Promise.all([
     findContacts({ now }),
     findLoads({ rigId, limit: 20 }),

@@ -1,0 +1,79 @@
+"use client";
+
+import { useQuery } from "@tanstack/react-query";
+import Link from "next/link";
+import { useMemo, useState } from "react";
+import { Button } from "@/components/ui/button";
+import { DataTable, type TableColumn } from "@/components/ui/data-table";
+import { PageTitle, Section, Vitals } from "@/components/ui/page";
+import { F0, Q } from "@/components/ui/quantity";
+import { Loading, Problem } from "@/components/ui/states";
+import { formatNumber, NO_VALUE } from "@/lib/format";
+import { formatDayTime } from "@/lib/format-time";
+import type { MountAnswer } from "@/lib/mounts/schema";
+import { may, type Role } from "@/lib/permissions";
+import { mountsOptions, sensorOptions } from "@/lib/sensors/client";
+import { EndMountDialog } from "./end-mount-dialog";
+import { MountDialog } from "./mount-dialog";
+
+export function SensorScreen({ sensorId, role, zone }: { sensorId: string; role: Role; zone: string }) {
+  const { data: sensor, error, refetch } = useQuery(sensorOptions(sensorId));
+  const mounts = useQuery(mountsOptions(sensorId));
+  const columns = useMemo(() => columnsIn(zone), [zone]);
+  const [open, setOpen] = useState<"mount" | "end" | null>(null);
+  if (!sensor) return <Section>{error ? <Problem error={error} onRetry={() => void refetch()} /> : <Loading label="the sensor" height={240} />}</Section>;
+
+  const { serial, kind, readout, mount, campaign, nominalF0Hz, nominalQ, radiusM, note } = sensor;
+  return (
+    <>
+      <PageTitle
+        crumbs={[{ label: "Sensors", href: "/sensors" }, { label: serial }]}
+        meta={`Vibrating ${kind}, read as ${readout}${radiusM ? `, radius ${formatNumber(radiusM * 1e6)} µm` : ""}`}
+        actions={
+          may(role, "record mounts") && (
+            <>
+              <Button look="primary" notPossible={sensor.retiredAt ? "it is retired" : null} onClick={() => setOpen("mount")}>Mount</Button>
+              {mount && <Button onClick={() => setOpen("end")}>Take out</Button>}
+            </>
+          )
+        }
+      >
+        {serial}
+      </PageTitle>
+      <Section head="Now">
+        {error && <Problem error={error} onRetry={() => void refetch()} />}
+        <Vitals
+          items={[
+            { label: "Mounted", value: mount ? <Link href={`/rigs/${mount.rigId}`}>{mount.rigName}</Link> : "nowhere", note: mount ? `position ${mount.position}, since ${formatDayTime(mount.since, zone)}` : undefined },
+            { label: "In campaign", value: campaign ? <Link href={`/campaigns/${campaign.id}`}>{campaign.name}</Link> : NO_VALUE, note: `${sensor.campaigns} so far` },
+            { label: <>Nominal <F0 /></>, value: `${formatNumber(nominalF0Hz)}\u00a0Hz` },
+            { label: <>Nominal <Q /></>, value: formatNumber(nominalQ) },
+          ]}
+        />
+        {note && <p className="caption">{note}</p>}
+      </Section>
+      <Section head="Mounts" note="Each clamping begins a new baseline.">
+        <DataTable
+          label="Mounts"
+          columns={columns}
+          rows={mounts.data?.items}
+          rowKey={({ id }) => id}
+          error={mounts.error}
+          onRetry={() => void mounts.refetch()}
+          empty={<p className="text-ink2">{serial} has not been mounted yet.</p>}
+        />
+      </Section>
+      {open === "mount" && <MountDialog sensor={sensor} onClose={() => setOpen(null)} />}
+      {open === "end" && mount && <EndMountDialog sensor={sensor} mountId={mount.id} onClose={() => setOpen(null)} />}
+    </>
+  );
+}
+
+const columnsIn = (zone: string): TableColumn<MountAnswer>[] => [
+  { id: "rig", head: "Rig", slot: "a", cell: ({ rigId, rigName, position }) => <><Link href={`/rigs/${rigId}`}>{rigName}</Link>, position {position}</> },
+  { id: "from", head: "From", slot: "c", cell: ({ from }) => <span className="num">{formatDayTime(from, zone)}</span> },
+  { id: "to", head: "To", slot: "d", cell: ({ to }) => <span className="num">{to ? formatDayTime(to, zone) : "now"}</span> },
+  { id: "by", head: "Mounted by", slot: "b", cell: ({ mountedBy }) => mountedBy ?? NO_VALUE },
+  { id: "ended", head: "Taken out by", slot: "x", cell: ({ endedBy }) => endedBy ?? NO_VALUE },
+  { id: "note", head: "Note", slot: "x", cell: ({ note }) => note ?? "" },
+];
