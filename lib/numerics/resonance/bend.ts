@@ -53,9 +53,9 @@ export function isBent(
   return { bent, evaluations };
 }
 
-/** Two numbers a point, less f0, Q, κ and three complex amplitudes. */
+/** Two numbers a point, less f0, Q, κ and the complex a, b and, where the offset has a slope, c. */
 function freedomOf(p: PreparedSweep): number {
-  return 2 * p.n - 9;
+  return 2 * p.n - (p.slopeNorm > 0 ? 9 : 7);
 }
 
 /** Damped Gauss–Newton over (h, ln Q, k) from a straight fit and a first bend. */

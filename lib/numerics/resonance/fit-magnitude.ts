@@ -17,6 +17,12 @@ const NOISE_ROUNDS = 3;
 const RICE_BELOW = 5;
 /** Done when a step promises less than this share of a variance. */
 const SMALL_GAIN = 1e-5;
+/**
+ * Done too when so many evaluations gained less than that share of a variance: with hardly any offset its phase is a flat
+ * valley along which steps shrink only slowly, while f0 and Q stand still.
+ */
+const STALL = 15;
+const STALL_GAIN = 1e-3;
 /** A direction the data do not determine (slope across a large offset) is held by this share of its own weight. */
 const RIDGE = 1e-9;
 const DOUBTFUL_SIGMAS = 3;
@@ -117,6 +123,7 @@ function descendMagnitude(data: MagnitudeSweep, readout: Readout, start: Magnitu
   magnitudeModel(data, readout, at, noise, here);
   const energy = data.y.reduce((sum, y) => sum + y * y, 0);
   let settled = false;
+  let milestone = Infinity; // the cost STALL evaluations ago
   while (evaluations < MOST_STEPS && Number.isFinite(here.cost)) {
     const matrix = leading(here.gram, free, damping + RIDGE);
     const step = here.gradient.slice(0, free);
@@ -134,7 +141,9 @@ function descendMagnitude(data: MagnitudeSweep, readout: Readout, start: Magnitu
     } else {
       damping = Math.max(1e-6, damping * 10);
     }
-    if (small || damping > 1e10) {
+    const stalled = evaluations % STALL === 0 && milestone - here.cost < (STALL_GAIN * here.cost) / data.n;
+    if (evaluations % STALL === 0) milestone = here.cost;
+    if (small || stalled || damping > 1e10) {
       settled = true;
       break;
     }

@@ -1,6 +1,7 @@
 import { failedFit } from "@/lib/numerics/resonance/failed-fit";
 import { fft } from "@/lib/numerics/resonance/fft";
 import type { FitFlag } from "@/lib/numerics/resonance/flags";
+import { DISTORTED_SIGMAS, NOISY_SNR } from "@/lib/numerics/resonance/judge";
 import { FEWEST_POINTS } from "@/lib/numerics/resonance/prepare";
 import { decayModel, emptyDecayModel, type DecayModel } from "@/lib/numerics/resonance/ring-down-model";
 import type { ResonanceFit } from "@/lib/numerics/resonance/types";
@@ -17,8 +18,6 @@ export type RingDown = {
 const MOST_STEPS = 60;
 /** Done after a step that promises less than this share of a variance. */
 const SMALL_GAIN = 1e-6;
-const NOISY_SNR = 5;
-const DISTORTED_SIGMAS = 4;
 const LEAST_GAIN = 20;
 
 /**

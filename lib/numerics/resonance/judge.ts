@@ -3,8 +3,8 @@ import type { FitFlag } from "@/lib/numerics/resonance/flags";
 const EDGE_SHARE = 0.1;
 const NARROW_HALF_WIDTHS = 2.5;
 const SPARSE_POINTS = 3;
-const NOISY_SNR = 5;
-const DISTORTED_SIGMAS = 4;
+export const NOISY_SNR = 5;
+export const DISTORTED_SIGMAS = 4;
 const RUSHED_RING_DOWNS = 5;
 
 export type Judged = {

@@ -52,6 +52,21 @@ describe("Cramér–Rao bound against the published cases", () => {
     });
   }
 
+  it("what a fit states is this bound at its own f0, Q, a and noise: the projection loses nothing", () => {
+    const dice = new Dice(9);
+    for (const readout of ["velocity", "displacement"] as const) {
+      for (const q of [4, 30, 3000]) {
+        const frequencyHz = linearGrid(1000 - (0.9 * 3000) / (2 * q), 1000 + (0.9 * 2500) / (2 * q), 201);
+        const fit = fitResonance(noisySweep(frequencyHz, { readout, f0Hz: 1000, q, a: dice.phasor(1), b: dice.phasor(9) }, 0.01, dice), { readout });
+        const bound = cramerRaoBound({ frequencyHz, readout, f0Hz: fit.f0Hz, q: fit.q, a: fit.a, noise: fit.noise });
+        expect(Math.abs(fit.f0StdHz / bound.f0StdHz - 1)).toBeLessThan(1e-4);
+        expect(Math.abs(fit.qStd / bound.qStd - 1)).toBeLessThan(1e-4);
+        expect(fit.covariance.f0q / (fit.f0StdHz * fit.qStd)).toBeCloseTo(bound.correlation, 4);
+        expect(fit.covariance.f0f0).toBeCloseTo(fit.f0StdHz ** 2, 12);
+      }
+    }
+  });
+
   it("a slope in the offset costs more than a constant one", () => {
     const input = { frequencyHz: linearGrid(980, 1020, 201), readout: "velocity" as const, f0Hz: 1003, q: 100, a: { re: 1, im: 0 }, noise: 0.01 };
     const constant = cramerRaoBound({ ...input, offset: "constant" });

@@ -34,6 +34,34 @@ function bentSweep(bend: number, { snr = 300, descending = false, seed = 2 } = {
   return { kind: "complex", frequencyHz, re, im };
 }
 
+describe("the bent oscillator", () => {
+  // Harmonic balance, Landau & Lifshitz, Mechanics, §29: ρ(1 + (x − kρ)²) = 1 with ρ the power relative to the peak.
+  it("stays on the branch it came along, up and down", () => {
+    const bend = 3; // three roots between x ≈ 2.2 and 3
+    const swept = (xs: number[]) => {
+      let near = 0.01;
+      return xs.map((x) => {
+        near = bentPower(x, bend, near);
+        expect(near * (1 + (x - bend * near) ** 2)).toBeCloseTo(1, 9);
+        return near;
+      });
+    };
+    const xs = Array.from({ length: 601 }, (_, i) => -3 + i / 60);
+    const up = swept(xs);
+    const down = swept(xs.toReversed()).toReversed();
+    const at = xs.findIndex((x) => x >= 2.6);
+    expect(up[at]).toBeGreaterThan(0.8);
+    expect(down[at]).toBeLessThan(0.4);
+    expect(up[0]).toBeCloseTo(down[0], 9);
+    expect(up.at(-1)).toBeCloseTo(down.at(-1) ?? NaN, 9);
+  });
+
+  it("peaks at its bend with the height of the straight one", () => {
+    expect(bentPower(0.7, 0.7, 0.5)).toBeCloseTo(1, 12);
+    expect(bentPower(2, 0, 0.5)).toBeCloseTo(0.2, 12);
+  });
+});
+
 describe("flags, one by one", () => {
   it("a good sweep has none", () => {
     expect(fitResonance(sweepOf({ from: 970, to: 1030 }), velocity).flags).toEqual([]);
