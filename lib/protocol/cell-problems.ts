@@ -4,17 +4,21 @@ import type { Block, Definition, MeasureBlock } from "./schema";
 /** What is in the cell and what has been measured, as far as reading the protocol tells. */
 type State = { content: string; hasReference: boolean };
 
+/** Blocks read at most, so that loops over long lists within each other end; what follows is not told of. */
+const MOST_BLOCKS = 100_000;
+
 /**
  * Reads the protocol through, every loop twice and every slot of a `forEach` once, and tells where a liquid is missing, left
  * or filled over, and where something is judged or measured before there is a reference.
  */
 export function cellProblems(definition: Definition): Problem[] {
   const found = new Map<string, Problem>();
+  let read = 0;
   const warn = (path: string, message: string) => found.set(`${path} ${message}`, { path, severity: "warning", message });
 
   const run = (blocks: readonly Block[], at: string, slot: string, before: State): State => {
     let state = before;
-    for (const [index, block] of blocks.entries()) state = one(block, `${at}.${index}`, slot, state);
+    for (const [index, block] of blocks.entries()) if (++read <= MOST_BLOCKS) state = one(block, `${at}.${index}`, slot, state);
     return state;
   };
 
@@ -37,7 +41,7 @@ export function cellProblems(definition: Definition): Problem[] {
         return block.times === 1 ? once : run(block.blocks, `${path}.blocks`, slot, once);
       }
       case "forEach": {
-        const values = "slots" in block.over ? block.over.slots : block.over.temperaturesC.slice(0, 2).map(() => slot);
+        const values = "slots" in block.over ? [...new Set(block.over.slots)] : block.over.temperaturesC.slice(0, 2).map(() => slot);
         return values.reduce((reached, value) => run(block.blocks, `${path}.blocks`, value, reached), state);
       }
       case "untilClean": {
@@ -60,7 +64,7 @@ export function cellProblems(definition: Definition): Problem[] {
   };
 
   const end = run(definition.blocks, "blocks", "", { content: "air", hasReference: false });
-  if (end.content !== "air") warn("blocks", `The protocol ends with ${end.content.replace("rinsed ", "")} in the cell.`);
+  if (end.content !== "air" && read <= MOST_BLOCKS) warn("blocks", `The protocol ends with ${end.content.replace("rinsed ", "")} in the cell.`);
   if (usesLiquid(definition.blocks) && !definition.park?.length)
     warn("park", "Nothing says how to park: a campaign that is stopped leaves its liquid in the cell.");
   if (!end.hasReference)

@@ -20,7 +20,7 @@ import { walk, type Walked } from "./walk";
 export function next(definition: Definition, cursor: Cursor, facts: Facts): Next {
   if (cursor.finished) return { cursor, action: { do: "finish" } };
   if (isParked(cursor) && !cursor.redirection) return { cursor, action: { do: "parked" } };
-  const draft = structuredClone(cursor);
+  const draft = draftOf(cursor);
   if (!isParked(draft) || !draft.parked?.begun) bookLast(definition, draft, facts);
   applyRedirection(definition, draft, facts);
   if (isParked(draft)) return { cursor: draft, action: { do: "parked" } };
@@ -28,6 +28,18 @@ export function next(definition: Definition, cursor: Cursor, facts: Facts): Next
   const action = judgeLast(definition, draft, facts) ?? goOn(definition, draft, facts);
   if (action.do === "step") delete draft.held;
   return { cursor: draft, action };
+}
+
+/** A copy in which everything may be changed that `next` changes in place; much faster than a structured clone. */
+function draftOf(cursor: Cursor): Cursor {
+  const copied = (path: PathEntry[]) => path.map((entry) => ({ ...entry }));
+  return {
+    ...cursor,
+    path: copied(cursor.path),
+    detours: cursor.detours.map((detour) => ({ ...detour, path: copied(detour.path) })),
+    cleanedAgain: { ...cursor.cleanedAgain },
+    ...(cursor.parked && { parked: { ...cursor.parked } }),
+  };
 }
 
 function isParked({ parked, detours }: Cursor): boolean {

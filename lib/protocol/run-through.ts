@@ -11,9 +11,9 @@ export type Counts = Map<string, number>;
 export type RunThrough = { counts: Counts; seconds: number; cycles: number; isExact: boolean };
 
 /** Up to here every turn is gone through; after it a repeat's third and later turns count as its second. */
-const EXACT_STEPS = 2000;
-/** A bound on the work: after it the values of a `forEach` count like its second, too. */
-const MOST_STEPS = 20_000;
+const EXACT_STEPS = 600;
+/** A bound on the work: after it a first turn is enough, also of a `forEach`, whose later values count like it. */
+const MOST_STEPS = 10_000;
 
 /** A turn of a container under way: what had been counted when it began. */
 type Mark = { id: string; turn: number; counts: Counts; elapsedS: number };
@@ -21,7 +21,7 @@ type Mark = { id: string; turn: number; counts: Counts; elapsedS: number };
 /**
  * Goes through a protocol from its start with the interpreter itself, in a made-up world.
  *
- * Exact up to 2000 steps. Then, when a `repeat` begins its third turn, what its second took (the first may hold searches) is
+ * Exact up to 600 steps. Then, when a `repeat` begins its third turn, what its second took (the first may hold searches) is
  * multiplied by the turns left but one, and the last turn is gone through again; a repeat up to a date has as many turns as
  * begin before it. So turns that differ by the time of day or the day of the week are taken alike from there on.
  */
@@ -64,7 +64,7 @@ function turnsToSkip(
   { world, isLate }: { world: World; isLate: boolean },
 ): number {
   const turn = entry.turn ?? 0;
-  if (turn < 2) return 0;
+  if (turn < (isLate ? 1 : 2)) return 0;
   if (block.kind === "repeat" && block.until !== undefined) {
     const leftS = (endOfLocalDate(block.until, world.timeZone) - madeUp.nowMs) / 1000;
     return Math.max(0, Math.ceil(leftS / (madeUp.elapsedS - mark.elapsedS)) - 1);

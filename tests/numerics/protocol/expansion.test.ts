@@ -27,7 +27,7 @@ describe("any protocol", () => {
       }),
       { numRuns: 400 },
     );
-  });
+  }, 30_000);
 
   test("numbers its steps one after the other", () => {
     fc.assert(
@@ -37,7 +37,7 @@ describe("any protocol", () => {
       }),
       { numRuns: 100 },
     );
-  });
+  }, 30_000);
 
   test("goes on alike from any cursor that a database has kept, and answers a repeated question alike", () => {
     fc.assert(
@@ -53,7 +53,7 @@ describe("any protocol", () => {
       }),
       { numRuns: 100 },
     );
-  });
+  }, 30_000);
 
   test("once finished stays finished", () => {
     fc.assert(
@@ -65,7 +65,7 @@ describe("any protocol", () => {
       }),
       { numRuns: 100 },
     );
-  });
+  }, 30_000);
 
   test("begins with a cursor that needs nothing of the definition", () => {
     fc.assert(
@@ -75,7 +75,7 @@ describe("any protocol", () => {
       }),
       { numRuns: 100 },
     );
-  });
+  }, 30_000);
 });
 
 function deepFrozen<T>(value: T): T {
