@@ -12,6 +12,7 @@ const help = `Simulated rigs for Longreed. Each is an agent that speaks the HTTP
       --speed real|×N|fast   how fast its clock runs (default real; fast: as fast as it can)
       --seed N               chooses its noise (default 1)
       --clock-start TIME     where a simulated clock begins, e.g. 2026-03-02T08:00:00Z (default now)
+      --truth FILE           append the true f0 and Q of every reading, one JSON object a line
       --until-idle           end when there is nothing left to do
       --no-state             forget the bottles and the clock at the end
 
@@ -37,6 +38,7 @@ async function main(): Promise<number> {
       speed: { type: "string" },
       seed: { type: "string" },
       "clock-start": { type: "string" },
+      truth: { type: "string" },
       "until-idle": { type: "boolean" },
       "no-state": { type: "boolean" },
       state: { type: "string", default: "data/simulator" },
@@ -67,7 +69,7 @@ async function main(): Promise<number> {
           speed: values.speed,
           clockStart: values["clock-start"],
         },
-        { ...common, untilIdle: values["until-idle"] },
+        { ...common, untilIdle: values["until-idle"], truthFile: values.truth },
       );
       return 0;
     }

@@ -18,7 +18,7 @@ const entries = z.array(
 const lookEveryMs = 2000;
 const afterFailureMs = 15_000;
 
-type Options = Omit<StartOptions, "untilIdle"> & { file: string };
+type Options = Omit<StartOptions, "untilIdle" | "truthFile"> & { file: string };
 
 /**
  * Runs every rig that the file names, in one process. Waits for the file, looks again every 2 s, starts what is new and ends what is

@@ -13,7 +13,18 @@ export const memoryStore = (): WorldStore => {
   return { load: () => kept, save: (world) => void (kept = world) };
 };
 
-type Options = { scenario: Scenario; seed: number; speed: Speed; store: WorldStore; clockStartMs?: number };
+/** The truth behind one reading. */
+export type TruthRecord = { campaignNumber: number; sequence: number; index: number; takenAt: string; f0Hz: number; q: number; sensorC: number };
+
+type Options = {
+  scenario: Scenario;
+  seed: number;
+  speed: Speed;
+  store: WorldStore;
+  clockStartMs?: number;
+  /** Is told the truth behind every reading that is taken; one that is taken again comes again, the same. */
+  onTruth?: (record: TruthRecord) => void;
+};
 
 /** The simulated rig: its scenario, its world and its clock. Agents come and go, it stays. */
 export class Rig {
@@ -22,15 +33,17 @@ export class Rig {
   readonly clock: Clock;
   readonly speed: Speed;
   readonly nominal: Resonance;
+  readonly onTruth: (record: TruthRecord) => void;
   world: World;
   private readonly store: WorldStore;
   private latestReportedMs = Number.NEGATIVE_INFINITY;
 
-  constructor({ scenario, seed, speed, store, clockStartMs }: Options) {
+  constructor({ scenario, seed, speed, store, clockStartMs, onTruth = () => undefined }: Options) {
     this.scenario = scenario;
     this.seed = seed;
     this.speed = speed;
     this.store = store;
+    this.onTruth = onTruth;
     this.nominal = nominalInAir(scenario);
     this.world = store.load() ?? newWorld(scenario, null);
     const startMs = this.world.clockMs ?? clockStartMs ?? Date.now();

@@ -1,3 +1,4 @@
+import { appendFileSync } from "node:fs";
 import { badNetwork } from "./agent/bad-network";
 import { runAgent } from "./agent/run-agent";
 import { httpTransport } from "./agent/transport";
@@ -16,10 +17,17 @@ export type RigEntry = {
   clockStart?: string;
 };
 
-export type StartOptions = { signal: AbortSignal; stateFolder?: string; untilIdle?: boolean; log: (text: string) => void };
+export type StartOptions = {
+  signal: AbortSignal;
+  stateFolder?: string;
+  untilIdle?: boolean;
+  /** Gets the true f0 and Q of every reading, one JSON object a line. */
+  truthFile?: string;
+  log: (text: string) => void;
+};
 
 /** Runs one rig and its agent until the signal is aborted or, with `untilIdle`, until there is nothing left to do. */
-export async function startRig(entry: RigEntry, { signal, stateFolder, untilIdle, log }: StartOptions): Promise<void> {
+export async function startRig(entry: RigEntry, { signal, stateFolder, untilIdle, truthFile, log }: StartOptions): Promise<void> {
   const { url, token, seed = 1 } = entry;
   const scenario = loadScenario(entry.scenario);
   const clockStartMs = entry.clockStart === undefined ? undefined : Date.parse(entry.clockStart);
@@ -31,6 +39,7 @@ export async function startRig(entry: RigEntry, { signal, stateFolder, untilIdle
     seed,
     speed: parseSpeed(entry.speed ?? "real"),
     clockStartMs,
+    onTruth: truthFile === undefined ? undefined : (record) => appendFileSync(truthFile, `${JSON.stringify(record)}\n`),
     store: stateFolder === undefined ? memoryStore() : fileStore(stateFolder, identity),
   });
   await runAgent({

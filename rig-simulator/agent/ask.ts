@@ -2,8 +2,8 @@ import type { Step } from "../contract";
 import { linkedController } from "../linked-controller";
 import type { Session } from "./session";
 
-/** After these pauses the rig asks whether a date is all that is waited for; together some 4 s. */
-const watchMs = [40, 80, 160, 320, 640, 1280, 1500];
+/** After these pauses the rig asks whether a date is all that is waited for; together 3.5 s. */
+const watchMs = [100, 150, 250, 500, 1000, 1500];
 
 /**
  * Asks for the next step; undefined when there is none for now. A fast clock that has only a date to wait for jumps there; another

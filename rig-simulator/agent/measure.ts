@@ -56,9 +56,11 @@ export function takeReading(rig: Rig, step: MeasureStep, conditions: Conditions,
   const moment: Moment = { seed, campaignNumber: step.campaignNumber, sequence: step.sequence, index };
   const { f0Hz, q, climate } = truth(scenario, moment, conditions);
   const { sweep } = step.params;
+  const takenAt = rig.timeText(takenAtMs);
+  rig.onTruth({ campaignNumber: step.campaignNumber, sequence: step.sequence, index, takenAt, f0Hz, q, sensorC: climate.sensorC });
   return {
     index,
-    takenAt: rig.timeText(takenAtMs),
+    takenAt,
     durationS: sweep.points * sweep.dwellS,
     temperatureC: round(climate.thermometerC, 5),
     pressurePa: round(climate.pressurePa, 1),

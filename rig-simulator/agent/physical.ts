@@ -8,7 +8,10 @@ type LiquidStep = FillStep | RinseStep | DrainStep | DryStep;
 /** Where the step's work stands, in its own measure, and how to say so in a heartbeat. */
 type Work = { total: number; before: number; secondsEach: number; done: (amount: number) => Done };
 
-/** Fills, rinses, drains or dries: goes on from what was done already, tells its progress at once, fails as the scenario says. */
+/**
+ * Fills, rinses, drains or dries: goes on from what was done already, tells its progress at once, fails as the scenario says. In fast mode
+ * nothing is told of what may be repeated anyway.
+ */
 export async function moveLiquid(session: Session, step: LiquidStep, start: World): Promise<Outcome> {
   const { rig } = session;
   const shortage = shortageOf(session, step, start);
@@ -23,8 +26,11 @@ export async function moveLiquid(session: Session, step: LiquidStep, start: Worl
   const slices = rig.isFast ? 2 : 20;
   const share = (work.total - work.before) / slices;
   const until = step.kind === "dry" ? session.interruption : session.signal;
-  session.progress(work.done(work.before));
-  await session.tryBeat();
+  const tell = async (amount: number): Promise<void> => {
+    session.progress(work.done(amount));
+    if (!rig.isFast || !isRepeatable(session, step)) await session.tryBeat();
+  };
+  await tell(work.before);
   for (let slice = 0; slice < slices && share > 0; slice++) {
     try {
       await rig.clock.pass(share * work.secondsEach, until);
@@ -32,8 +38,7 @@ export async function moveLiquid(session: Session, step: LiquidStep, start: Worl
       if (error instanceof Interrupted) return { outcome: "interrupted" };
       throw error;
     }
-    session.progress(work.done(work.before + share * (slice + 1)));
-    await session.tryBeat();
+    await tell(work.before + share * (slice + 1));
     if (slice + 1 === slices / 2) crashIfDue(rig.scenario, rig.world, step, 0);
     if (step.kind === "dry" && session.wish !== "none" && slice + 1 < slices) return { outcome: "interrupted" };
   }
@@ -59,6 +64,8 @@ export async function settle(session: Session, step: SettleStep, start: World): 
   if (seconds > timeoutS) return failed("timeout", `Not steady at ${temperatureC} °C after ${timeoutS} s`, true);
   return session.wish === "none" ? { outcome: "done" } : { outcome: "interrupted" };
 }
+
+const isRepeatable = ({ rig }: Session, { kind }: LiquidStep): boolean => rig.scenario.rig.repeatable.includes(kind);
 
 function workOf(session: Session, step: LiquidStep): Work {
   const { scenario } = session.rig;

@@ -27,6 +27,8 @@ export async function runAgent(options: AgentOptions): Promise<void> {
     try {
       await session.open();
       log(`connected as ${session.server.rig.name}`);
+      if (session.server.rig.clock === "real" && options.rig.speed.kind !== "real")
+        log("the server keeps a real clock for this rig: make it a rig with a simulated clock, or use --speed real");
       await work(session, options.untilIdle ?? false);
       return;
     } catch (error) {

@@ -53,6 +53,21 @@ describe("a rig that is started again", () => {
     expect(JSON.parse(readFileSync(path.join(folder, state), "utf8"))).toMatchObject({ ports: { 1: 1960, 2: 2000 } });
   });
 
+  it("writes down the truth behind every reading on request", async () => {
+    server = new ContractServer([measure(3)]);
+    const url = await server.start();
+    const truthFile = path.join(folder, "truth.jsonl");
+    await startRig({ ...entry, url }, { signal: AbortSignal.timeout(20_000), untilIdle: true, truthFile, log: () => undefined });
+    const lines = readFileSync(truthFile, "utf8").trim().split("\n").map((line) => JSON.parse(line) as Record<string, unknown>);
+    expect(lines.map(({ sequence, index, takenAt }) => ({ sequence, index, takenAt }))).toEqual(
+      server.stored(1).map(({ index, takenAt }) => ({ sequence: 1, index, takenAt })),
+    );
+    for (const { f0Hz, q } of lines) {
+      expect(f0Hz).toBeCloseTo(2399.77, 0);
+      expect(q).toBeGreaterThan(2000);
+    }
+  });
+
   it("keeps no token in its state", async () => {
     server = new ContractServer([measure(1)]);
     await runUntil(1, await server.start());
