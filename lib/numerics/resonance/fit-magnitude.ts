@@ -11,8 +11,9 @@ import { inverseColumn, solveCholesky } from "@/lib/numerics/resonance/small-lin
 import type { FitOptions, Readout, ResonanceFit, Sweep } from "@/lib/numerics/resonance/types";
 
 const MOST_STEPS = 200;
-/** Rounds in which the noise, and with it the bias of the modulus, is found anew. */
-const NOISE_ROUNDS = 3;
+/** Rounds in which the noise, and with it the bias of the modulus, is found anew; until it moves by less than SAME_NOISE. */
+const NOISE_ROUNDS = 10;
+const SAME_NOISE = 2e-3;
 /** Where |z| is below this many noises anywhere, its mean is Rice's. */
 const RICE_BELOW = 5;
 /** Done when a step promises less than this share of a variance. */
@@ -58,10 +59,13 @@ export function fitMagnitudeSweep(sweep: Extract<Sweep, { kind: "magnitude" }>, 
   let noise = Math.sqrt(best.model.cost / (n - free));
   if (best.model.modulus.some((nu) => nu < RICE_BELOW * noise)) {
     for (let round = 0; round < NOISE_ROUNDS; round++) {
-      best = descendMagnitude(data, readout, best.at, riceNoise(best.model, noise), free);
-      evaluations += best.evaluations;
-      if (!best.settled) return failedFit(evaluations);
+      const next = descendMagnitude(data, readout, best.at, riceNoise(best.model, noise), free);
+      evaluations += next.evaluations;
+      if (!next.settled) break;
+      best = next;
+      const last = noise;
       noise = Math.sqrt(best.model.cost / (n - free));
+      if (Math.abs(noise - last) < SAME_NOISE * last) break;
     }
   }
   return describe(data, best, { dwellS, noise, free, evaluations });

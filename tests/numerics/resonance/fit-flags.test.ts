@@ -1,6 +1,10 @@
 import { describe, expect, it } from "vitest";
-import { bentPower } from "@/lib/numerics/resonance/bent-model";
+import { bentModel, bentPower, emptyBentModel } from "@/lib/numerics/resonance/bent-model";
 import { fitResonance } from "@/lib/numerics/resonance/fit-resonance";
+import { prepareSweep } from "@/lib/numerics/resonance/prepare";
+import { emptyProjectedModel, projectedModel } from "@/lib/numerics/resonance/projected-model";
+import { residualsOf } from "@/lib/numerics/resonance/residuals";
+import { inverseColumn } from "@/lib/numerics/resonance/small-linear";
 import { linearGrid, type FitOptions } from "@/lib/numerics/resonance/types";
 import { Dice, noisySweep, type ComplexSweep } from "@/tests/numerics/resonance/sweeps";
 
@@ -54,6 +58,24 @@ describe("the bent oscillator", () => {
     expect(down[at]).toBeLessThan(0.4);
     expect(up[0]).toBeCloseTo(down[0], 9);
     expect(up.at(-1)).toBeCloseTo(down.at(-1) ?? NaN, 9);
+  });
+
+  it("is first judged by the very step that a refit would begin with", () => {
+    for (const readout of ["velocity", "displacement"] as const) {
+      const dice = new Dice(6);
+      const sweep = noisySweep(linearGrid(800, 1260, 201), { readout, f0Hz: F0, q: 8, a: dice.phasor(1), b: dice.phasor(3) }, 0.01, dice);
+      const { f0Hz, q } = fitResonance(sweep, { readout });
+      const prepared = prepareSweep(sweep, true);
+      const straight = emptyProjectedModel();
+      projectedModel(prepared, readout, f0Hz, q, straight);
+      const { bend, bendVariance } = residualsOf(prepared, readout, f0Hz, q, straight);
+      const refit = emptyBentModel();
+      bentModel(prepared, readout, f0Hz, q, 0, refit);
+      const perBend = inverseColumn(refit.gram, 2, 3) ?? new Float64Array(3);
+      const step = perBend[0] * refit.gradient[0] + perBend[1] * refit.gradient[1] + perBend[2] * refit.gradient[2];
+      expect(bendVariance / perBend[2]).toBeCloseTo(1, 6);
+      expect(bend / Math.sqrt(bendVariance) - step / Math.sqrt(perBend[2])).toBeCloseTo(0, 5);
+    }
   });
 
   it("peaks at its bend with the height of the straight one", () => {
