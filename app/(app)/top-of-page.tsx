@@ -27,7 +27,7 @@ export function TopOfPage({ me, demo }: { me: MeAnswer; demo: boolean }) {
       person={{ name: data.name, role: data.role }}
       alarms={data.alarms}
       more={MORE_PLACES.filter(({ href }) => !NEEDS[href] || may(data.role, NEEDS[href]))}
-      demo={demo && <><b>A demo laboratory.</b> Rigs, liquids and people are invented; mail goes nowhere.</>}
+      demo={demo && <><b>A demo laboratory.</b> Rigs, liquids and people are invented; mail stays on this machine.</>}
       onSignOut={() => void leave()}
     />
   );

@@ -22,7 +22,7 @@ export default async function SignInPage({ searchParams }: { searchParams: Promi
         </div>
       </main>
       <div className="page-row ring-down">
-        <div className="margin">A tungsten wire of 0.1 mm and 1 kHz let go in air, in water, and in an oil of 8 mPa·s.</div>
+        <div className="margin">A tungsten wire of 0.1&nbsp;mm and 1&nbsp;kHz let go in air, in water, and in an oil of 8&nbsp;mPa·s.</div>
         <div className="body"><RingDown /></div>
       </div>
     </>
