@@ -32,7 +32,9 @@ export function prepareDetour(definition: Definition, draft: Cursor, detour: Det
 
 /** The reference to measure out of turn: the first of the present set-point, else the first that the protocol names. */
 export function referenceDetour(definition: Definition, draft: Cursor, limitIds?: string[]): Detour | undefined {
-  const known = draft.reference ?? firstReference(definition);
+  const { reference } = draft;
+  const stillThere = reference && findMeasure(definition, ({ id }) => id === reference.measureId) ? reference : undefined;
+  const known = stillThere ?? firstReference(definition);
   return known && {
     kind: "reference",
     path: [],

@@ -69,7 +69,7 @@ function bookLast(definition: Definition, draft: Cursor, facts: Facts): void {
   if (!at || at.leaf.pending || at.leaf.booked) return;
   if (!facts.last && !draft.redirection) throw new RangeError("the step that the cursor stands on has not ended");
   book(draft, at.block, facts.last?.outcome ?? "open", facts.nowMs);
-  if (facts.last) at.leaf.booked = true;
+  if (facts.last && facts.last.outcome !== "failed") at.leaf.booked = true;
 }
 
 /** What the end of the last step says: a hold, a search, the same measurement once more, or (undefined) nothing. */
@@ -77,7 +77,7 @@ function judgeLast(definition: Definition, draft: Cursor, facts: Facts): Action 
   const at = standing(presentLine(definition, draft));
   if (!at || at.leaf.pending) return undefined;
   const { block, leaf } = at;
-  if (facts.last?.outcome === "failed") return fail(draft, `${stepLabel(block)} failed.`);
+  if (facts.last?.outcome === "failed") return { do: "hold", reason: "failure", text: `${stepLabel(block)} failed.` };
   if (block.kind !== "measure" || facts.last?.outcome !== "done") return undefined;
 
   if (leaf.find) {

@@ -6,7 +6,8 @@ import { walk } from "./walk";
 
 /**
  * Takes note of where a cursor is to go; the following `next` carries it out, since that knows how the present step ended.
- * A new redirection takes the place of one not carried out yet; `cleanAgain` waits beside it for its phase boundary.
+ * A new redirection takes the place of one not carried out yet, but going on keeps the reference that a new mount is owed;
+ * `cleanAgain` waits beside it for its phase boundary.
  */
 export function redirect(definition: Definition, cursor: Cursor, redirection: Redirection): Cursor | { impossible: string } {
   if (cursor.finished) return { impossible: "The campaign has finished." };
@@ -20,6 +21,8 @@ export function redirect(definition: Definition, cursor: Cursor, redirection: Re
     return { impossible: "The cell has been parked since; go on from the phase or the cycle." };
   if (redirection.kind !== "park" && redirection.from === "cycle" && outermostRepeat(definition, cursor) < 0)
     return { impossible: "The campaign is not in a cycle; go on from the phase." };
+  if (redirection.kind === "resume" && cursor.redirection?.kind === "reference")
+    return { ...cursor, redirection: { kind: "reference", from: redirection.from === "cycle" ? "cycle" : "phase" } };
   return { ...cursor, redirection };
 }
 

@@ -55,7 +55,7 @@ export type PathEntry = {
   passed?: true;
   /** The block has not been made (again) yet; without it the path stands on the step last made. */
   pending?: true;
-  /** Its effect on the cell and the set-point has been taken into the cursor. */
+  /** What it did to the cell and the set-point has been taken into the cursor. */
   booked?: true;
   /** The step made, or to be made next, is the search for the resonance, not the measurement itself. */
   find?: true;
@@ -109,7 +109,7 @@ export type Cursor = {
   due?: { limitId: string; maxTimes: number }[];
   /** Turns of `cleanAgain` taken, by limit id, since that limit last was kept in the medium where it was broken. */
   cleanedAgain: Record<string, { times: number; medium: string }>;
-  /** Why `next` last answered with a hold. */
+  /** Why `next` last answered with a hold, other than for a failed step: that may be given out again and be done after all. */
   held?: "failure" | "untilClean" | "cleanAgain";
   /** Since a park began: what was there before. `begun` once a step of it was made. */
   parked?: CellState & { begun: boolean };

@@ -160,6 +160,18 @@ describe("a new mount", () => {
     expect(back.told).toEqual(["reference air", "fill a", "sample a", "drain"]);
   });
 
+  test("is not forgotten when a person lets the campaign go on before it came", () => {
+    const { world, cursor } = send({ kind: "reference", from: "phase" }, { at: 4 });
+    expect(goOn(world, to(cursor, { kind: "resume", from: "here" }), 3).told).toEqual(["drain", "reference air", "fill a"]);
+  });
+
+  test("takes another reference where the one known is gone from the version", () => {
+    const { world, cursor } = send({ kind: "reference", from: "phase" }, { at: 6 });
+    const given = { ...definition, blocks: [...definition.blocks, ...define([measure("air", { id: "other" })]).blocks] };
+    const gone = { ...cursor, reference: { measureId: "gone", medium: "air", setPointC: 25 } };
+    expect(goOn(world, gone, 1, given).steps).toMatchObject([{ blockId: "air", detour: "reference" }]);
+  });
+
   test("before anything was measured changes nothing", () => {
     expect(goOn(...entries(send({ kind: "reference", from: "phase" }, { at: 0 })), 2).told).toEqual(["settle 25", "reference air"]);
   });

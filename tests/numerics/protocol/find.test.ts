@@ -92,4 +92,18 @@ describe("a failed step", () => {
     const from = redirect(definition, cursor, { kind: "resume", from: "here" }) as Cursor;
     expect(next(definition, from, world.facts).action).toMatchObject({ step: { sequence: 2, kind: "settle" } });
   });
+
+  test("given out again under its own number, and done after all, counts as done", () => {
+    const definition = define([settle(25), tracked, measure("air")]);
+    const world = new TestWorld(0);
+    const { cursor } = drive(definition, world, { limit: 1 });
+    world.facts.last = { outcome: "failed" };
+    const held = next(definition, cursor, world.facts).cursor;
+    world.facts.last = { outcome: "done" };
+    const after = next(definition, held, world.facts);
+    expect(after.action).toMatchObject({ step: { sequence: 2, role: "find", setPointC: 25 } });
+
+    const from = redirect(definition, held, { kind: "resume", from: "here" }) as Cursor;
+    expect(next(definition, from, world.facts).action).toEqual(after.action);
+  });
 });
