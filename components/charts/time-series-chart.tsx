@@ -1,6 +1,6 @@
 "use client";
 
-import { useMemo, useState, type KeyboardEvent, type ReactNode } from "react";
+import { memo, useMemo, useState, type KeyboardEvent, type ReactNode } from "react";
 import { formatCount, formatNumber, formatUncertain } from "@/lib/format";
 import { formatDate, formatDayTime } from "@/lib/format-time";
 import { placesWithRoom, stackPanels } from "./panel-places";
@@ -52,6 +52,8 @@ export function TimeSeriesChart({ label, sentence, file, panels, from, to, zone,
   const stops = useMemo(() => (axis ? panelStops(panels[0], axis, phases) : []), [panels, axis, phases]);
   const heights = panels.map((panel, i) => panel.height ?? HEIGHTS[i] ?? 64);
   const { tops, bottom } = stackPanels(heights, HEADROOM, PANEL_GAP);
+  const [mainPanel, mainTop = 0, mainHeight = 0] = [panels[0], tops[0], heights[0]];
+  const mainScale = useMemo(() => mainPanel && panelScale(mainPanel, mainTop, mainHeight), [mainPanel, mainTop, mainHeight]);
   const closed = (axis?.breaks.length ?? 0) > 0;
   const axisY = bottom + 6;
   const height = axisY + (closed ? 40 : 24);
@@ -82,7 +84,6 @@ export function TimeSeriesChart({ label, sentence, file, panels, from, to, zone,
   }
 
   const stop = cursor === undefined ? undefined : stops[cursor];
-  const mainScale = panels[0] && panelScale(panels[0], tops[0] ?? 0, heights[0] ?? 0);
   const part = whole && (whole.from !== from || whole.to !== to);
   const reading = (
     <>
@@ -134,7 +135,7 @@ function nextStop(event: KeyboardEvent, here: number, stops: readonly { stretch:
 }
 
 /** True time: ticks at round local times. Closed: a line a phase, its date, and under each break the letter of what happened in it. */
-function BottomAxis({ axis, phases, from, to, zone, y }: { axis: TimeAxis; phases?: readonly AxisPhase[]; from: string; to: string; zone: string; y: number }) {
+const BottomAxis = memo(function BottomAxis({ axis, phases, from, to, zone, y }: { axis: TimeAxis; phases?: readonly AxisPhase[]; from: string; to: string; zone: string; y: number }) {
   if (axis.breaks.length === 0) {
     const [piece] = axis.pieces;
     const ticks = timeTicks(from, to, zone, (piece?.x1 ?? 0) - (piece?.x0 ?? 0));
@@ -163,4 +164,4 @@ function BottomAxis({ axis, phases, from, to, zone, y }: { axis: TimeAxis; phase
       ))}
     </g>
   );
-}
+});

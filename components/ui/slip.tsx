@@ -28,7 +28,7 @@ export function Slip({ kind = "task", when, remark, status, title, inHand, actio
         {remark && <span className="desk">{remark}</span>}
         {status && <span className="ml-auto">{status}</span>}
       </div>
-      <h3>{title}</h3>
+      <h2>{title}</h2>
       {children}
       {actions && <div className="buttons">{actions}</div>}
     </article>
