@@ -259,6 +259,28 @@ describe("the agent", () => {
     expect(rig.clock.nowMs() - clockStartMs).toBe(210 * (51 * 1.5 + 2) * 1000);
   });
 
+  const atSpeed = (factor: number) => new Rig({ scenario: scenario(), seed: 7, speed: { kind: "times", factor }, store: memoryStore(), clockStartMs });
+
+  it("takes its time at ×N: repeats are at least a period of rig time apart, and the readings are those of fast mode", async () => {
+    const server = new ContractServer([measure(4)]);
+    await run(server, atSpeed(50_000));
+    const times = server.stored(1).map(({ takenAt }) => Date.parse(takenAt));
+    for (let i = 1; i < 4; i++) expect(times[i] - times[i - 1]).toBeGreaterThanOrEqual((51 * 1.5 + 2) * 1000 - 1000);
+    const fast = new ContractServer([measure(4)]);
+    await run(fast, scenario());
+    expect(server.stored(1).map(({ sweep: volts, temperatureC }) => ({ volts, temperatureC }))).toEqual(fast.stored(1).map(({ sweep: volts, temperatureC }) => ({ volts, temperatureC })));
+  });
+
+  it("leaves a drying at once on hold, however long it would still take", async () => {
+    const server = new ContractServer([{ ...dry, params: { seconds: 86_400 } }]);
+    server.meddle = ({ path }) => {
+      if (path.endsWith("/heartbeat") && server.steps[0].state === "out") server.wish = "hold";
+      return undefined;
+    };
+    await run(server, atSpeed(10));
+    expect(server.finishes).toMatchObject([{ outcome: "interrupted" }]);
+  });
+
   it("stops for good when the server does not know the token", async () => {
     const server = new ContractServer([measure(1)]);
     server.meddle = () => ({ status: 401, body: { type: "/problems/unauthorised", detail: "unknown token" } });
