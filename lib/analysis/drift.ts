@@ -1,0 +1,49 @@
+import type { DriftAnswer, DriftQuery } from "@/lib/analysis/schema";
+import { findFitRun, selectPhases } from "@/lib/analysis/select-phases";
+import { impossible } from "@/lib/errors";
+import { drift } from "@/lib/numerics/drift/drift";
+
+const DAY_MS = 86_400_000;
+
+/** Drift of phase values: the slope with an uncertainty that holds under correlated noise, the ordinary and the robust one beside it. */
+export async function readDrift(campaignId: string, query: DriftQuery): Promise<DriftAnswer> {
+  if (query.compensate === "temperature") throw impossible("Temperature compensation is not available for this campaign yet", { errors: [{ path: "compensate", message: "only none" }] });
+  const { quantity } = query;
+  const unit = quantity === "f0" ? "Hz" : "1";
+  const fitRunId = await findFitRun(campaignId, query.fitRunId);
+  const phases = fitRunId ? await selectPhases(campaignId, fitRunId, { ...query, medium: query.medium ?? "air" }) : [];
+  const values = phases.flatMap(({ role, startedAt, f0Mean, f0U, qMean, qU, cycle, phaseId }) => {
+    const value = quantity === "f0" ? f0Mean : qMean;
+    if (role === "check" || value === null || !startedAt) return [];
+    return [{ at: startedAt, value, u: quantity === "f0" ? f0U : qU, cycle, phaseId }];
+  });
+  const shown = values.map(({ at, ...rest }) => ({ at: at.toISOString(), ...rest }));
+  const rising = values.filter(({ at }, i) => i === 0 || at > values[i - 1].at);
+  const first = rising[0]?.at;
+  const line =
+    first &&
+    drift({
+      atDays: Float64Array.from(rising, ({ at }) => (at.getTime() - first.getTime()) / DAY_MS),
+      values: Float64Array.from(rising, ({ value }) => value),
+    });
+  const used = `${values.length} phase values${values.length < 3 ? "; at least three are needed" : ""}`;
+  const common = { unit, n: values.length, steps: [], values: shown, used };
+  if (!line) {
+    return { ...common, slopePerDay: null, u: null, ppmPerDay: null, lower: null, upper: null, intercept: null, from: null, to: null, leastSquares: null, theilSen: null };
+  }
+  const mean = rising.reduce((sum, { value }) => sum + value, 0) / rising.length;
+  const { slopePerDay, u, lower, upper, intercept, leastSquares, theilSen } = line;
+  return {
+    ...common,
+    slopePerDay,
+    u,
+    ppmPerDay: (slopePerDay / mean) * 1e6,
+    lower,
+    upper,
+    intercept,
+    from: rising[0].at.toISOString(),
+    to: rising[rising.length - 1].at.toISOString(),
+    leastSquares: { slopePerDay: leastSquares.slopePerDay, u: leastSquares.u, lower: leastSquares.lower, upper: leastSquares.upper },
+    theilSen: { slopePerDay: theilSen.slopePerDay, lower: theilSen.lower, upper: theilSen.upper },
+  };
+}
