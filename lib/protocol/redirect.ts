@@ -1,6 +1,6 @@
 import { cellState, referenceDetour } from "./detours";
 import { framesOf, leafAt } from "./path";
-import type { Definition } from "./schema";
+import type { Definition, LeafBlock } from "./schema";
 import type { CellState, Cursor, Facts, Redirection } from "./types";
 import { walk } from "./walk";
 
@@ -31,7 +31,7 @@ export function applyRedirection(definition: Definition, draft: Cursor, facts: F
   const { redirection } = draft;
   delete draft.redirection;
   if (!redirection) return;
-  if (redirection.kind === "park") return park(definition, draft);
+  if (redirection.kind === "park") return park(definition, draft, facts);
 
   const parked = draft.parked;
   delete draft.parked;
@@ -44,11 +44,20 @@ export function applyRedirection(definition: Definition, draft: Cursor, facts: F
   if (redirection.kind === "reference") referenceFirst(definition, draft, facts);
 }
 
-function park(definition: Definition, draft: Cursor): void {
+/** What has been done is left behind first, so that coming back restores it once instead of doing it twice; only phases are begun anew. */
+function park(definition: Definition, draft: Cursor, facts: Facts): void {
+  const { cycle } = draft;
   draft.detours = draft.detours.filter(({ kind }) => kind !== "park");
-  draft.parked ??= { ...cellState(draft), begun: false };
-  if (draft.cell.content !== "air" && definition.park?.length)
-    draft.detours.push({ kind: "park", path: [], cycle: draft.cycle });
+  if (!draft.parked) {
+    if (draft.detours.length === 0 && facts.last?.outcome === "done" && mainKind(definition, draft) !== "measure")
+      standBeforeNext(definition, draft, facts);
+    draft.parked = { ...cellState(draft), begun: false };
+  }
+  if (draft.cell.content !== "air" && definition.park?.length) draft.detours.push({ kind: "park", path: [], cycle });
+}
+
+function mainKind(definition: Definition, { path }: Cursor): LeafBlock["kind"] | undefined {
+  return leafAt(framesOf(definition.blocks, path) ?? [])?.kind;
 }
 
 /** A person let the limit pass: its cleaning is no longer due and counts from nought. */
@@ -82,10 +91,11 @@ function fromPhase(definition: Definition, draft: Cursor, { last }: Facts, parke
     .filter(({ kind, wanted }) => kind !== "restore" || wanted)
     .map(({ blocks: _made, ...detour }) => ({ ...detour, path: [] }));
   if (draft.detours.length > 0) return;
-  const isMeasure = leafAt(framesOf(definition.blocks, draft.path) ?? [])?.kind === "measure";
+  const kind = mainKind(definition, draft);
   const isLost = last !== undefined && last.outcome !== "done";
-  if (isMeasure || parked?.begun || draft.held === "failure" || isLost) redoLast(draft.path);
+  if (kind === "measure" || parked?.begun || draft.held === "failure" || isLost) redoLast(draft.path);
   if (parked?.begun) restore(draft, parked);
+  else if (kind === "fill" && isLost) restore(draft, { cell: { content: "air" }, settled: draft.settled ?? null });
 }
 
 function referenceFirst(definition: Definition, draft: Cursor, facts: Facts): void {
@@ -100,7 +110,7 @@ function referenceFirst(definition: Definition, draft: Cursor, facts: Facts): vo
 
 /** Makes the main line stand on a block still to be made, so that it can be left and come back to. */
 function standBeforeNext(definition: Definition, draft: Cursor, facts: Facts): void {
-  if (draft.ended || draft.path.at(-1)?.pending) return;
+  if (draft.ended || draft.path.length === 0 || draft.path.at(-1)?.pending) return;
   if (facts.last?.outcome !== "done") return redoLast(draft.path);
   const walked = walk(definition.blocks, draft.path, "after", { ...facts, isClean: () => true });
   if (walked.to === "block") takeWalk(draft, walked);
