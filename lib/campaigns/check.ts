@@ -5,7 +5,6 @@ import type { CampaignProblem, CheckAnswer } from "@/lib/campaigns/draft-schema"
 import { planCampaign, type Plan } from "@/lib/campaigns/plan";
 import { traceLiquids } from "@/lib/campaigns/trace-liquids";
 import { formatVolume } from "@/lib/format";
-import { formatDay } from "@/lib/format-time";
 import { demand, type Actor } from "@/lib/people/actor";
 
 type Draft = { protocolVersionId: string; sensorId: string; rigId: string; slots: SlotBindings; startAt?: Date | null };
@@ -46,31 +45,28 @@ export async function checkDraft({ slots, startAt, now, ...choice }: Draft & { n
     latestEnd,
     timeZone: chosen.rig.timeZone,
   });
-  return { chosen, bound, plan, problems: [...plan.problems, ...ofRig(chosen), ...ofBottles(bound, plan, chosen, latestEnd)], cautions };
+  return { chosen, bound, plan, problems: [...plan.problems, ...ofRig(chosen), ...ofBottles(bound, plan)], cautions };
 }
 
-function ofRig({ rig, sensor, definition }: Chosen): CampaignProblem[] {
+function ofRig({ rig, sensor }: Chosen): CampaignProblem[] {
   const problems: CampaignProblem[] = [];
   const warn = (path: string, message: string) => problems.push({ path, severity: "warning", message });
   if (!rig.abilities) warn("rigId", `The agent of ${rig.name} has not reported yet, so that the protocol could not be checked against the rig; the campaign waits until it does.`);
   if (sensor.rigId !== rig.id) warn("sensorId", `${sensor.serial} is not mounted on ${rig.name}; the campaign begins with a mount task and a new baseline.`);
-  if (sensor.readout !== definition.readout) warn("sensorId", `${sensor.serial} reads ${sensor.readout}, the protocol ${definition.readout}; the protocol wins.`);
   return problems;
 }
 
 /** Bottles may still be changed before the start, so that none of this stands in the way. */
-function ofBottles(bound: readonly BoundSlot[], plan: Plan, { rig }: Chosen, latestEnd: Date): CampaignProblem[] {
+function ofBottles(bound: readonly BoundSlot[], plan: Plan): CampaignProblem[] {
   return bound.flatMap(({ slot, port, lot, liquid, onPort }): CampaignProblem[] => {
     const path = `slots.${slot}`;
     const neededMl = plan.neededMl[slot] ?? 0;
     if (!onPort) return [{ path, severity: "warning", message: `Nothing stands on port ${port} yet; ${slot} needs ${formatVolume(neededMl)} of ${liquid.name}.` }];
     if (onPort.liquidId !== liquid.id) return [{ path, severity: "warning", message: `${onPort.liquidName} stands on port ${port}; it has to be changed to ${liquid.name} before the start.` }];
     if (onPort.lotId !== lot.id) return [{ path, severity: "warning", message: `Lot ${onPort.lotCode} stands on port ${port}, not ${lot.code}.` }];
-    const few: CampaignProblem[] =
-      onPort.remainingMl < neededMl
-        ? [{ path, severity: "warning", message: `Lot ${lot.code} has ${formatVolume(onPort.remainingMl)} on port ${port}, ${slot} needs ${formatVolume(neededMl)}; somebody has to load more on the way.` }]
-        : [];
-    if (lot.expiresAt && lot.expiresAt <= latestEnd) few.push({ path, severity: "warning", message: `Lot ${lot.code} expires ${formatDay(lot.expiresAt, rig.timeZone)}, before the latest end.` });
-    return few;
+    if (onPort.remainingMl >= neededMl) return [];
+    return [
+      { path, severity: "warning", message: `Lot ${lot.code} has ${formatVolume(onPort.remainingMl)} on port ${port}, ${slot} needs ${formatVolume(neededMl)}; somebody has to load more on the way.` },
+    ];
   });
 }

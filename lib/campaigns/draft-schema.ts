@@ -1,6 +1,6 @@
 import { z } from "zod";
 import { idSchema } from "@/lib/http/ids";
-import { instant, words } from "@/lib/schema";
+import { instant, time, words } from "@/lib/schema";
 
 const port = z.int().min(1).max(99);
 const slots = z.record(z.string().min(1).max(60), z.strictObject({ port, lotId: idSchema }));
@@ -50,6 +50,25 @@ export const checkAnswer = z.object({
   cautions: z.array(caution),
 });
 
+/** What a campaign can be made of; the newest 500 of each. */
+export const choicesAnswer = z.object({
+  versions: z.array(z.object({ id: z.string(), protocolId: z.string(), name: z.string(), version: z.int(), savedAt: time, savedBy: z.string().nullable(), slots: z.array(z.string()) })),
+  sensors: z.array(z.object({ id: z.string(), serial: z.string(), kind: z.string(), rigId: z.string().nullable() })),
+  rigs: z.array(
+    z.object({
+      id: z.string(),
+      name: z.string(),
+      timeZone: z.string(),
+      wasteCapacityMl: z.number().nullable(),
+      ports: z.array(z.object({ number: z.int(), lotId: z.string().nullable(), remainingMl: z.number() })),
+      ahead: z.int(),
+    }),
+  ),
+  lots: z.array(z.object({ id: z.string(), code: z.string(), liquidName: z.string(), letter: z.string(), tint: z.union([z.literal(1), z.literal(2), z.literal(3)]), expiresAt: time.nullable() })),
+});
+
+export type Choices = z.output<typeof choicesAnswer>;
 export type CampaignDraft = z.output<typeof campaignBody>;
 export type CheckAnswer = z.output<typeof checkAnswer>;
+export type CampaignInput = z.input<typeof campaignBody>;
 export type CampaignProblem = z.output<typeof problem>;

@@ -59,6 +59,17 @@ describe("queueCampaign", () => {
     expect((await campaign.reload()).queuedAt).toEqual(now);
   });
 
+  test("a protocol that the rig cannot do is refused, with the place in the protocol", async () => {
+    const { abilities } = await buildRig();
+    const rig = await buildRig({ abilities: { ...abilities!, kinds: ["measure", "fill", "drain"] } });
+    const campaign = await buildCampaign({ rigId: rig.id });
+    await expect(queueCampaign({ by: await actor("researcher"), now, campaignId: campaign.id })).rejects.toMatchObject({
+      status: 422,
+      code: "does-not-fit",
+      members: { errors: [{ path: "definition.blocks.0.blocks.4" }] },
+    });
+  });
+
   test.each(["running", "held", "finished"] as const)("a %s campaign cannot be queued", async (state) => {
     const campaign = await buildCampaign({ state });
     await expect(queueCampaign({ by: await actor("researcher"), now, campaignId: campaign.id })).rejects.toMatchObject({ status: 409 });
@@ -91,7 +102,8 @@ describe("checkCampaign", () => {
     const checked = await check(campaign, by);
     expect(checked.slots).toEqual([{ slot: "sample", neededMl: 120, port: 1, loadedMl: 1000 }]);
     expect(checked.estimate).toMatchObject({ cycles: 3, repeats: 90, wasteMl: 120 });
-    expect(checked.problems).toEqual([expect.objectContaining({ path: "sensorId", severity: "warning" })]);
+    expect(checked.problems).toEqual(expect.arrayContaining([expect.objectContaining({ path: "sensorId", severity: "warning" })]));
+    expect(checked.problems.filter(({ severity }) => severity === "error")).toEqual([]);
     expect(await Campaign.count()).toBe(before);
   });
 

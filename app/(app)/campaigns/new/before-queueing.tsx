@@ -1,0 +1,33 @@
+import { Findings, type Finding } from "@/components/ui/tag";
+import type { CheckAnswer, Choices } from "@/lib/campaigns/draft-schema";
+import { ProblemError } from "@/lib/http/fetch-json";
+import type { Draft } from "./use-draft";
+
+/** Must fix and Check, in a column of their own. */
+export function BeforeQueueing({ findings, ready }: { findings: readonly Finding[]; ready: boolean }) {
+  return (
+    <aside className="mt-5 border-t border-rule2 pt-4" aria-live="polite">
+      <h2 className="mb-1 text-t4 font-semibold">Before it can be queued</h2>
+      {findings.length > 0 ? <Findings items={findings} /> : <p className="text-ink2">{ready ? "Nothing stands in the way." : "It is being checked."}</p>}
+    </aside>
+  );
+}
+
+type Known = { draft: Draft; choices: Choices; checked: CheckAnswer | undefined; error: Error | null };
+
+export function findingsOf({ draft, choices, checked, error }: Known): Finding[] {
+  const must = (text: string): Finding => ({ kind: "must", text });
+  const findings: Finding[] = [];
+  if (!draft.protocolVersionId) findings.push(must("Choose a protocol version."));
+  if (!draft.sensorId) findings.push(must("Choose a sensor."));
+  if (!draft.rigId) findings.push(must("Choose a rig."));
+  const version = choices.versions.find(({ id }) => id === draft.protocolVersionId);
+  if (version && draft.rigId)
+    for (const slot of version.slots) {
+      const binding = draft.slots[slot];
+      if (!binding || binding.port === null || !binding.lotId) findings.push(must(`Give ${slot} a port and a lot.`));
+    }
+  if (findings.length > 0) return findings;
+  if (error) return error instanceof ProblemError && error.fields.length > 0 ? error.fields.map(({ message }) => must(`${message}.`)) : [must(error.message)];
+  return checked?.problems.map(({ severity, message }): Finding => ({ kind: severity === "error" ? "must" : "check", text: message })) ?? [];
+}
