@@ -1,6 +1,7 @@
 import type { ReactNode } from "react";
 import { QueryProvider } from "@/components/query-provider";
 import { Page } from "@/components/ui/page";
+import { Toaster } from "@/components/ui/toaster";
 import { env } from "@/lib/env";
 import { currentPerson } from "@/lib/people/current-person";
 import { getMe } from "@/lib/people/me";
@@ -11,6 +12,7 @@ export default async function AppLayout({ children }: { children: ReactNode }) {
   return (
     <QueryProvider>
       <Page masthead={<TopOfPage me={me} demo={env().LONGREED_DEMO} />}>{children}</Page>
+      <Toaster />
     </QueryProvider>
   );
 }

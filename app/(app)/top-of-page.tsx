@@ -5,11 +5,19 @@ import { useRouter } from "next/navigation";
 import { signOut } from "next-auth/react";
 import { Masthead } from "@/components/ui/masthead";
 import { MORE_PLACES } from "@/components/ui/places";
+import { findNow } from "@/lib/find/client";
+import { KIND_WORDS } from "@/lib/find/kind-words";
 import { meOptions } from "@/lib/people/client";
 import type { MeAnswer } from "@/lib/people/schema";
 import { may, type Permission } from "@/lib/permissions";
 
-const NEEDS: Readonly<Record<string, Permission>> = { "/people": "people", "/audit": "audit log", "/import": "edit campaigns" };
+const NEEDS: Readonly<Record<string, Permission>> = { "/people": "people", "/audit": "audit log" };
+
+const onFind = async (words: string, signal: AbortSignal) => {
+  const { items, totals } = await findNow(words, signal);
+  const hits = items.slice(0, 9).map(({ kind, id, retired, ...found }) => ({ ...found, key: `${kind} ${id}`, kind: KIND_WORDS[kind].one, quiet: retired }));
+  return { hits, total: Object.values(totals).reduce((sum, n) => sum + n, 0) };
+};
 
 /** The masthead with who is signed in, kept fresh. */
 export function TopOfPage({ me, demo }: { me: MeAnswer; demo: boolean }) {
@@ -28,6 +36,7 @@ export function TopOfPage({ me, demo }: { me: MeAnswer; demo: boolean }) {
       alarms={data.alarms}
       more={MORE_PLACES.filter(({ href }) => !NEEDS[href] || may(data.role, NEEDS[href]))}
       demo={demo && <><b>A demo laboratory.</b> Rigs, liquids and people are invented; mail stays on this machine.</>}
+      onFind={onFind}
       onSignOut={() => void leave()}
     />
   );

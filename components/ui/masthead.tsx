@@ -3,7 +3,7 @@
 import Link from "next/link";
 import { usePathname } from "next/navigation";
 import type { ReactNode } from "react";
-import { FindField } from "./find-field";
+import { FindField, type FindFieldProps } from "./find-field";
 import { LabClock } from "./lab-clock";
 import { Menu, MenuItem, MenuLink } from "./menu";
 import { PageKeys } from "./page-keys";
@@ -21,12 +21,13 @@ export type MastheadProps = {
   more?: readonly Place[];
   /** Said over every page of a laboratory that is not real. */
   demo?: ReactNode;
+  onFind?: FindFieldProps["onFind"];
   onSignOut?: () => void;
 };
 
 const count = (n: number) => `${n} ${n === 1 ? "alarm" : "alarms"} that nobody has`;
 
-export function Masthead({ now, zone, person, alarms, more = MORE_PLACES, demo, onSignOut }: MastheadProps) {
+export function Masthead({ now, zone, person, alarms, more = MORE_PLACES, demo, onFind, onSignOut }: MastheadProps) {
   const path = usePathname();
   const under = more.find((place) => isAt(place, path));
   return (
@@ -55,7 +56,7 @@ export function Masthead({ now, zone, person, alarms, more = MORE_PLACES, demo, 
               {more.map((place) => <MenuLink key={place.href} place={place} current={place === under} />)}
             </Menu>
           </nav>
-          <FindField />
+          <FindField onFind={onFind} />
           <LabClock now={now} zone={zone} />
           <PersonMenu person={person} onSignOut={onSignOut} />
         </div>

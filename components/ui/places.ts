@@ -12,10 +12,9 @@ export const PLACES: readonly Place[] = [
 
 /** What stands under More. The shell leaves out what the person may not open. */
 export const MORE_PLACES: readonly Place[] = [
+  { label: "Find", href: "/find", key: "f" },
   { label: "Alarms", href: "/alarms", key: "a" },
   { label: "Tasks", href: "/tasks", key: "k" },
-  { label: "Reports", href: "/reports", key: "o" },
-  { label: "Import", href: "/import", key: "i" },
   { label: "People", href: "/people", key: "e" },
   { label: "Audit log", href: "/audit", key: "u" },
   { label: "API reference", href: "/api-reference" },
