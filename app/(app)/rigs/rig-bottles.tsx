@@ -9,9 +9,9 @@ export function RigBottles({ rig }: { rig: RigAnswer }) {
   return (
     <div>
       <h3 className="mb-2 font-semibold"><Link href={`/rigs/${rig.id}#bottles`}>{rig.name}</Link></h3>
-      <ul className="flex flex-wrap gap-x-3 gap-y-4">
+      <ul className="flex flex-wrap gap-x-1.5 gap-y-4">
         {ports.map(({ number, bottle, remainingMl }) => (
-          <li key={number} className="w-[72px] text-[11.5px] leading-[15px] text-ink2">
+          <li key={number} className="w-[60px] text-[11.5px] leading-[15px] text-ink2">
             {bottle ? (
               <>
                 <Vessel liquid={bottle} ml={remainingMl} fullMl={bottle.fullMl} label={`Port ${number}, ${bottle.liquidName}`} />
@@ -27,7 +27,7 @@ export function RigBottles({ rig }: { rig: RigAnswer }) {
             )}
           </li>
         ))}
-        <li className="w-[72px] text-[11.5px] leading-[15px] text-ink2">
+        <li className="w-[60px] text-[11.5px] leading-[15px] text-ink2">
           <Vessel ml={wasteMl} fullMl={wasteCapacityMl ?? Math.max(wasteMl, 1)} label="Waste" />
           <b className="mt-1 block text-ink">Waste</b>
           <span className="num block">{formatVolume(wasteMl)}</span>

@@ -58,7 +58,7 @@ export function RigsScreen({ role }: { role: Role }) {
         <AgentsTable rigs={rigs} asOf={dataUpdatedAt} />
       </Section>
       <Section head="Bottles" note="Level now. Waste is what is in the container.">
-        <div className="grid gap-x-8 gap-y-6 grid-cols-[repeat(auto-fill,minmax(250px,1fr))]">
+        <div className="grid gap-x-8 gap-y-6 grid-cols-[repeat(auto-fill,minmax(330px,1fr))]">
           {rigs.map((rig) => <RigBottles key={rig.id} rig={rig} />)}
         </div>
       </Section>
@@ -73,5 +73,5 @@ function sentenceOf(rigs: readonly RigAnswer[]): string {
   const parts = [`${capitalised(inWords(measuring))} ${plural(measuring, "rig is", "rigs are")} measuring`];
   if (free.length > 0) parts.push(`${free.length > 3 ? `${inWords(free.length)} are` : `${listOf(free)} ${plural(free.length, "is", "are")}`} free`);
   const needs = halted.length > 0 ? ` ${listOf(halted)} halted and ${plural(halted.length, "needs", "need")} a person.` : "";
-  return `${listOf(parts)}.${needs}`;
+  return `${parts.join("; ")}.${needs}`;
 }

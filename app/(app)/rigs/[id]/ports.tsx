@@ -12,7 +12,7 @@ import { may, type Role } from "@/lib/permissions";
 import { wasteAnswer, type PortAnswer, type RigAnswer } from "@/lib/rigs/schema";
 import { LoadDialog } from "./load-dialog";
 
-export function Ports({ rig, role }: { rig: RigAnswer; role: Role }) {
+export function Ports({ rig, role, asOf }: { rig: RigAnswer; role: Role; asOf: number }) {
   const [loading, setLoading] = useState<PortAnswer | null>(null);
   const mayLoad = may(role, "record loads");
   return (
@@ -27,7 +27,7 @@ export function Ports({ rig, role }: { rig: RigAnswer; role: Role }) {
             )}
             <div className="min-w-0">
               <b>Port {port.number}</b>
-              <Standing port={port} timeZone={rig.timeZone} />
+              <Standing port={port} timeZone={rig.timeZone} asOf={asOf} />
               {mayLoad && <div className="buttons mt-2"><Button small onClick={() => setLoading(port)}>Load</Button></div>}
             </div>
           </li>
@@ -39,14 +39,14 @@ export function Ports({ rig, role }: { rig: RigAnswer; role: Role }) {
   );
 }
 
-function Standing({ port: { bottle, remainingMl }, timeZone }: { port: PortAnswer; timeZone: string }) {
+function Standing({ port: { bottle, remainingMl }, timeZone, asOf }: { port: PortAnswer; timeZone: string; asOf: number }) {
   if (!bottle) return <p className="small text-ink2">Nothing stands here.</p>;
   return (
     <p className="small text-ink2">
       <Link href={`/liquids/${bottle.liquidId}`}>{bottle.liquidName}</Link>, lot {bottle.lotCode}
       <br />
-      <span className="num">{formatVolume(remainingMl)}</span>, since {formatDay(bottle.loadedAt, timeZone)}
-      {bottle.expiresAt && <><br />expires {formatDay(bottle.expiresAt, timeZone)}</>}
+      <span className="num">{formatVolume(remainingMl)}</span>, since {formatDay(bottle.loadedAt, timeZone, asOf)}
+      {bottle.expiresAt && <><br />expires {formatDay(bottle.expiresAt, timeZone, asOf)}</>}
     </p>
   );
 }

@@ -2,7 +2,7 @@
 
 import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
-import { PageTitle, Section, Vitals } from "@/components/ui/page";
+import { PageRow, PageTitle, Section, Vitals } from "@/components/ui/page";
 import { StateMark } from "@/components/ui/state-mark";
 import { Loading, Problem } from "@/components/ui/states";
 import { formatNumber, NO_VALUE, plural } from "@/lib/format";
@@ -32,23 +32,23 @@ export function RigScreen({ rigId, role }: { rigId: string; role: Role }) {
       >
         {rig.name}
       </PageTitle>
-      <Section head="Now">
+      <PageRow>
         {error && <Problem error={error} onRetry={() => void refetch()} />}
         <Vitals
           items={[
             { label: "State", value: campaign ? <StateMark state={rigWord(rig)} /> : "Free", note: campaign?.takenOver ? "taken over by hand" : undefined },
             { label: "Campaign", value: campaign ? <Link href={`/campaigns/${campaign.id}`}>{campaign.name}</Link> : NO_VALUE, note: campaign?.cursorText ?? `${rig.queued} in line` },
             { label: "Cell", value: rig.temperatureC === null ? NO_VALUE : `${formatNumber(rig.temperatureC, { decimals: 2 })}\u00a0°C`, note: mountedText(mounts) },
-            { label: "Agent seen", value: rig.lastContactAt ? formatAgo(rig.lastContactAt, dataUpdatedAt) : "never", note: simulatedTime(rig) },
+            { label: "Agent seen", value: rig.lastContactAt ? formatAgo(rig.lastContactAt, dataUpdatedAt) : "never", note: simulatedTime(rig, dataUpdatedAt) },
           ]}
         />
-      </Section>
+      </PageRow>
       <Section head="Agent" note="Each line is ten minutes, its height the number of contacts.">
         <AgentsTable rigs={[rig]} asOf={dataUpdatedAt} />
         <Abilities rig={rig} />
       </Section>
       <Section id="bottles" head="Bottles" note="Level now; a top up takes the same lot only.">
-        <Ports rig={rig} role={role} />
+        <Ports rig={rig} role={role} asOf={dataUpdatedAt} />
       </Section>
       <Section head="Loads" note="What was put on, newest first.">
         <RecentLoads rigId={rigId} timeZone={rig.timeZone} />
@@ -68,8 +68,8 @@ export function RigScreen({ rigId, role }: { rigId: string; role: Role }) {
 const mountedText = (mounts: RigAnswer["mounts"]) =>
   mounts.length === 0 ? "nothing mounted" : mounts.map(({ serial, position }) => `${serial}${mounts.length > 1 ? `, position ${position}` : ""}`).join("; ");
 
-const simulatedTime = ({ clock, reportedClock, timeZone }: RigAnswer) =>
-  clock === "simulated" && reportedClock ? `its clock says ${formatDayTime(reportedClock, timeZone)}` : undefined;
+const simulatedTime = ({ clock, reportedClock, timeZone }: RigAnswer, asOf: number) =>
+  clock === "simulated" && reportedClock ? `its clock says ${formatDayTime(reportedClock, timeZone, asOf)}` : undefined;
 
 function Abilities({ rig: { abilities, ports } }: { rig: RigAnswer }) {
   if (!abilities) return <p className="caption">The agent has not said yet what the rig can do; campaigns wait until it has.</p>;

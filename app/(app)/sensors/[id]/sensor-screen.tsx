@@ -5,7 +5,7 @@ import Link from "next/link";
 import { useMemo, useState } from "react";
 import { Button } from "@/components/ui/button";
 import { DataTable, type TableColumn } from "@/components/ui/data-table";
-import { PageTitle, Section, Vitals } from "@/components/ui/page";
+import { PageRow, PageTitle, Section, Vitals } from "@/components/ui/page";
 import { F0, Q } from "@/components/ui/quantity";
 import { Loading, Problem } from "@/components/ui/states";
 import { formatNumber, NO_VALUE } from "@/lib/format";
@@ -40,7 +40,7 @@ export function SensorScreen({ sensorId, role, zone }: { sensorId: string; role:
       >
         {serial}
       </PageTitle>
-      <Section head="Now">
+      <PageRow>
         {error && <Problem error={error} onRetry={() => void refetch()} />}
         <Vitals
           items={[
@@ -51,7 +51,7 @@ export function SensorScreen({ sensorId, role, zone }: { sensorId: string; role:
           ]}
         />
         {note && <p className="caption">{note}</p>}
-      </Section>
+      </PageRow>
       <Section head="Mounts" note="Each clamping begins a new baseline.">
         <DataTable
           label="Mounts"
