@@ -1,3 +1,4 @@
+import "../scripts/lib/env-file.mjs";
 import { PgBoss } from "pg-boss";
 import { startFastPath } from "@/jobs/fast-path";
 import { buryMail, queueMail, sendMail } from "@/jobs/mail";

@@ -25,6 +25,7 @@ export class Step extends Model<InferAttributes<Step>, InferCreationAttributes<S
   declare cursor: Cursor;
   declare attempt: CreationOptional<number>;
   declare emptyAttempts: CreationOptional<number>;
+  declare failedAttempts: CreationOptional<number>;
   declare stored: CreationOptional<number>;
   declare storedAtIssue: CreationOptional<number>;
   declare lease: CreationOptional<string | null>;
@@ -62,6 +63,7 @@ Step.init(
     cursor: { type: DataTypes.JSONB, allowNull: false },
     attempt: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
     emptyAttempts: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
+    failedAttempts: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
     stored: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
     storedAtIssue: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
     lease: { type: DataTypes.TEXT },

@@ -1,4 +1,5 @@
 import type { Transaction } from "sequelize";
+import { alarmEvent } from "@/lib/alarms/alarm-event";
 import { change, row } from "@/lib/db";
 import { notify } from "@/lib/notify";
 import { queueAlarmMail } from "@/lib/notifications/queue-alarm-mail";
@@ -28,7 +29,8 @@ type OpenAlarm = {
 
 /**
  * Opens an alarm, with its first event and the mail to everyone concerned in the same transaction. One alarm of a limit in a
- * campaign, or of a kind at a rig, is open at a time: a further breach of it opens nothing new.
+ * campaign, or of a kind at a rig, is open at a time: a further breach of it opens nothing new, but brings one back that had
+ * returned and that nobody had looked at, and tells of it as of a new one.
  */
 export async function openAlarm(transaction: Transaction, alarm: OpenAlarm): Promise<{ alarmId: string; opened: boolean }> {
   const { now, source } = alarm;
@@ -57,27 +59,35 @@ export async function openAlarm(transaction: Transaction, alarm: OpenAlarm): Pro
     ],
     transaction,
   );
-  if (!opened) return { alarmId: await standing(transaction, alarm), opened: false };
-  await alarmEvent(transaction, { alarmId: opened.id, now, kind: "opened", who: "Longreed", text: `${alarm.text}. ${alarm.actionText}` });
-  if (alarm.mail) await queueAlarmMail(transaction, { alarmId: opened.id, now });
+  const standing = opened ? undefined : await standingAlarm(transaction, alarm);
+  if (standing && standing.state !== "returned") return { alarmId: standing.id, opened: false };
+  if (standing) await breachAgain(transaction, standing.id, alarm);
+  const alarmId = opened?.id ?? (standing as Standing).id;
+  const eventId = await alarmEvent(transaction, { alarmId, now, kind: "opened", who: "Longreed", text: `${alarm.text}. ${alarm.actionText}` });
+  if (alarm.mail) await queueAlarmMail(transaction, { alarmId, now, kind: opened ? "alarm" : `alarm again, event ${eventId}` });
   await notify("changed:alarms", transaction);
-  return { alarmId: opened.id, opened: true };
+  return { alarmId, opened: true };
 }
 
-async function standing(transaction: Transaction, { source, campaignId, limitId, rigId, kind }: OpenAlarm): Promise<string> {
-  const found = await row<{ id: string }>(
+type Standing = { id: string; state: string };
+
+async function standingAlarm(transaction: Transaction, { source, campaignId, limitId, rigId, kind }: OpenAlarm): Promise<Standing> {
+  const found = await row<Standing>(
     source === "limit"
-      ? `select id from alarm where campaign_id = $1 and limit_id = $2 and source = 'limit' and state <> 'cleared'`
-      : `select id from alarm where rig_id = $1 and kind = $2 and source = 'system' and state <> 'cleared'`,
+      ? `select id, state from alarm where campaign_id = $1 and limit_id = $2 and source = 'limit' and state <> 'cleared' for no key update`
+      : `select id, state from alarm where rig_id = $1 and kind = $2 and source = 'system' and state <> 'cleared' for no key update`,
     source === "limit" ? [campaignId, limitId] : [rigId, kind],
     transaction,
   );
   if (!found) throw new Error(`alarm ${kind} was neither open nor opened`);
-  return found.id;
+  return found;
 }
 
-type Event = { alarmId: string; now: Date; kind: string; who: string; text: string };
-
-export async function alarmEvent(transaction: Transaction, { alarmId, now, kind, who, text }: Event): Promise<void> {
-  await change(`insert into alarm_event (alarm_id, at, kind, who, text) values ($1, $2, $3, $4, $5)`, [alarmId, now, kind, who, text], transaction);
+async function breachAgain(transaction: Transaction, alarmId: string, { phaseId, stepId, fitRunId, value, text, actionText }: OpenAlarm): Promise<void> {
+  await change(
+    `update alarm set state = 'unacknowledged', returned_at = null, phase_id = $2, step_id = $3, fit_run_id = $4, value = $5, text = $6, action_text = $7
+      where id = $1`,
+    [alarmId, phaseId ?? null, stepId ?? null, fitRunId ?? null, value ?? null, text, actionText],
+    transaction,
+  );
 }

@@ -1,5 +1,5 @@
 import type { Transaction } from "sequelize";
-import { alarmEvent } from "@/lib/alarms/open-alarm";
+import { alarmEvent } from "@/lib/alarms/alarm-event";
 import { rows } from "@/lib/db";
 import { notify } from "@/lib/notify";
 

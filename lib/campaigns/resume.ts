@@ -21,7 +21,8 @@ const WAITS_FOR: Partial<Record<HoldReason, string>> = {
 
 /**
  * A person lets a campaign go on: here, from the beginning of the phase, or of the cycle. Releases holds by a person, a limit or
- * a failure, and brings a campaign back that was set aside. Resuming a running campaign changes nothing.
+ * a failure, and holds for tasks of which none is open any more because somebody could not do it; brings a campaign back that
+ * was set aside. Resuming a running campaign changes nothing.
  */
 export function resumeCampaign({ by, campaignId, from, now }: ResumeCampaign) {
   return inTransaction(async (transaction) => {
@@ -31,8 +32,8 @@ export function resumeCampaign({ by, campaignId, from, now }: ResumeCampaign) {
     if (campaign.parking === "wanted" || campaign.parking === "running") {
       throw conflict("The cell is being parked; the campaign can go on when that has ended");
     }
-    const holds = await rows<{ reason: HoldReason; text: string }>(
-      `select reason, text from hold where campaign_id = $1 and released_at is null order by opened_at`,
+    const holds = await rows<{ reason: HoldReason }>(
+      `select h.reason from hold h where h.campaign_id = $1 and h.released_at is null order by h.opened_at`,
       [campaignId],
       transaction,
     );
@@ -48,7 +49,8 @@ export function resumeCampaign({ by, campaignId, from, now }: ResumeCampaign) {
 }
 
 async function releasable(transaction: Transaction, campaign: CampaignRow, reasons: HoldReason[], from: ResumeFrom): Promise<HoldReason[]> {
-  const released = reasons.filter((reason) => !(reason in WAITS_FOR));
+  const waits = reasons.includes("task") && (await row(`select id from operator_task where campaign_id = $1 and state = 'open' limit 1`, [campaign.id], transaction));
+  const released = reasons.filter((reason) => !(reason in WAITS_FOR) || (reason === "task" && !waits));
   if (released.length === 0) throw conflict(`The campaign waits: ${WAITS_FOR[reasons[0]] ?? "nothing holds it"}`);
   if (!reasons.includes("setAside")) return released;
   if (from === "here") throw impossible("A campaign that was set aside comes back from the phase or the cycle, with a new reference first");

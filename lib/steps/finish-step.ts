@@ -3,6 +3,7 @@ import { noteContact } from "@/lib/agents/contact";
 import type { Agent } from "@/lib/agents/contract";
 import { protocolTime } from "@/lib/agents/rig-clock";
 import type { FinishBody } from "@/lib/agents/schema";
+import { countFailure, failuresAreOver } from "@/lib/alarms/count-failures";
 import { change, inTransaction, row } from "@/lib/db";
 import { conflict, impossible, notFound } from "@/lib/errors";
 import { notify } from "@/lib/notify";
@@ -19,6 +20,8 @@ type LeasedStep = {
   rigId: string;
   kind: string;
   label: string;
+  cycle: number;
+  sequence: number;
   state: "ready" | "out" | "done" | "failed" | "skipped";
   repeats: number | null;
   stored: number;
@@ -33,7 +36,7 @@ type LeasedStep = {
 };
 
 const LEASED_STEP = `
-  select s.id, s.campaign_id as "campaignId", s.rig_id as "rigId", s.kind, s.label, s.state, (s.params->>'repeats')::int as repeats,
+  select s.id, s.campaign_id as "campaignId", s.rig_id as "rigId", s.kind, s.label, s.cycle, s.sequence, s.state, (s.params->>'repeats')::int as repeats,
          s.stored, s.stored_at_issue as "storedAtIssue", s.empty_attempts as "emptyAttempts",
          coalesce((v.definition->>'maxAttempts')::int, 3) as "maxAttempts", slot.port, c.state as "campaignState", s.detour,
          s.lease is not distinct from $3 as current,
@@ -89,6 +92,7 @@ async function endDone(transaction: Transaction, step: LeasedStep, clock: Date, 
     transaction,
   );
   await recordVolumes(transaction, step.id);
+  await failuresAreOver(transaction, { campaignId: step.campaignId, now });
   await wakeCampaign(transaction, step);
   return "done";
 }
@@ -114,6 +118,7 @@ async function endFailed(
   const emptyAttempts = step.stored > step.storedAtIssue ? 0 : step.emptyAttempts + 1;
   if (!failure.retry || emptyAttempts >= step.maxAttempts) {
     await failStep(transaction, { step, failure, now });
+    await countFailure(transaction, { step, now });
     return "failed";
   }
   await change(
@@ -121,6 +126,7 @@ async function endFailed(
     [step.id, emptyAttempts, JSON.stringify(failure)],
     transaction,
   );
+  await countFailure(transaction, { step, now });
   await wakeCampaign(transaction, step);
   return "ready";
 }

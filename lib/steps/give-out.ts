@@ -4,6 +4,7 @@ import type { RigRow } from "@/lib/agents/contact";
 import { LEASE_S } from "@/lib/agents/contract";
 import { protocolTime } from "@/lib/agents/rig-clock";
 import type { StepAnswer } from "@/lib/agents/schema";
+import { countFailure } from "@/lib/alarms/count-failures";
 import { change, row } from "@/lib/db";
 import { notify } from "@/lib/notify";
 import type { StepPlan } from "@/lib/protocol/types";
@@ -75,7 +76,12 @@ export async function giveOut(transaction: Transaction, { rig, session, now }: G
         now,
         failure: { code: "other", message: `given out ${emptyAttempts} times in a row and nothing came back`, retry: false },
       });
+      await countFailure(transaction, { step, now });
       return undefined;
+    }
+    if (emptyAttempts > 0) {
+      await countFailure(transaction, { step, now });
+      if (!(await stillWanted(transaction, step, now))) return undefined;
     }
     step.emptyAttempts = emptyAttempts;
     if (await nobodyKnows(transaction, step, rig)) {
@@ -84,6 +90,14 @@ export async function giveOut(transaction: Transaction, { rig, session, now }: G
     }
   }
   return lend(transaction, { step, rig, session, now });
+}
+
+/** A limit on failed attempts may just have held or stopped the campaign. */
+async function stillWanted(transaction: Transaction, step: OpenStep, now: Date): Promise<boolean> {
+  const campaign = await row<{ state: string }>(`select state from campaign where id = $1`, [step.campaignId], transaction);
+  if (campaign?.state === step.campaignState) return true;
+  await takeBack(transaction, { ...step, campaignState: campaign?.state ?? "stopped" }, now);
+  return false;
 }
 
 /** An agent that lost its memory asks while its campaign is held or stopped: the step waits, or is over. */

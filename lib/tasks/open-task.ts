@@ -1,5 +1,6 @@
 import type { Transaction } from "sequelize";
 import { row } from "@/lib/db";
+import { queueTaskMail } from "@/lib/notifications/queue-task-mail";
 import { notify } from "@/lib/notify";
 
 type OpenTask = {
@@ -15,7 +16,7 @@ type OpenTask = {
   now: Date;
 };
 
-/** A thing for a person to do at the rig. */
+/** A thing for a person to do at the rig; one that cannot wait is mailed. */
 export async function openTask(transaction: Transaction, task: OpenTask): Promise<string> {
   const opened = await row<{ id: string }>(
     `insert into operator_task (rig_id, campaign_id, step_id, hold_id, kind, instruction, urgency, port, state, created_at, due_at)
@@ -34,6 +35,8 @@ export async function openTask(transaction: Transaction, task: OpenTask): Promis
     ],
     transaction,
   );
+  if (!opened) throw new Error("a task was not stored");
+  if (task.urgency === "high") await queueTaskMail(transaction, { taskId: opened.id, now: task.now });
   await notify("changed:tasks", transaction);
-  return (opened as { id: string }).id;
+  return opened.id;
 }
