@@ -7,6 +7,7 @@ import type { Cursor, StepPlan } from "./types";
 /** One planned step, as a run strip draws it. Seconds count from the world's `nowMs`. */
 export type Segment = {
   sequence: number;
+  blockId: string;
   kind: StepPlan["kind"];
   role?: "reference" | "check" | "sample" | "find";
   medium?: string;
@@ -38,6 +39,7 @@ export function forecast(definition: Definition, cursor: Cursor, world: World, l
     madeUp.finish(step, durationS);
     segments.push({
       sequence: step.sequence,
+      blockId: step.blockId,
       kind: step.kind,
       ...(step.kind === "measure" && { role: step.role, medium: step.medium }),
       ...((step.kind === "fill" || step.kind === "rinse") && { slot: step.slot }),
