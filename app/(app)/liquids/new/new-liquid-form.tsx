@@ -3,7 +3,7 @@
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useMutation, useQueryClient } from "@tanstack/react-query";
 import { useRouter } from "next/navigation";
-import { FormProvider, useForm } from "react-hook-form";
+import { FormProvider, useForm, useWatch } from "react-hook-form";
 import type { z } from "zod";
 import { asNumber, orNothing } from "@/components/ui/as-number";
 import { Button, LinkButton } from "@/components/ui/button";
@@ -26,9 +26,9 @@ export function NewLiquidForm() {
     defaultValues: { name: "", model: "water", hazards: { ghs: [], notWith: [] } },
     shouldUnregister: true,
   });
-  const { register, handleSubmit, setError, watch, formState } = form;
+  const { register, handleSubmit, setError, control, formState } = form;
   const { errors } = formState;
-  const model = watch("model");
+  const model = useWatch({ control, name: "model" });
   const make = useMutation({
     mutationFn: (liquid: Liquid) => fetchJson("/api/liquids", { method: "POST", body: liquid, answer: liquidCreated }),
     onSuccess: async ({ id }) => {

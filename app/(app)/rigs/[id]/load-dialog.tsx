@@ -2,7 +2,7 @@
 
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useMutation, useQuery, useQueryClient } from "@tanstack/react-query";
-import { useForm } from "react-hook-form";
+import { useForm, useWatch } from "react-hook-form";
 import type { z } from "zod";
 import { asNumber } from "@/components/ui/as-number";
 import { Button } from "@/components/ui/button";
@@ -21,11 +21,12 @@ type Values = z.input<typeof loadBody>;
 export function LoadDialog({ rig, port, onClose }: { rig: RigAnswer; port: PortAnswer; onClose: () => void }) {
   const { data: lots, error: lotsError, refetch } = useQuery(lotsOptions());
   const queries = useQueryClient();
-  const { register, handleSubmit, setError, watch, formState } = useForm<Values>({
+  const { register, handleSubmit, setError, control, formState } = useForm<Values>({
     resolver: zodResolver(loadBody),
     defaultValues: { port: port.number, how: "replace", lotId: port.bottle?.lotId ?? "" },
   });
   const { errors } = formState;
+  const how = useWatch({ control, name: "how" });
   const save = useMutation({
     mutationFn: (load: Values) => fetchJson(`/api/rigs/${rig.id}/loads`, { method: "POST", body: load, answer: created }),
     onSuccess: async () => {
@@ -51,7 +52,7 @@ export function LoadDialog({ rig, port, onClose }: { rig: RigAnswer; port: PortA
             <option value="">Choose a lot</option>
             {lots.items.map(({ id, code, liquidName }) => <option key={id} value={id}>{code}, {liquidName}</option>)}
           </SelectField>
-          <NumberField label={watch("how") === "topUp" ? "Volume added" : "Volume in the bottle"} hint="mL" error={errors.volumeMl?.message} {...register("volumeMl", asNumber)} />
+          <NumberField label={how === "topUp" ? "Volume added" : "Volume in the bottle"} hint="mL" error={errors.volumeMl?.message} {...register("volumeMl", asNumber)} />
           {errors.root && <p role="alert" className="font-medium">{errors.root.message}</p>}
           <div className="buttons">
             {asksForAnotherLot ? (

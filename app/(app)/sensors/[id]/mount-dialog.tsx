@@ -2,7 +2,7 @@
 
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useInfiniteQuery, useMutation, useQueryClient } from "@tanstack/react-query";
-import { useForm } from "react-hook-form";
+import { useForm, useWatch } from "react-hook-form";
 import type { z } from "zod";
 import { asNumber, orNothing } from "@/components/ui/as-number";
 import { Button } from "@/components/ui/button";
@@ -23,12 +23,12 @@ type Mount = z.output<typeof mountBody>;
 export function MountDialog({ sensor, onClose }: { sensor: SensorAnswer; onClose: () => void }) {
   const rigs = useInfiniteQuery(rigsOptions());
   const queries = useQueryClient();
-  const { register, handleSubmit, setError, watch, formState } = useForm<Values, unknown, Mount>({
+  const { register, handleSubmit, setError, control, formState } = useForm<Values, unknown, Mount>({
     resolver: zodResolver(mountBody),
     defaultValues: { rigId: sensor.mount?.rigId ?? "", position: 1 },
   });
   const { errors } = formState;
-  const rigId = watch("rigId");
+  const rigId = useWatch({ control, name: "rigId" });
   const save = useMutation({
     mutationFn: (mount: Mount) => fetchJson(`/api/sensors/${sensor.id}/mounts`, { method: "POST", body: mount, answer: created }),
     onSuccess: async () => {
