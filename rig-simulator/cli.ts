@@ -1,9 +1,12 @@
+import path from "node:path";
 import { parseArgs } from "node:util";
 import { Refused } from "./agent/client";
 import { runLaboratory } from "./laboratory";
 import { loadScenario, scenarioNames } from "./load-scenario";
 import { nominalInAir } from "./physics/truth";
 import { startRig } from "./start-rig";
+
+const dataFolder = process.env.LONGREED_DATA_DIR || "data";
 
 const help = `Simulated rigs for Longreed. Each is an agent that speaks the HTTP contract only.
 
@@ -17,14 +20,15 @@ const help = `Simulated rigs for Longreed. Each is an agent that speaks the HTTP
       --no-state             forget the bottles and the clock at the end
 
   npm run simulate -- laboratory [--file FILE]
-      All rigs of FILE (default data/demo-rigs.json), in one process:
+      All rigs of FILE (default demo-rigs.json in the data folder), in one process:
       [{ "url", "token", "scenario", "seed"?, "speed"?, "clockStart"? }, …]
       Waits for the file and follows its changes.
 
   npm run simulate -- scenarios
       What there is to choose from.
 
-  Both keep their rigs' bottles and clocks in --state FOLDER (default data/simulator).
+  Both keep their rigs' bottles and clocks in --state FOLDER (default simulator in the data folder, which is
+  LONGREED_DATA_DIR or data).
 `;
 
 async function main(): Promise<number> {
@@ -41,8 +45,8 @@ async function main(): Promise<number> {
       truth: { type: "string" },
       "until-idle": { type: "boolean" },
       "no-state": { type: "boolean" },
-      state: { type: "string", default: "data/simulator" },
-      file: { type: "string", default: "data/demo-rigs.json" },
+      state: { type: "string", default: path.join(dataFolder, "simulator") },
+      file: { type: "string", default: path.join(dataFolder, "demo-rigs.json") },
     },
   });
   const [command, ...rest] = positionals;

@@ -21,19 +21,22 @@ export type StartOptions = {
   signal: AbortSignal;
   stateFolder?: string;
   untilIdle?: boolean;
+  /** A fast rig ends here by its own clock; what it has begun waits for the next agent. */
+  until?: Date;
   /** Gets the true f0 and Q of every reading, one JSON object a line. */
   truthFile?: string;
   log: (text: string) => void;
 };
 
-/** Runs one rig and its agent until the signal is aborted or, with `untilIdle`, until there is nothing left to do. */
-export async function startRig(entry: RigEntry, { signal, stateFolder, untilIdle, truthFile, log }: StartOptions): Promise<void> {
+/** Runs one rig and its agent until the signal is aborted, its clock has come to `until`, or, with `untilIdle`, there is nothing left to do. */
+export async function startRig(entry: RigEntry, { signal, stateFolder, untilIdle, until, truthFile, log }: StartOptions): Promise<void> {
   const { url, token, seed = 1 } = entry;
   const scenario = loadScenario(entry.scenario);
   const clockStartMs = entry.clockStart === undefined ? undefined : Date.parse(entry.clockStart);
   if (Number.isNaN(clockStartMs)) throw new Error(`"${entry.clockStart}" is not a time such as 2026-03-02T08:00:00Z`);
 
-  const identity = [url, token, scenario.name, String(seed)];
+  // Not the address: the same rig may be asked to reach its server at another port.
+  const identity = [token, scenario.name, String(seed)];
   const rig = new Rig({
     scenario,
     seed,
@@ -48,6 +51,7 @@ export async function startRig(entry: RigEntry, { signal, stateFolder, untilIdle
     instance: rigDigest(identity),
     signal,
     untilIdle,
+    untilMs: until?.getTime(),
     log: (text) => log(`${scenario.rig.name}: ${text}`),
   });
 }

@@ -1,5 +1,6 @@
 import type { Step } from "../contract";
 import { linkedController } from "../linked-controller";
+import { CaughtUp } from "./caught-up";
 import type { Session } from "./session";
 
 /** After these pauses the rig asks whether a date is all that is waited for; together 3.5 s. */
@@ -8,6 +9,8 @@ const watchMs = [100, 150, 250, 500, 1000, 1500];
 /**
  * Asks for the next step; undefined when there is none for now. A fast clock that has only a date to wait for jumps there; another
  * asks again when the date has come.
+ *
+ * @throws CaughtUp when that date lies behind the end that the rig's clock has.
  */
 export async function ask(session: Session, longestWaitS = session.server.waitS): Promise<Step | undefined> {
   const { rig, client } = session;
@@ -21,7 +24,7 @@ export async function ask(session: Session, longestWaitS = session.server.waitS)
   for (;;) {
     const { controller: poll, unlink } = linkedController(session.signal);
     const jumped = new Jumped();
-    const watching = watch(session, () => poll.abort(jumped), poll.signal);
+    const watching = watch(session, (why) => poll.abort(why), jumped, poll.signal);
     try {
       return await client.next(longestS, rig.reportedClock(), poll.signal);
     } catch (error) {
@@ -37,7 +40,7 @@ export async function ask(session: Session, longestWaitS = session.server.waitS)
 /** The clock has moved on, so the poll must tell it. */
 class Jumped extends Error {}
 
-async function watch(session: Session, onJump: () => void, signal: AbortSignal): Promise<void> {
+async function watch(session: Session, end: (why: Error) => void, jumped: Jumped, signal: AbortSignal): Promise<void> {
   const { rig } = session;
   try {
     for (let i = 0; !signal.aborted; i++) {
@@ -45,9 +48,9 @@ async function watch(session: Session, onJump: () => void, signal: AbortSignal):
       await session.tryBeat();
       if (signal.aborted) return;
       if (session.dueAtMs !== undefined && session.dueAtMs > rig.clock.nowMs()) {
+        if (session.dueAtMs > session.untilMs) return end(new CaughtUp());
         rig.jumpTo(session.dueAtMs);
-        onJump();
-        return;
+        return end(jumped);
       }
     }
   } catch {

@@ -5,6 +5,7 @@ import { processes } from "../physics/processes";
 import { sweepVoltages } from "../physics/sweep";
 import { truth } from "../physics/truth";
 import type { Rig } from "../rig";
+import { CaughtUp } from "./caught-up";
 import { crashIfDue } from "./faults";
 import { Interrupted, type Session } from "./session";
 import { Uploader } from "./uploader";
@@ -20,6 +21,7 @@ export async function measure(session: Session, step: MeasureStep, start: World)
 
   const conditions = conditionsOf(start, step);
   const { sweep, pauseS } = step.params;
+  const sweepS = sweep.points * sweep.dwellS;
   const uploader = new Uploader({
     client,
     stepId: step.id,
@@ -40,8 +42,12 @@ export async function measure(session: Session, step: MeasureStep, start: World)
       return { outcome: "interrupted" };
     }
     const takenAtMs = rig.isFast && start.clockMs !== null ? start.clockMs + Math.round(index * repeatPeriodS(step.params) * 1000) : rig.clock.nowMs();
+    if (rig.isFast && takenAtMs + sweepS * 1000 > session.untilMs) {
+      await uploader.drain();
+      throw new CaughtUp();
+    }
     rig.clock.set?.(takenAtMs);
-    await rig.clock.pass(sweep.points * sweep.dwellS, session.signal);
+    await rig.clock.pass(sweepS, session.signal);
     uploader.add(takeReading(rig, step, conditions, index, takenAtMs));
     if (uploader.isDue(oldestMs)) await uploader.send();
     if (pauseS > 0) await pause(session, pauseS);

@@ -1,7 +1,8 @@
 import { FluidRangeError } from "@/lib/fluids/fluid-range-error";
 import type { Outcome, Step } from "../contract";
-import { stepName, type World } from "../world";
+import { nominalSeconds, stepName, type World } from "../world";
 import { ask } from "./ask";
+import { CaughtUp } from "./caught-up";
 import { Refused } from "./client";
 import { Crash } from "./faults";
 import { measure } from "./measure";
@@ -17,7 +18,7 @@ const otherAgentMs = 10_000;
 const idleAfterS = 5;
 
 /**
- * Drives a rig until the signal is aborted, or until there is nothing to do: hello, then step after step. A crash loses the session and
+ * Drives a rig until the signal is aborted, its clock has come to `untilMs`, or there is nothing to do: hello, then step after step. A crash loses the session and
  * all memory and starts over. Throws `Refused` when the server does not know the token.
  */
 export async function runAgent(options: AgentOptions): Promise<void> {
@@ -32,7 +33,7 @@ export async function runAgent(options: AgentOptions): Promise<void> {
       await work(session, options.untilIdle ?? false);
       return;
     } catch (error) {
-      if (signal.aborted) return;
+      if (signal.aborted || error instanceof CaughtUp) return;
       const pauseMs = pauseAfter(error);
       if (pauseMs === undefined) throw error;
       log(`${(error as Error).message}; starting again`);
@@ -87,6 +88,7 @@ async function perform(session: Session, step: Step, incomplete: Incomplete): Pr
 }
 
 async function carryOut(session: Session, step: Step, start: World): Promise<Outcome> {
+  if (step.kind !== "measure" && endMs(session, step, start) > session.untilMs) throw new CaughtUp();
   try {
     switch (step.kind) {
       case "measure":
@@ -100,4 +102,10 @@ async function carryOut(session: Session, step: Step, start: World): Promise<Out
     if (!(error instanceof FluidRangeError)) throw error;
     return { outcome: "failed", failure: { code: "instrument", message: error.message, retry: false } };
   }
+}
+
+/** When a step that begins in this world ends by a fast rig's clock; other clocks have no end to come to. */
+function endMs({ rig }: Session, step: Step, start: World): number {
+  if (!rig.isFast || start.clockMs === null) return Number.NEGATIVE_INFINITY;
+  return start.clockMs + nominalSeconds(start, step, rig.scenario) * 1000;
 }

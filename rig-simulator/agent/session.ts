@@ -14,6 +14,8 @@ export type SessionOptions = {
   instance: string;
   signal: AbortSignal;
   log: (text: string) => void;
+  /** Fast mode: nothing is done that would end later than this by the rig's clock. */
+  untilMs?: number;
   sleep?: Sleep;
 };
 
@@ -24,6 +26,7 @@ export class Session {
   readonly log: (text: string) => void;
   readonly signal: AbortSignal;
   readonly sleep: Sleep;
+  readonly untilMs: number;
   wish: Wish = "none";
   dueAtMs: number | undefined;
   server!: HelloAnswer;
@@ -33,11 +36,12 @@ export class Session {
   private current: { step: Step; done?: Done } | undefined;
   private message: string | undefined;
 
-  constructor({ rig, transport, instance, signal, log, sleep = realSleep }: SessionOptions) {
+  constructor({ rig, transport, instance, signal, log, untilMs = Number.POSITIVE_INFINITY, sleep = realSleep }: SessionOptions) {
     this.rig = rig;
     this.log = log;
     this.instance = instance;
     this.sleep = sleep;
+    this.untilMs = untilMs;
     this.signal = AbortSignal.any([signal, this.ending.signal]);
     this.interrupt = linkedController(this.signal);
     this.client = new Client(transport, this.signal, log, sleep);
