@@ -105,6 +105,7 @@ describe("recordLoad", () => {
     await recordLoad({ by, now, rigId: campaign.rigId!, port: 1, lotId: slot.lotId, volumeMl: 500, how: "replace" });
     expect(await OperatorTask.findByPk(taskId)).toMatchObject({ state: "answered", answer: "done", answeredBy: by.id });
     expect(await OperatorTask.findByPk(elsewhere)).toMatchObject({ state: "open" });
+    expect(await auditedActions("task", taskId)).toEqual(["answer"]);
     expect((await campaign.reload()).state).toBe("running");
   });
 });
