@@ -1,9 +1,11 @@
+import type { ProblemCode } from "@/lib/problem-types";
+
 /** What can go wrong in a way that the caller may be told about. Each code has one HTTP status; see `lib/http/problem.ts`. */
 export type FieldError = { path: string; message: string };
 
 type Details = {
   /** Stable code, used as the problem type. */
-  code: string;
+  code: ProblemCode;
   status: number;
   title: string;
   /** Further members of the answer, such as `errors` or `cautions`. */
@@ -13,7 +15,7 @@ type Details = {
 
 /** An error in our words. The message says what happened, what was kept, and what to do next. */
 export class AppError extends Error {
-  readonly code: string;
+  readonly code: ProblemCode;
   readonly status: number;
   readonly title: string;
   readonly members: Record<string, unknown>;
@@ -41,7 +43,7 @@ export const notAllowed = (message: string) => new AppError(message, { code: "no
 export const notFound = (what: string) => new AppError(`There is no such ${what}`, { code: "not-found", status: 404, title: "Not found" });
 
 /** The request is fine, the present state is not. */
-export const conflict = (message: string, code = "conflict", members?: Record<string, unknown>) =>
+export const conflict = (message: string, code: ProblemCode = "conflict", members?: Record<string, unknown>) =>
   new AppError(message, { code, status: 409, title: "In conflict with the present state", members });
 
 export const gone = (message: string) => new AppError(message, { code: "gone", status: 410, title: "No longer there" });
@@ -52,7 +54,7 @@ export const unsupportedType = (message: string) =>
   new AppError(message, { code: "unsupported-type", status: 415, title: "Unsupported content type" });
 
 /** Well-formed, but it cannot be done here. */
-export const impossible = (message: string, members?: Record<string, unknown>, code = "impossible") =>
+export const impossible = (message: string, members?: Record<string, unknown>, code: ProblemCode = "impossible") =>
   new AppError(message, { code, status: 422, title: "Not possible here", members });
 
 export const tooMany = (message: string, retryAfterS: number) =>

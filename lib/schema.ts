@@ -11,3 +11,14 @@ export const time = z.iso.datetime();
 export const words = (max: number) => z.string().trim().min(1, "is empty").max(max, `is longer than ${max} characters`);
 
 export const created = z.object({ id: z.string() });
+
+/** A name of the IANA time zone database that this machine knows. */
+export const timeZoneName = words(100).refine(isTimeZone, "is no IANA time zone, such as Europe/Berlin");
+
+function isTimeZone(name: string): boolean {
+  try {
+    return name !== "" && new Intl.DateTimeFormat("en", { timeZone: name }).resolvedOptions().timeZone !== "";
+  } catch {
+    return false;
+  }
+}

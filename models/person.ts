@@ -11,6 +11,7 @@ export class Person extends Model<InferAttributes<Person>, InferCreationAttribut
   declare notify: CreationOptional<Record<string, boolean>>;
   declare createdAt: Date;
   declare closedAt: CreationOptional<Date | null>;
+  declare seenAt: CreationOptional<Date | null>;
 }
 
 Person.init(
@@ -24,6 +25,7 @@ Person.init(
     notify: { type: DataTypes.JSONB, allowNull: false, defaultValue: {} },
     createdAt: { type: DataTypes.DATE, allowNull: false },
     closedAt: { type: DataTypes.DATE },
+    seenAt: { type: DataTypes.DATE },
   },
   { sequelize, modelName: "Person", tableName: "person" },
 );

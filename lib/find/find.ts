@@ -66,7 +66,7 @@ const RANKED = `
  */
 export async function find({ by, q, limit }: Find): Promise<FindAnswer> {
   demand(by, "read");
-  const phrase = q.trim().toLowerCase().split(/\s+/).join(" ");
+  const phrase = q.replaceAll(/[\p{Cc}\p{Cs}]/gu, " ").trim().toLowerCase().split(/\s+/).join(" ");
   const terms = phrase.split(" ").slice(0, TERMS_MOST);
   if (phrase === "") return { items: [], totals: {} };
   const found = await rows<FoundRow>(RANKED, [phrase, terms, limit]);

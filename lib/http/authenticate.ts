@@ -19,7 +19,7 @@ export async function authenticate(request: Request, now: Date): Promise<Authent
   if (bearer !== undefined) return personOfToken(bearer, request.method, now);
 
   const cookie = cookieOf(request, sessionCookieName());
-  const person = cookie && (await personOfSession(cookie));
+  const person = cookie && (await personOfSession(cookie, now));
   if (!person) throw notSignedIn();
   if (!reading.has(request.method)) demandOwnOrigin(request);
   return person;
@@ -34,14 +34,19 @@ export function bearerToken(request: Request): string | undefined {
   return token;
 }
 
-/** The person of a session cookie, if the session is of the person's present version and the account is open. */
-export async function personOfSession(cookie: string): Promise<Actor | undefined> {
+/** The person of a session cookie, if the session is of the person's present version and the account is open. Notes, to the minute, that the person was here. */
+export async function personOfSession(cookie: string, now: Date): Promise<Actor | undefined> {
   const session = claims.safeParse(await decode({ token: cookie, secret: env().AUTH_SECRET }).catch(() => null));
   if (!session.success) return undefined;
-  return row<Actor>("select id, name, role from person where id = $1 and session_version = $2 and closed_at is null", [
-    session.data.id,
-    session.data.sessionVersion,
-  ]);
+  const found = await row<Actor & { stale: boolean }>(
+    `select id, name, role, seen_at is null or seen_at < $3::timestamptz - interval '1 minute' as stale
+       from person where id = $1 and session_version = $2 and closed_at is null`,
+    [session.data.id, session.data.sessionVersion, now],
+  );
+  if (!found) return undefined;
+  const { stale, ...person } = found;
+  if (stale) await change("update person set seen_at = $2 where id = $1", [person.id, now]);
+  return person;
 }
 
 type TokenRow = Actor & { tokenId: string; scope: "read" | "write"; stale: boolean };

@@ -1,5 +1,7 @@
 import { z } from "zod";
+import { EXAMPLES } from "@/lib/http/examples";
 import type { Operation } from "@/lib/http/operation";
+import { problemCodesOf } from "@/lib/http/problem-codes";
 
 type Json = Record<string, unknown>;
 
@@ -59,6 +61,7 @@ function describe(path: string, method: Method, operation: Operation, components
   const { access, summary, description, status } = operation;
   const id = operationId(method, path);
   const agent = access === "agent";
+  const call = `${method} ${path}`;
   const schemaOf = (schema: z.ZodType, io: "input" | "output", part: string) => jsonSchema(schema, io, `${id}_${part}`, components);
   const content = (schema: unknown, types: readonly string[]) => Object.fromEntries(types.map((type) => [type, { schema }]));
 
@@ -82,11 +85,12 @@ function describe(path: string, method: Method, operation: Operation, components
     ...(description && { description }),
     tags: [agent ? "Rig agents" : (path.split("/")[2] ?? "api")],
     "x-access": access,
+    "x-problems": problemCodesOf(call, operation),
     security: access === "public" ? [] : agent ? [{ agent: [] }] : [{ session: [] }, { token: [] }],
     ...(parameters.length > 0 && { parameters }),
     ...((operation.body || operation.consumes) && {
       requestBody: {
-        content: content(operation.body ? schemaOf(operation.body, "input", "body") : {}, [operation.consumes ?? "application/json"]),
+        content: withExamples(content(operation.body ? schemaOf(operation.body, "input", "body") : {}, [operation.consumes ?? "application/json"]), EXAMPLES[call]),
       },
     }),
     responses: {
@@ -94,6 +98,12 @@ function describe(path: string, method: Method, operation: Operation, components
       default: { description: "A problem, see its type", content: { "application/problem+json": { schema: { $ref: "#/components/schemas/Problem" } } } },
     },
   };
+}
+
+function withExamples(content: Record<string, { schema: unknown }>, examples: Readonly<Record<string, unknown>> = {}): Json {
+  const named = Object.entries(examples).map(([summary, value]) => [summary.replaceAll(/\W+/g, "-"), { summary, value }]);
+  if (named.length === 0) return content;
+  return Object.fromEntries(Object.entries(content).map(([type, media]) => [type, { ...media, examples: Object.fromEntries(named) }]));
 }
 
 const header = (name: string, description: string, maxLength: number): Json => ({

@@ -10,7 +10,7 @@ import { may, type Permission } from "@/lib/permissions";
 /** The person of this request, checked against the database once per request. */
 export const personOrNull = cache(async (): Promise<Actor | null> => {
   const cookie = (await cookies()).get(sessionCookieName())?.value;
-  return (cookie && (await personOfSession(cookie))) || null;
+  return (cookie && (await personOfSession(cookie, new Date()))) || null;
 });
 
 /** For pages: whoever is not signed in goes to the sign-in page and comes back here afterwards. */

@@ -3,8 +3,9 @@ import { inTransaction, row } from "@/lib/db";
 import { invalid, notSignedIn } from "@/lib/errors";
 import { readLaboratory } from "@/lib/laboratory";
 import type { Actor } from "@/lib/people/actor";
+import { mailWishes } from "@/lib/people/mail-wishes";
 import { hashPassword, passwordMatches } from "@/lib/people/password";
-import type { MeAnswer } from "@/lib/people/schema";
+import type { MailWishes, MeAnswer } from "@/lib/people/schema";
 import { countTry, forgiveTries } from "@/lib/people/throttle";
 import { Person } from "@/models/person";
 
@@ -17,10 +18,10 @@ export async function getMe({ by, now }: { by: Actor; now: Date }): Promise<MeAn
   ]);
   if (!person) throw notSignedIn();
   const { id, name, email, role, notify } = person;
-  return { id, name, email, role, notify, laboratory, alarms: alarms?.n ?? 0, serverTime: now.toISOString() };
+  return { id, name, email, role, notify: mailWishes({ role, notify }), laboratory, alarms: alarms?.n ?? 0, serverTime: now.toISOString() };
 }
 
-export async function changeMe({ by, now, name, notify }: { by: Actor; now: Date; name?: string; notify?: Record<string, boolean> }): Promise<MeAnswer> {
+export async function changeMe({ by, now, name, notify }: { by: Actor; now: Date; name?: string; notify?: Partial<MailWishes> }): Promise<MeAnswer> {
   await inTransaction(async (transaction) => {
     const person = await Person.findByPk(by.id, { lock: true, transaction });
     if (!person) throw notSignedIn();

@@ -11,11 +11,20 @@ export const personNameSchema = z.string().trim().min(1, "is missing").max(200);
 /** Length is what counts; the upper bound only keeps the hash from being fed megabytes. */
 export const passwordSchema = z.string().min(12, "must have at least 12 characters").max(200, "must have at most 200 characters");
 
+export const mailWishesAnswer = z.object({
+  alarms: z.boolean().describe("Alarms of every rig"),
+  tasks: z.boolean().describe("Tasks that cannot wait"),
+});
+export type MailWishes = z.output<typeof mailWishesAnswer>;
+
 export const personAnswer = z.object({
   id: z.string(),
   name: z.string(),
   email: z.string(),
   role: roleSchema,
+  notify: mailWishesAnswer,
+  /** To the minute; null for whoever has never signed in. */
+  seenAt: time.nullable(),
   createdAt: time,
   closedAt: time.nullable(),
 });
@@ -68,7 +77,7 @@ export const meAnswer = z.object({
   name: z.string(),
   email: z.string(),
   role: roleSchema,
-  notify: z.record(z.string(), z.boolean()),
+  notify: mailWishesAnswer,
   laboratory: z.object({ name: z.string(), timeZone: z.string() }),
   /** Alarms that nobody has. */
   alarms: z.number().int(),
@@ -76,7 +85,7 @@ export const meAnswer = z.object({
 });
 export type MeAnswer = z.output<typeof meAnswer>;
 export const changeMeBody = z
-  .strictObject({ name: personNameSchema.optional(), notify: z.record(z.string().max(60), z.boolean()).optional() })
+  .strictObject({ name: personNameSchema.optional(), notify: z.strictObject({ alarms: z.boolean().optional(), tasks: z.boolean().optional() }).optional() })
   .refine(({ name, notify }) => name !== undefined || notify !== undefined, "give a name or what to be told of");
 export const changePasswordBody = z.strictObject({ current: z.string().max(200), password: passwordSchema });
 

@@ -10,7 +10,7 @@ const answers: Record<string, () => Response> = {
   "/good": () => Response.json({ n: 1, later: "ignored" }),
   "/wrong": () => Response.json({ n: "1" }),
   "/nothing": () => new Response(null, { status: 204 }),
-  "/taken": () => problemResponse(conflict("M. Tollan was faster", "taken", { by: "M. Tollan" }), "request-1", { method: "POST", path: "/taken" }),
+  "/taken": () => problemResponse(conflict("M. Tollan was faster", "already-there", { by: "M. Tollan" }), "request-1", { method: "POST", path: "/taken" }),
   "/fields": () => problemResponse(invalid([{ path: "name", message: "is missing" }]), "request-2", { method: "POST", path: "/fields" }),
   "/page": () => new Response("<h1>Bad gateway</h1>", { status: 502 }),
 };
@@ -36,7 +36,7 @@ test("an answer is parsed, and one that does not fit is an error, not data", asy
 });
 
 test("a refusal keeps code, status, members, fields and request id", async () => {
-  expect(await refusal("/taken")).toMatchObject({ code: "taken", status: 409, detail: "M. Tollan was faster", members: { by: "M. Tollan" }, requestId: "request-1" });
+  expect(await refusal("/taken")).toMatchObject({ code: "already-there", status: 409, detail: "M. Tollan was faster", members: { by: "M. Tollan" }, requestId: "request-1" });
   expect(await refusal("/fields")).toMatchObject({ code: "invalid", fields: [{ path: "name", message: "is missing" }] });
 });
 

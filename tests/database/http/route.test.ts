@@ -197,8 +197,8 @@ describe("answers", () => {
 
 describe("errors", () => {
   test("ours keep status, code and members", async () => {
-    const response = await throwing(conflict("Someone was faster", "taken", { by: "M." }));
-    expect([response.status, await response.json()]).toEqual([409, expect.objectContaining({ type: "/problems/taken", detail: "Someone was faster", by: "M." })]);
+    const response = await throwing(conflict("Someone was faster", "already-there", { by: "M." }));
+    expect([response.status, await response.json()]).toEqual([409, expect.objectContaining({ type: "/problems/already-there", detail: "Someone was faster", by: "M." })]);
     expect((await throwing(tooMany("Slow down", 7))).headers.get("retry-after")).toBe("7");
   });
 
