@@ -106,6 +106,9 @@ export const backToAirAnswer = z.object({
       q: z.number().nullable(),
       qU: z.number().nullable(),
       qShiftPercent: z.number().nullable(),
+      baselineHz: z.number().nullable(),
+      /** f0 less the phase value in the course of the phase: at most 24 means, oldest first. */
+      courseMHz: z.array(z.number().nullable()),
       baselineComplete: z.boolean(),
     }),
   ),

@@ -4,6 +4,7 @@ import { idSchema } from "@/lib/http/ids";
 import { campaignState, holdReason } from "@/lib/campaigns/schema";
 
 const time = z.string();
+export const tint = z.union([z.literal(1), z.literal(2), z.literal(3)]);
 
 export const holdAnswer = z.object({
   id: z.string(),
@@ -47,6 +48,8 @@ export const campaignItem = z.object({
   expectedEnd: expectedEnd.nullable(),
   /** Newest air reference against the baseline, ppm of f0. */
   shiftPpm: z.number().nullable(),
+  /** The same in mHz with its standard uncertainty, and the half-width of the `return` limit. */
+  air: z.object({ shiftMHz: z.number(), u: z.number().nullable(), limitMHz: z.number().nullable() }).nullable(),
   last: z.object({ f0Hz: z.number(), f0U: z.number().nullable(), q: z.number(), qU: z.number().nullable(), medium: z.string() }).nullable(),
 });
 
@@ -59,10 +62,11 @@ export const campaignAnswer = campaignItem.extend({
     z.object({ slot: z.string(), port: z.int(), lotId: z.string(), lot: z.string(), liquidId: z.string(), liquid: z.string(), letter: z.string() }),
   ),
   /** Media of the phases so far, with how many repeats. */
-  media: z.array(z.object({ medium: z.string(), repeats: z.int(), letter: z.string().nullable(), name: z.string() })),
+  media: z.array(z.object({ medium: z.string(), repeats: z.int(), letter: z.string().nullable(), tint: tint.nullable(), name: z.string() })),
+  amendments: z.array(z.object({ at: time, by: z.string(), fromVersion: z.int(), toVersion: z.int(), fromSequence: z.int(), why: z.string() })),
   setPointsC: z.array(z.number()),
   step: z
-    .object({ sequence: z.int(), kind: z.string(), label: z.string(), state: z.string(), stored: z.int(), repeats: z.int().nullable(), dueAt: time.nullable() })
+    .object({ sequence: z.int(), kind: z.string(), label: z.string(), state: z.string(), medium: z.string().nullable(), stored: z.int(), repeats: z.int().nullable(), dueAt: time.nullable() })
     .nullable(),
   /** How often a person has held, resumed or otherwise changed it is in the log. */
   lastContactAt: time.nullable(),
@@ -78,7 +82,8 @@ export const campaignQuery = pageQuery.extend({
   sensorId: idSchema.optional(),
   protocolId: idSchema.optional(),
   search: z.string().trim().max(200).optional(),
-  sort: z.enum(["newest", "oldest", "name"]).default("newest"),
+  /** `line`: the order in which a rig takes what is queued. A minus turns a sort round. */
+  sort: z.enum(["newest", "oldest", "name", "-name", "start", "-start", "end", "-end", "repeats", "-repeats", "line"]).default("newest"),
 });
 
 export const phaseItem = z.object({
@@ -114,6 +119,7 @@ export const campaignEvent = z.object({
 
 export const eventPage = pageOf(campaignEvent);
 
+export type CampaignSort = CampaignQuery["sort"];
 export type CampaignItem = z.output<typeof campaignItem>;
 export type CampaignAnswer = z.output<typeof campaignAnswer>;
 export type CampaignQuery = z.output<typeof campaignQuery>;

@@ -42,6 +42,9 @@ export type CampaignRecord = {
   rigNow: Date | null;
   stepKind: string | null;
   shiftPpm: number | null;
+  shiftHz: number | null;
+  shiftU: number | null;
+  limitHz: number | null;
   f0Hz: number | null;
   f0U: number | null;
   q: number | null;
@@ -50,6 +53,8 @@ export type CampaignRecord = {
 };
 
 const DOING: Record<string, string> = { fill: "Filling", rinse: "Cleaning", drain: "Draining", dry: "Drying", settle: "Settling", wait: "Waiting for a date" };
+
+const inMHz = (hz: number | null): number | null => (hz === null ? null : 1000 * hz);
 
 export const iso = (at: Date | null): string | null => at?.toISOString() ?? null;
 
@@ -84,6 +89,7 @@ export function presentCampaign(found: CampaignRecord): CampaignItem {
     progress: { repeats: found.repeats, repeatsPlanned: planned?.repeats ?? null, cycles: planned?.cycles ?? null },
     expectedEnd: expectedEnd(found),
     shiftPpm: found.shiftPpm,
+    air: found.shiftHz === null ? null : { shiftMHz: 1000 * found.shiftHz, u: inMHz(found.shiftU), limitMHz: inMHz(found.limitHz) },
     last: f0Hz === null || q === null || medium === null ? null : { f0Hz, f0U: found.f0U, q, qU: found.qU, medium },
   };
 }

@@ -1,4 +1,6 @@
 import { z } from "zod";
+import { tint } from "@/lib/campaigns/answers";
+import { idSchema } from "@/lib/http/ids";
 
 const time = z.string();
 
@@ -20,15 +22,27 @@ export const stripSegment = z.object({
 export const stripAnswer = z.object({
   from: time,
   to: time,
-  /** By the rig's clock. */
-  now: time,
+  /** By the rig's clock, while the campaign is under way. */
+  now: time.optional(),
   segments: z.array(stripSegment),
+  liquids: z.array(z.object({ slot: z.string(), name: z.string(), letter: z.string(), tint })),
   halt: z.object({ at: time, open: z.boolean() }).optional(),
-  /** Air references against the first, mHz. */
+  /** Air references against the baseline of their mount and set-point, or against the first while there is none, mHz. */
   trace: z.array(z.object({ at: time, value: z.number(), u: z.number().optional() })),
   /** Half-width of the `return` limit in the trace's unit. */
   limit: z.number().optional(),
 });
 
+export const stripsQuery = z.object({
+  /** Up to 200 ids with commas between them. */
+  ids: z
+    .string()
+    .transform((text) => text.split(","))
+    .pipe(z.array(idSchema).min(1).max(200)),
+});
+
+export const stripsAnswer = z.object({ items: z.array(z.object({ campaignId: z.string(), strip: stripAnswer })) });
+
+export type StripsAnswer = z.output<typeof stripsAnswer>;
 export type StripSegment = z.output<typeof stripSegment>;
 export type StripAnswer = z.output<typeof stripAnswer>;

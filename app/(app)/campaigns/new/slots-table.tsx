@@ -12,6 +12,11 @@ export function SlotsTable({ draft, choices: { versions, rigs, lots }, checked, 
   if (!version || !rig) return <p className="text-ink2">They follow from the protocol and the rig.</p>;
   if (version.slots.length === 0) return <p className="text-ink2">The protocol measures in air only.</p>;
   const bind = (slot: string, changes: Partial<Draft["slots"][string]>) => onChange({ slots: { ...draft.slots, [slot]: { ...draft.slots[slot], ...changes } } });
+  /** Whoever had the port before is given another. */
+  const takePort = (slot: string, port: number, lotOn: (port: number) => string) => {
+    const others = Object.entries(draft.slots).filter(([other, binding]) => other !== slot && binding.port !== port);
+    onChange({ slots: { ...Object.fromEntries(others), [slot]: { port: port || null, lotId: lotOn(port) } } });
+  };
 
   return (
     <div className="scroll">
@@ -31,12 +36,12 @@ export function SlotsTable({ draft, choices: { versions, rigs, lots }, checked, 
             const { port, lotId } = draft.slots[slot] ?? { port: null, lotId: "" };
             const lot = lots.find(({ id }) => id === lotId);
             const amounts = checked?.slots.find((checkedSlot) => checkedSlot.slot === slot);
-            const takes = (number: number) => onChange({ slots: { ...draft.slots, [slot]: { port: number || null, lotId: rig.ports.find((candidate) => candidate.number === number)?.lotId ?? lotId } } });
+            const lotOn = (number: number) => rig.ports.find((candidate) => candidate.number === number)?.lotId ?? lotId;
             return (
               <tr key={slot}>
                 <td><span className="inline-flex items-center gap-2">{lot && <PhaseChip kind="liquid" letter={lot.letter} tint={lot.tint} />}{slot}</span></td>
                 <td>
-                  <select className="control" aria-label={`Port for ${slot}`} value={port ?? ""} onChange={(event) => takes(Number(event.target.value))}>
+                  <select className="control" aria-label={`Port for ${slot}`} value={port ?? ""} onChange={(event) => takePort(slot, Number(event.target.value), lotOn)}>
                     <option value="">none</option>
                     {rig.ports.map(({ number }) => <option key={number} value={number}>port {number}</option>)}
                   </select>
