@@ -1,7 +1,8 @@
 import { detourBlocks } from "./detours";
-import { duration, stepLabel } from "./labels";
+import { stepLabel } from "./labels";
 import { type Frame, framesOf, leafAt } from "./path";
 import type { Block, Definition } from "./schema";
+import { sentenceParts, textOf } from "./sentence";
 import type { Cursor, Detour } from "./types";
 
 const DETOURS: Record<Detour["kind"], string> = {
@@ -62,48 +63,7 @@ export function cyclesOf(blocks: readonly Block[]): number | undefined {
   return total;
 }
 
-/** A block as a sentence, for the editor and the protocol's page. What a container holds stands in sentences of its own. */
+/** A block as a sentence. What a container holds stands in sentences of its own. */
 export function sentence(block: Block): string {
-  switch (block.kind) {
-    case "measure": {
-      const what = block.medium === "air" ? `air as ${{ reference: "the reference", check: "a check", sample: "a sample" }[block.role]}` : `${nameOf(block.medium)}${block.role === "sample" ? "" : ` as a ${block.role}`}`;
-      const left = block.discard > 0 ? `, the first ${block.discard} left out` : "";
-      const pause = block.pauseS > 0 ? `, ${duration(block.pauseS)} apart` : "";
-      return `Measure ${what}, ${count(block.repeats, "repeat")}${left}${pause}.`;
-    }
-    case "fill":
-      return `Fill ${block.volumeMl} mL of ${nameOf(block.slot)} at ${block.flowMlPerMin} mL/min.`;
-    case "drain":
-      return "Drain the cell.";
-    case "rinse":
-      return `Rinse ${count(block.times, "time")} with ${block.volumeMl} mL of ${nameOf(block.slot)}.`;
-    case "dry":
-      return `Dry for ${duration(block.seconds)}${block.flowMlPerMin === undefined ? "" : ` at ${block.flowMlPerMin} mL/min`}.`;
-    case "settle": {
-      const at = block.temperatureC === "each" ? "each temperature" : `${block.temperatureC} °C`;
-      return `Settle at ${at} within ${block.toleranceC} °C for ${duration(block.holdS)}, at most ${duration(block.timeoutS)}.`;
-    }
-    case "wait":
-      return `${stepLabel(block)}.`;
-    case "ask":
-      return `Ask a person: ${block.instruction}`;
-    case "repeat":
-      return block.until === undefined ? `Repeat ${count(block.times ?? 0, "time")}.` : `Repeat until ${block.until} is over.`;
-    case "untilClean":
-      return `Clean until air is back within ${block.tolerancePpm} ppm${
-        block.toleranceQPercent === undefined ? "" : ` and ${block.toleranceQPercent} % in Q`
-      }, at most ${count(block.maxTimes, "time")}, otherwise ${block.otherwise === "continue" ? "go on" : block.otherwise}.`;
-    case "forEach":
-      return "slots" in block.over
-        ? `For each of ${block.over.slots.join(", ")}.`
-        : `At each of ${block.over.temperaturesC.join(", ")} °C.`;
-  }
-}
-
-function nameOf(slot: string): string {
-  return slot === "each" ? "each liquid" : slot;
-}
-
-function count(n: number, unit: string): string {
-  return `${n.toLocaleString("en").replaceAll(",", " ")} ${unit}${n === 1 ? "" : "s"}`;
+  return textOf(sentenceParts(block));
 }
