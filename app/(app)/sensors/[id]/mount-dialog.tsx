@@ -20,12 +20,12 @@ type Values = z.input<typeof mountBody>;
 type Mount = z.output<typeof mountBody>;
 
 /** Records that the sensor was clamped in a rig just now. */
-export function MountDialog({ sensor, onClose }: { sensor: SensorAnswer; onClose: () => void }) {
+export function MountDialog({ sensor, rigId: wanted, onClose }: { sensor: SensorAnswer; rigId?: string; onClose: () => void }) {
   const rigs = useInfiniteQuery(rigsOptions());
   const queries = useQueryClient();
   const { register, handleSubmit, setError, control, formState } = useForm<Values, unknown, Mount>({
     resolver: zodResolver(mountBody),
-    defaultValues: { rigId: sensor.mount?.rigId ?? "", position: 1 },
+    defaultValues: { rigId: wanted ?? sensor.mount?.rigId ?? "", position: 1 },
   });
   const { errors } = formState;
   const rigId = useWatch({ control, name: "rigId" });
