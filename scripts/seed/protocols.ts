@@ -4,12 +4,12 @@ import type { BlockInput } from "@/lib/protocol/block-schema";
 import type { DefinitionInput } from "@/lib/protocol/schema";
 import { createProtocol } from "@/lib/protocols/create";
 
-/** Spans of eight half-widths; five ring-downs let each point come to rest within 4 ppm of its height. */
+/** Half a ring-down more than the five that a fit asks for: the width that the sweep follows scatters. */
 const sweep = (points: number) => ({
   centre: "track" as const,
   span: { halfWidths: 8 },
   points,
-  dwell: { ringDowns: 5 },
+  dwell: { ringDowns: 5.5 },
   driveV: 0.1,
 });
 
