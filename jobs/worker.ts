@@ -35,9 +35,12 @@ async function main(): Promise<void> {
     await planDue();
   });
   await work(boss, "sweep", 1, async () => {
-    await sweep();
-    await queueMail(boss);
-    await planDue();
+    try {
+      await sweep();
+    } finally {
+      await queueMail(boss);
+      await planDue();
+    }
   });
   await boss.schedule("sweep", "* * * * *", {});
 
@@ -69,6 +72,9 @@ async function work<Name extends QueueName>(boss: PgBoss, name: Name, count: num
     const id: string = await boss.work(name, { batchSize: 1, pollingIntervalSeconds: 2, notifyPollingIntervalSeconds: BACKSTOP_S }, async ([job]) => {
       try {
         await handle(payloads[name].parse(job.data) as Payload<Name>);
+      } catch (error) {
+        log.error({ name, error: error instanceof Error ? error.stack : String(error) }, "job");
+        throw error;
       } finally {
         boss.notifyWorker(id);
       }

@@ -4,7 +4,14 @@ import type { Agent } from "@/lib/agents/contract";
 import { row } from "@/lib/db";
 import { conflict } from "@/lib/errors";
 
-type Contact = { agent: Agent; session?: string; now: Date; clock?: Date };
+type Contact = {
+  agent: Agent;
+  session?: string;
+  now: Date;
+  clock?: Date;
+  /** What is brought is welcome under a session that has ended too. */
+  anySession?: boolean;
+};
 
 export type RigRow = {
   id: string;
@@ -19,7 +26,7 @@ export type RigRow = {
  * Notes that the agent was heard, moves a simulated rig's clock on (it never goes back), and refuses a session that another
  * instance has ended. Locks the rig row: calls of one agent follow each other.
  */
-export async function noteContact(transaction: Transaction, { agent, session, now, clock }: Contact): Promise<RigRow> {
+export async function noteContact(transaction: Transaction, { agent, session, now, clock, anySession = false }: Contact): Promise<RigRow> {
   const rig = await row<RigRow & { silentSince: Date | null }>(
     `update rig set last_contact_at = greatest(rig.last_contact_at, $2), reported_clock = greatest(rig.reported_clock, $3)
        from (select id, last_contact_at as silent_since from rig where id = $1 for no key update) before
@@ -36,7 +43,7 @@ export async function noteContact(transaction: Transaction, { agent, session, no
       [agent.rigId, session, now],
       transaction,
     );
-    if (!open) throw conflict("Another agent has taken over this rig; say hello again with `replace` to take it back", "other-agent");
+    if (!open && !anySession) throw conflict("Another agent has taken over this rig; say hello again with `replace` to take it back", "other-agent");
   }
   await endSilence(transaction, { rigId: rig.id, lastContactAt: rig.silentSince, now });
   return rig;

@@ -39,8 +39,8 @@ async function recordState(transaction: Transaction, rig: RigRow, body: Heartbea
   );
   await change(
     `insert into heartbeat (rig_id, at, clock, offset_ms, state, step_id, temperature_c, waste_ml, message)
-     values ($1, $2, $3, $4, $5, (select id from step where id::text = $6 and rig_id = $1), $7, $8, $9)`,
-    [rig.id, now, body.clock, offsetMs, body.state, body.stepId ?? null, body.temperatureC ?? null, body.wasteMl ?? null, body.message ?? null],
+     values ($1, $2, $3, $4, $5, (select id from step where id = $6::bigint and rig_id = $1), $7, $8, $9)`,
+    [rig.id, now, body.clock, offsetMs, body.state, idOf(body) ?? null, body.temperatureC ?? null, body.wasteMl ?? null, body.message ?? null],
     transaction,
   );
   if (body.ports?.length) {
@@ -53,9 +53,12 @@ async function recordState(transaction: Transaction, rig: RigRow, body: Heartbea
   }
 }
 
+/** Ids are opaque to agents: what cannot be one of ours names no step. */
+const idOf = ({ stepId }: HeartbeatBody): string | undefined => (stepId !== undefined && /^\d{1,18}$/.test(stepId) ? stepId : undefined);
+
 /** An expired lease stays valid until the step is given out again; progress counts only under the present lease. */
 async function extendLease(transaction: Transaction, rig: RigRow, body: HeartbeatBody, now: Date): Promise<HeldStep | undefined> {
-  if (!/^\d{1,18}$/.test(body.stepId ?? "")) return undefined;
+  if (idOf(body) === undefined) return undefined;
   return row<HeldStep>(
     `update step set lease_expires_at = $4, done = case when $5::jsonb is null then step.done else coalesce(step.done, '{}') || $5::jsonb end
        from campaign where campaign.id = step.campaign_id and step.id = $1 and step.rig_id = $2 and step.lease = $3 and step.state = 'out'

@@ -3,6 +3,7 @@ import { noteContact } from "@/lib/agents/contact";
 import { CONTRACT, HEARTBEAT_S, LEASE_S, MAX_BODY_BYTES, MAX_READINGS, SESSION_FRESH_S, WAIT_S, type Agent } from "@/lib/agents/contract";
 import type { HelloBody } from "@/lib/agents/schema";
 import { audit } from "@/lib/audit/record";
+import { wakeRig } from "@/lib/campaigns/free-rig";
 import { change, inTransaction, row } from "@/lib/db";
 import { conflict } from "@/lib/errors";
 import { notify } from "@/lib/notify";
@@ -52,6 +53,7 @@ export function hello({ agent, body, now }: { agent: Agent; body: HelloBody; now
       });
     }
     await notify(`rig:${rig.id}`, transaction);
+    await wakeRig(transaction, { rigId: rig.id });
     return {
       rig: { id: rig.id, name: rig.name, clock: rig.clock },
       session,

@@ -2,7 +2,7 @@ import type { Transaction } from "sequelize";
 import { openAlarm } from "@/lib/alarms/open-alarm";
 import { returnAlarm } from "@/lib/alarms/return-alarm";
 import { openHold } from "@/lib/campaigns/open-hold";
-import { inTransaction, rows } from "@/lib/db";
+import { inTransaction, row, rows } from "@/lib/db";
 import type { Limit } from "@/lib/protocol/schema";
 
 /** Where no limit says otherwise, a rig with work to do that was not heard for this long is told to people. */
@@ -11,8 +11,12 @@ const KIND = "silence";
 
 type Quiet = { rigId: string; name: string; lastContactAt: Date; campaignId: string; sensorId: string; limits: Limit[] };
 
-/** Watches rigs that have a campaign running. By itself silence opens an alarm; it holds only where a limit of the protocol says so. */
-export async function watchSilence({ now }: { now: Date }): Promise<void> {
+/**
+ * Watches rigs that have a campaign running. By itself silence opens an alarm; it holds only where a limit of the protocol says so.
+ *
+ * @param listeningSince Since when Longreed could hear anybody; while it was switched off it was not the rig that was silent.
+ */
+export async function watchSilence({ now, listeningSince }: { now: Date; listeningSince?: Date }): Promise<void> {
   const quiet = await rows<Quiet>(
     `select rig.id as "rigId", rig.name, rig.last_contact_at as "lastContactAt", c.id as "campaignId", c.sensor_id as "sensorId",
             coalesce(v.definition->'limits', '[]') as limits
@@ -21,12 +25,22 @@ export async function watchSilence({ now }: { now: Date }): Promise<void> {
     [new Date(now.getTime() - 1000)],
   );
   for (const rig of quiet) {
-    const silentS = (now.getTime() - rig.lastContactAt.getTime()) / 1000;
+    const silentSince = Math.max(rig.lastContactAt.getTime(), listeningSince?.getTime() ?? -Infinity);
+    const silentS = (now.getTime() - silentSince) / 1000;
     const limits = rig.limits.filter((limit) => limit.kind === "silence");
     if (silentS > Math.min(SILENT_AFTER_S, ...limits.map(({ afterS }) => afterS))) {
-      await inTransaction((transaction) => tellSilence(transaction, rig, limits, silentS, now));
+      await inTransaction(async (transaction) => {
+        if (await isStillSilent(transaction, rig)) await tellSilence(transaction, rig, limits, silentS, now);
+      });
     }
   }
+}
+
+/** Locks the rig, as every contact does, so that a word from the agent comes wholly before or wholly after. */
+async function isStillSilent(transaction: Transaction, { rigId, campaignId, lastContactAt }: Quiet): Promise<boolean> {
+  const rig = await row<{ lastContactAt: Date }>(`select last_contact_at as "lastContactAt" from rig where id = $1 for no key update`, [rigId], transaction);
+  const campaign = await row(`select id from campaign where id = $1 and state = 'running' for no key update`, [campaignId], transaction);
+  return campaign !== undefined && rig?.lastContactAt.getTime() === lastContactAt.getTime();
 }
 
 async function tellSilence(transaction: Transaction, rig: Quiet, limits: Extract<Limit, { kind: "silence" }>[], silentS: number, now: Date) {

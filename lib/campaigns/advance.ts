@@ -4,6 +4,9 @@ import { closeStep, lastClosed, openStep, skipStep } from "@/lib/campaigns/steps
 import { checkMount } from "@/lib/campaigns/check-mount";
 import { gatherFacts } from "@/lib/campaigns/facts";
 import { freeRig } from "@/lib/campaigns/free-rig";
+import { leavePark } from "@/lib/campaigns/leave-park";
+import { nothingToPark } from "@/lib/campaigns/nothing-to-park";
+import { parkFailed } from "@/lib/campaigns/park-failed";
 import { perform } from "@/lib/campaigns/perform";
 import { settlePhase } from "@/lib/campaigns/settle-phase";
 import { startQueued } from "@/lib/campaigns/start";
@@ -27,7 +30,7 @@ export async function advanceCampaign({ campaignId, now }: Advance): Promise<voi
       order by s.sequence desc limit 1`,
     [campaignId],
   );
-  if (unfitted) await fitStep(unfitted.id);
+  if (unfitted) await fitStep({ stepId: unfitted.id, now });
 
   await inTransaction(async (transaction) => {
     const campaign = await lockCampaign(transaction, { campaignId, now });
@@ -42,7 +45,7 @@ async function goOn(transaction: Transaction, locked: CampaignRow, now: Date): P
   let campaign = locked;
   for (let turn = 0; turn < MOST_TURNS; turn++) {
     if (!campaign.cursor || campaign.setAside) return;
-    if (campaign.state === "running" && (await checkMount(transaction, { campaign, now }))) {
+    if (campaign.state === "running" && ((await checkMount(transaction, { campaign, now })) || (await leavePark(transaction, campaign)))) {
       campaign = await again(transaction, campaign, now);
       continue;
     }
@@ -60,15 +63,18 @@ async function goOn(transaction: Transaction, locked: CampaignRow, now: Date): P
       }
       if (open.state === "ready") await notify(`rig:${campaign.rigId}`, transaction);
       if (!parks || open.detour === "park" || open.state === "out") return;
+      if (await nothingToPark(transaction, campaign, open)) return;
       await skipStep(transaction, { stepId: open.id, now });
       continue;
     }
 
     const last = await lastClosed(transaction, campaign.id);
+    if (last?.state === "failed" && (await nothingToPark(transaction, campaign, last))) return;
     if (last && (await settlePhase(transaction, { campaign, step: last, now }))) {
       campaign = await again(transaction, campaign, now);
       continue;
     }
+    if (campaign.parking === "running" && last?.detour === "park" && last.state === "failed") return parkFailed(transaction, { campaign, step: last, now });
     if (campaign.parking === "wanted") {
       const cursor = redirect(campaign.definition, campaign.cursor, { kind: "park" });
       if ("impossible" in cursor) return freeRig(transaction, campaign);

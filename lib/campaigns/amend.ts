@@ -1,8 +1,10 @@
+import type { Transaction } from "sequelize";
 import { audit } from "@/lib/audit/record";
 import { lockedFor } from "@/lib/campaigns/locked-for";
 import { recordEvent } from "@/lib/campaigns/record-event";
+import { slotsOf } from "@/lib/campaigns/slots-of";
 import { openStep } from "@/lib/campaigns/steps-of-campaign";
-import { change, inTransaction, row } from "@/lib/db";
+import { change, inTransaction, row, rows } from "@/lib/db";
 import { conflict, impossible, notFound } from "@/lib/errors";
 import type { Actor } from "@/lib/people/actor";
 import { amend } from "@/lib/protocol/amend";
@@ -26,6 +28,7 @@ export function amendCampaign({ by, campaignId, protocolVersionId, why, now }: A
     if (open?.state === "out") throw conflict("The rig agent has not ended the present step yet; try again in a moment");
     const amended = amend(campaign.definition, version.definition, campaign.cursor);
     if ("impossible" in amended) throw impossible(amended.impossible);
+    await demandSlots(transaction, campaignId, version.definition);
 
     await change(
       `insert into amendment (campaign_id, from_sequence, from_version_id, to_version_id, cursor_before, cursor_after, why, person_id, at)
@@ -52,4 +55,11 @@ export function amendCampaign({ by, campaignId, protocolVersionId, why, now }: A
     await audit(transaction, { by, now, action: "amend", entity: "campaign", entityId: campaignId, detail: { protocolVersionId, why } });
     return { id: campaignId, state: "held" as const };
   });
+}
+
+/** Slots are bound when a campaign is made, so a version that draws on others cannot go on here. */
+async function demandSlots(transaction: Transaction, campaignId: string, definition: Definition): Promise<void> {
+  const bound = await rows<{ slot: string }>(`select slot from campaign_slot where campaign_id = $1`, [campaignId], transaction);
+  const unbound = slotsOf(definition).filter((slot) => !bound.some((known) => known.slot === slot));
+  if (unbound.length > 0) throw impossible(`That version draws on ${unbound.join(", ")}, which this campaign has no port and lot for; make a new campaign of it`);
 }

@@ -20,8 +20,9 @@ export async function releaseHolds(transaction: Transaction, { campaignId, reaso
   );
   if (released.length === 0) return [];
   await change(
-    `update campaign set state = 'running', needs_advance = true
-      where id = $1 and state = 'held' and not exists (select 1 from hold where campaign_id = $1 and released_at is null)`,
+    `update campaign set needs_advance = true,
+       state = case when state = 'held' and not exists (select 1 from hold where campaign_id = $1 and released_at is null) then 'running' else state end
+      where id = $1`,
     [campaignId],
     transaction,
   );

@@ -1,11 +1,12 @@
 import type { Transaction } from "sequelize";
+import { failureIsOver } from "@/lib/alarms/failure-is-over";
 import { audit } from "@/lib/audit/record";
 import type { CampaignRow } from "@/lib/campaigns/campaign-row";
 import { lockedFor } from "@/lib/campaigns/locked-for";
 import { releaseHolds } from "@/lib/campaigns/release-hold";
 import type { HoldReason } from "@/lib/campaigns/open-hold";
 import type { ResumeFrom } from "@/lib/campaigns/schema";
-import { lastClosed, openStep, skipStep } from "@/lib/campaigns/steps-of-campaign";
+import { lastClosed, openStep, skipStep, type StepState } from "@/lib/campaigns/steps-of-campaign";
 import { change, inTransaction, row, rows } from "@/lib/db";
 import { conflict, impossible } from "@/lib/errors";
 import { demand, type Actor } from "@/lib/people/actor";
@@ -40,8 +41,9 @@ export function resumeCampaign({ by, campaignId, from, now }: ResumeCampaign) {
     const setAside = holds.some(({ reason }) => reason === "setAside");
     if (setAside) demand(by, "set campaigns aside");
     const released = await releasable(transaction, campaign, holds.map(({ reason }) => reason), from);
-    await redirectCursor(transaction, campaign, setAside, from, now);
+    await redirectCursor(transaction, campaign, { setAside, from, by, now });
     await releaseHolds(transaction, { campaignId, reasons: released, by, now });
+    if (released.includes("failure") || released.includes("limit")) await failureIsOver(transaction, { campaignId, by, now });
     await audit(transaction, { by, now, action: "resume", entity: "campaign", entityId: campaignId, detail: { from } });
     const after = await row<{ state: "running" | "held" }>(`select state from campaign where id = $1`, [campaignId], transaction);
     return { id: campaignId, state: after?.state ?? ("held" as const) };
@@ -70,9 +72,11 @@ async function releasable(transaction: Transaction, campaign: CampaignRow, reaso
   return released;
 }
 
-async function redirectCursor(transaction: Transaction, campaign: CampaignRow, setAside: boolean, from: ResumeFrom, now: Date): Promise<void> {
+type Onward = { setAside: boolean; from: ResumeFrom; by: Actor; now: Date };
+
+async function redirectCursor(transaction: Transaction, campaign: CampaignRow, { setAside, from, by, now }: Onward): Promise<void> {
   if (!campaign.cursor) throw conflict("The campaign has not started");
-  if (from === "here" && campaign.parking === "parked") {
+  if (from === "here" && campaign.cursor.parked?.begun) {
     throw impossible("The cell was parked; the campaign can go on from the phase or the cycle, not from here");
   }
   const last = await lastClosed(transaction, campaign.id);
@@ -90,10 +94,21 @@ async function redirectCursor(transaction: Transaction, campaign: CampaignRow, s
   if (open?.state === "out") throw conflict("The rig agent has not ended the present step yet; try again in a moment");
   const cursor = redirect(campaign.definition, campaign.cursor, setAside && from !== "here" ? { kind: "reference", from } : { kind: "resume", from });
   if ("impossible" in cursor) throw impossible(cursor.impossible);
-  if (open) await skipStep(transaction, { stepId: open.id, now });
+  if (open) await giveUp(transaction, campaign.id, open, by, now);
   await change(
     `update campaign set cursor = $2, parking = 'none', set_aside = false, needs_advance = true where id = $1`,
     [campaign.id, JSON.stringify(cursor)],
     transaction,
   );
+}
+
+/** The step is not wanted any more. If it is a question, it is asked again when its turn comes, and nothing waits for this one. */
+async function giveUp(transaction: Transaction, campaignId: string, step: StepState, by: Actor, now: Date): Promise<void> {
+  const question = await row<{ holdId: string | null }>(
+    `select hold_id as "holdId" from operator_task where campaign_id = $1 and step_id = $2 and kind = 'ask'`,
+    [campaignId, step.id],
+    transaction,
+  );
+  await skipStep(transaction, { stepId: step.id, now });
+  if (question?.holdId) await releaseHolds(transaction, { campaignId, holdId: question.holdId, by, now });
 }

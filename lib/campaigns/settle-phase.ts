@@ -9,6 +9,7 @@ import { notify } from "@/lib/notify";
 import { updateBaseline } from "@/lib/phases/baseline";
 import { closePhase, type ClosedPhase } from "@/lib/phases/close-phase";
 import { updateTrack } from "@/lib/phases/update-track";
+import { fitRest } from "@/lib/readings/fit-step";
 
 type Settle = { campaign: CampaignRow; step: StepState; now: Date };
 
@@ -18,6 +19,7 @@ type Settle = { campaign: CampaignRow; step: StepState; now: Date };
  */
 export async function settlePhase(transaction: Transaction, { campaign, step, now }: Settle): Promise<boolean> {
   if (step.kind !== "measure" || step.state === "ready" || step.state === "out") return false;
+  await fitRest(transaction, step.id);
   await updateTrack(transaction, { stepId: step.id });
   if (step.settled || mayBeGivenOutAgain(campaign, step)) return false;
   const phase = await closePhase(transaction, { stepId: step.id, now });
@@ -39,8 +41,8 @@ export async function settlePhase(transaction: Transaction, { campaign, step, no
 }
 
 /** A failed step of a campaign that holds for it: `resume` here gives it out again, with its readings. */
-const mayBeGivenOutAgain = ({ state, parking }: CampaignRow, step: StepState): boolean =>
-  step.state === "failed" && state === "held" && parking === "none";
+const mayBeGivenOutAgain = ({ state, parking, cursor }: CampaignRow, step: StepState): boolean =>
+  step.state === "failed" && state === "held" && (parking === "none" || (parking === "parked" && !cursor?.parked));
 
 /** The closed phase and its like since the baseline began: same mount, set-point, medium and role. */
 async function limitFacts(transaction: Transaction, campaign: CampaignRow, phase: ClosedPhase, baseline: LimitFacts["baseline"]): Promise<LimitFacts> {

@@ -43,11 +43,14 @@ export async function closeStep(transaction: Transaction, { stepId, clock, now }
   );
 }
 
-/** The step is not wanted any more: parking, another place to go on from, or the end. */
+/**
+ * The step is not wanted any more: parking, another place to go on from, or the end. A question goes with its step; an errand
+ * such as an empty bottle has to be run all the same.
+ */
 export async function skipStep(transaction: Transaction, { stepId, now }: { stepId: string; now: Date }): Promise<void> {
   await change(`update step set state = 'skipped', closed_at = $2, lease = null, lease_expires_at = null where id = $1`, [stepId, now], transaction);
   await change(
-    `update operator_task set state = 'withdrawn' where step_id = $1 and state = 'open'`,
+    `update operator_task set state = 'withdrawn' where step_id = $1 and state = 'open' and kind = 'ask'`,
     [stepId],
     transaction,
   );

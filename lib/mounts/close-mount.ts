@@ -23,7 +23,7 @@ export async function closeMount(transaction: Transaction, { mount, at, by, now,
   await change("update mount set period = tstzrange(lower(period), $2, '[)'), ended_by = $3 where id = $1", [mount.id, at, by.id], transaction);
   if (keepsRig) return;
   const using = await rows<{ id: string }>(
-    "select id from campaign where rig_id = $1 and sensor_id = $2 and state in ('running', 'held') and not set_aside for update",
+    "select id from campaign where rig_id = $1 and sensor_id = $2 and state in ('running', 'held') and not set_aside for no key update",
     [mount.rigId, mount.sensorId],
     transaction,
   );

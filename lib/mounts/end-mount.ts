@@ -14,7 +14,7 @@ export async function endMount({ by, now, mountId, endedAt = now, note }: Ending
   return inTransaction(async (transaction) => {
     const mount = await row<OpenMount & { open: boolean }>(
       `select m.id, m.sensor_id as "sensorId", s.serial, m.rig_id as "rigId", r.name as "rigName", lower(m.period) as "from", upper_inf(m.period) as open
-         from mount m join sensor s on s.id = m.sensor_id join rig r on r.id = m.rig_id where m.id = $1 for update of m`,
+         from mount m join sensor s on s.id = m.sensor_id join rig r on r.id = m.rig_id where m.id = $1 for no key update of m`,
       [mountId],
       transaction,
     );

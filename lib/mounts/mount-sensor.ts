@@ -43,10 +43,10 @@ export async function mountSensor({ by, now, sensorId, rigId, position = 1, moun
 }
 
 async function lockBoth(sensorId: string, rigId: string, transaction: Transaction): Promise<{ sensor: Sensor; rig: Rig }> {
-  const sensor = await Sensor.findByPk(sensorId, { transaction, lock: transaction.LOCK.UPDATE });
+  const sensor = await Sensor.findByPk(sensorId, { transaction, lock: transaction.LOCK.NO_KEY_UPDATE });
   if (!sensor) throw notFound("sensor");
   if (sensor.retiredAt) throw conflict(`${sensor.serial} is retired`);
-  const rig = await Rig.findByPk(rigId, { transaction, lock: transaction.LOCK.UPDATE });
+  const rig = await Rig.findByPk(rigId, { transaction, lock: transaction.LOCK.NO_KEY_UPDATE });
   if (!rig) throw impossible("There is no such rig", { errors: [{ path: "rigId", message: "there is no such rig" }] });
   if (rig.retiredAt) throw conflict(`${rig.name} is retired`);
   return { sensor, rig };
@@ -68,7 +68,7 @@ function openMountOf(sensorId: string, transaction: Transaction): Promise<OpenMo
   return row<OpenMount>(
     `select m.id, m.sensor_id as "sensorId", s.serial, m.rig_id as "rigId", r.name as "rigName", lower(m.period) as "from"
        from mount m join sensor s on s.id = m.sensor_id join rig r on r.id = m.rig_id
-      where m.sensor_id = $1 and upper_inf(m.period) for update of m`,
+      where m.sensor_id = $1 and upper_inf(m.period) for no key update of m`,
     [sensorId],
     transaction,
   );

@@ -34,9 +34,14 @@ const PHASE = `
     join fit_run r on r.campaign_id = p.campaign_id and r.current
    where p.step_id = $1`;
 
+/** Brings the summary of a phase that has closed up to date, after late readings or exclusions. Decides nothing anew. */
+export async function refreshPhase(transaction: Transaction, { stepId, now }: { stepId: string; now: Date }): Promise<void> {
+  const closed = await row(`select id from phase where step_id = $1 and closed_at is not null for no key update`, [stepId], transaction);
+  if (closed) await closePhase(transaction, { stepId, now });
+}
+
 /**
- * Makes the summary of a step's phase from its fits in the current run; the same call brings it up to date after late
- * readings or exclusions. Undefined for a step without a phase (`find`). All readings have to be fitted before.
+ * Makes the summary of a step's phase from its fits in the current run. Undefined for a step without a phase (`find`). All readings have to be fitted before.
  */
 export async function closePhase(transaction: Transaction, { stepId, now }: { stepId: string; now: Date }): Promise<ClosedPhase | undefined> {
   const phase = await row<PhaseRow>(PHASE, [stepId], transaction);

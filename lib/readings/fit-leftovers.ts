@@ -2,7 +2,7 @@ import { rows } from "@/lib/db";
 import { fitStep } from "@/lib/readings/fit-step";
 
 /** Steps in hand, or closed within the last day, that have more readings than fits: their notification was lost with a process. */
-export async function fitLeftovers(): Promise<void> {
+export async function fitLeftovers({ now }: { now: Date }): Promise<void> {
   const steps = await rows<{ id: string }>(
     `select s.id from step s join fit_run r on r.campaign_id = s.campaign_id and r.current
       where s.kind = 'measure' and s.stored > 0 and (s.state in ('ready', 'out') or s.closed_at > now() - interval '1 day')
@@ -10,5 +10,5 @@ export async function fitLeftovers(): Promise<void> {
                      and not exists (select 1 from fit f where f.fit_run_id = r.id and f.step_id = s.id and f.idx = g.idx))
       limit 100`,
   );
-  for (const { id } of steps) await fitStep(id);
+  for (const { id } of steps) await fitStep({ stepId: id, now });
 }

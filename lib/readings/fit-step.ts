@@ -2,6 +2,7 @@ import type { Transaction } from "sequelize";
 import { change, inTransaction, row, rows } from "@/lib/db";
 import { flagBits } from "@/lib/numerics/resonance/flags";
 import type { Readout } from "@/lib/numerics/resonance/types";
+import { refreshPhase } from "@/lib/phases/close-phase";
 import { fitRecord } from "@/lib/readings/fit-record";
 import type { FitSettings } from "@/models/json";
 
@@ -11,18 +12,26 @@ type FitContext = { fitRunId: string; settings: FitSettings; readout: Readout; d
 
 /**
  * Fits what of a step has no fit yet in the campaign's current run. Any number of processes may do it at once:
- * the first result of a reading stays, and equal input gives an equal result. Returns how many were fitted.
+ * the first result of a reading stays, and equal input gives an equal result. What came too late for its phase is shown with
+ * it all the same. Returns how many were fitted.
  */
-export async function fitStep(stepId: string): Promise<number> {
+export async function fitStep({ stepId, now }: { stepId: string; now: Date }): Promise<number> {
   let fitted = 0;
   for (;;) {
     const n = await inTransaction((transaction) => fitBatch(transaction, stepId));
     fitted += n;
-    if (n < BATCH) return fitted;
+    if (n < BATCH) break;
   }
+  if (fitted > 0) await inTransaction((transaction) => refreshPhase(transaction, { stepId, now }));
+  return fitted;
 }
 
-export async function fitBatch(transaction: Transaction, stepId: string): Promise<number> {
+/** The same within a transaction, for whoever decides on the fits: what came after the last look is in them too. */
+export async function fitRest(transaction: Transaction, stepId: string): Promise<void> {
+  while ((await fitBatch(transaction, stepId)) === BATCH);
+}
+
+async function fitBatch(transaction: Transaction, stepId: string): Promise<number> {
   const context = await row<FitContext>(
     `select r.id as "fitRunId", r.settings, v.definition->>'readout' as readout, (s.params->'sweep'->>'dwellS')::float8 as "dwellS"
        from step s join fit_run r on r.campaign_id = s.campaign_id and r.current join protocol_version v on v.id = s.protocol_version_id

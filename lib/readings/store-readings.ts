@@ -43,7 +43,7 @@ export type Stored = {
  */
 export function storeReadings({ agent, session, stepId, body, now }: StoreReadings): Promise<Stored> {
   return inTransaction(async (transaction) => {
-    const rig = await noteContact(transaction, { agent, session, now });
+    const rig = await noteContact(transaction, { agent, session, now, anySession: true });
     const step = await findTarget(transaction, stepId, agent.rigId, body.lease);
     checkIndices(step, body.readings);
 

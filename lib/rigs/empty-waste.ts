@@ -10,7 +10,7 @@ import { Rig } from "@/models/rig";
 export async function emptyWaste({ by, now, rigId }: { by: Actor; now: Date; rigId: string }): Promise<{ wasteMl: number }> {
   demand(by, "record loads");
   return inTransaction(async (transaction) => {
-    const rig = await Rig.findByPk(rigId, { transaction, lock: transaction.LOCK.UPDATE });
+    const rig = await Rig.findByPk(rigId, { transaction, lock: transaction.LOCK.NO_KEY_UPDATE });
     if (!rig) throw notFound("rig");
     const heldMl = rig.wasteMl;
     await rig.update({ wasteMl: 0 }, { transaction });

@@ -8,7 +8,7 @@ export type OccupyingCampaign = { id: string; name: string; state: Campaign["sta
 /** The campaign that a rig runs, holds or is still parking, locked; undefined when the rig is free. */
 export function occupyingCampaign(rigId: string, transaction: Transaction): Promise<OccupyingCampaign | undefined> {
   return row<OccupyingCampaign>(
-    `select c.id, c.name, c.state, c.sensor_id as "sensorId" from campaign c where c.rig_id = $1 and ${OCCUPIES} for update`,
+    `select c.id, c.name, c.state, c.sensor_id as "sensorId" from campaign c where c.rig_id = $1 and ${OCCUPIES} for no key update`,
     [rigId],
     transaction,
   );

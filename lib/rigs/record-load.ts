@@ -31,7 +31,7 @@ type LotOnPort = { lotId: string; code: string; liquidId: string; liquidName: st
 export async function recordLoad({ by, now, rigId, port, lotId, volumeMl, how, confirm = false }: NewLoad): Promise<{ id: string }> {
   demand(by, "record loads");
   return inTransaction(async (transaction) => {
-    const rig = await Rig.findByPk(rigId, { transaction, lock: transaction.LOCK.UPDATE });
+    const rig = await Rig.findByPk(rigId, { transaction, lock: transaction.LOCK.NO_KEY_UPDATE });
     if (!rig) throw notFound("rig");
     if (rig.retiredAt) throw conflict(`${rig.name} is retired`);
     const standing = await bottleOn(rigId, port, transaction);
@@ -76,7 +76,7 @@ function bottleOn(rigId: string, port: number, transaction: Transaction): Promis
   return row<Partial<LotOnPort>>(
     `select lot.id as "lotId", lot.code, lot.liquid_id as "liquidId"
        from port p left join load l on l.id = p.load_id left join lot on lot.id = l.lot_id
-      where p.rig_id = $1 and p.number = $2 for update of p`,
+      where p.rig_id = $1 and p.number = $2 for no key update of p`,
     [rigId, port],
     transaction,
   );

@@ -53,7 +53,7 @@ export async function giveBackRig({ by, now, rigId, note }: GiveBack): Promise<{
 }
 
 async function lockedRig(rigId: string, transaction: Transaction): Promise<Rig> {
-  const rig = await Rig.findByPk(rigId, { transaction, lock: transaction.LOCK.UPDATE });
+  const rig = await Rig.findByPk(rigId, { transaction, lock: transaction.LOCK.NO_KEY_UPDATE });
   if (!rig) throw notFound("rig");
   return rig;
 }

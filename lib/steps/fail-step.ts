@@ -1,8 +1,8 @@
 import type { Transaction } from "sequelize";
 import { openAlarm } from "@/lib/alarms/open-alarm";
 import { openHold } from "@/lib/campaigns/open-hold";
+import { wakeCampaign } from "@/lib/campaigns/wake-campaign";
 import { change, row } from "@/lib/db";
-import { notify } from "@/lib/notify";
 import type { StepFailure } from "@/models/json";
 
 type FailStep = { step: { id: string; campaignId: string; rigId: string }; failure: StepFailure; now: Date };
@@ -40,8 +40,7 @@ export async function failStep(transaction: Transaction, { step, failure, now }:
     actionText: "The step was given up and the campaign holds.",
     mail: true,
   });
-  await change(`update campaign set needs_advance = true where id = $1`, [step.campaignId], transaction);
-  await notify(`campaign:${step.campaignId}`, transaction);
+  await wakeCampaign(transaction, step.campaignId);
 }
 
 /** "fill Brine B-35", as after "could not". */

@@ -4,9 +4,9 @@ import type { Agent } from "@/lib/agents/contract";
 import { protocolTime } from "@/lib/agents/rig-clock";
 import type { FinishBody } from "@/lib/agents/schema";
 import { countFailure, failuresAreOver } from "@/lib/alarms/count-failures";
+import { wakeCampaign } from "@/lib/campaigns/wake-campaign";
 import { change, inTransaction, row } from "@/lib/db";
 import { conflict, impossible, notFound } from "@/lib/errors";
-import { notify } from "@/lib/notify";
 import { failStep } from "@/lib/steps/fail-step";
 import { missingRanges, rangesInWords } from "@/lib/steps/missing";
 import { recordVolumes } from "@/lib/steps/record-volumes";
@@ -93,14 +93,14 @@ async function endDone(transaction: Transaction, step: LeasedStep, clock: Date, 
   );
   await recordVolumes(transaction, step.id);
   await failuresAreOver(transaction, { campaignId: step.campaignId, now });
-  await wakeCampaign(transaction, step);
+  await wakeCampaign(transaction, step.campaignId);
   return "done";
 }
 
 /** Counts nowhere: the readings stay and the step is given out again when the campaign goes on. */
 async function putBack(transaction: Transaction, step: LeasedStep): Promise<"ready"> {
   await change(`update step set state = 'ready', lease_expires_at = null, empty_attempts = 0 where id = $1`, [step.id], transaction);
-  await wakeCampaign(transaction, step);
+  await wakeCampaign(transaction, step.campaignId);
   return "ready";
 }
 
@@ -112,7 +112,9 @@ async function endFailed(
 ): Promise<"ready" | "failed"> {
   if (failure.code === "port-empty" || failure.code === "waste-full") {
     await change(`update step set state = 'ready', lease_expires_at = null where id = $1`, [step.id], transaction);
-    await waitForBottle(transaction, { step, failure, now });
+    const isOver = step.campaignState !== "running" && step.campaignState !== "held" && step.detour !== "park";
+    if (!isOver) await waitForBottle(transaction, { step, failure, now });
+    await wakeCampaign(transaction, step.campaignId);
     return "ready";
   }
   const emptyAttempts = step.stored > step.storedAtIssue ? 0 : step.emptyAttempts + 1;
@@ -127,13 +129,8 @@ async function endFailed(
     transaction,
   );
   await countFailure(transaction, { step, now });
-  await wakeCampaign(transaction, step);
+  await wakeCampaign(transaction, step.campaignId);
   return "ready";
-}
-
-async function wakeCampaign(transaction: Transaction, step: LeasedStep) {
-  await change(`update campaign set needs_advance = true where id = $1`, [step.campaignId], transaction);
-  await notify(`campaign:${step.campaignId}`, transaction);
 }
 
 function answer(step: LeasedStep, state: "done" | "ready" | "failed") {

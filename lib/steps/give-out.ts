@@ -5,6 +5,7 @@ import { LEASE_S } from "@/lib/agents/contract";
 import { protocolTime } from "@/lib/agents/rig-clock";
 import type { StepAnswer } from "@/lib/agents/schema";
 import { countFailure } from "@/lib/alarms/count-failures";
+import { wakeCampaign } from "@/lib/campaigns/wake-campaign";
 import { change, row } from "@/lib/db";
 import { notify } from "@/lib/notify";
 import type { StepPlan } from "@/lib/protocol/types";
@@ -38,13 +39,21 @@ export type OpenStep = {
   port: number | null;
   liquidName: string | null;
   maxAttempts: number;
+  /** A person works at the rig, or has an errand to run for this very step. */
+  blocked: boolean;
+  /** Lent a moment ago to the very session that asks again: the answer was lost, nothing was tried. */
+  answerLost: boolean;
 };
 
 const OPEN_STEP = `
   select s.id, s.campaign_id as "campaignId", c.rig_number as "campaignNumber", c.state as "campaignState", c.parking, s.rig_id as "rigId",
          s.sequence, s.kind, s.role, s.medium, s.slot, s.cycle, s.label, s.detour, s.params, s.state, s.attempt,
          s.empty_attempts as "emptyAttempts", s.stored, s.stored_at_issue as "storedAtIssue", s.done, slot.port, liquid.name as "liquidName",
-         coalesce((v.definition->>'maxAttempts')::int, 3) as "maxAttempts"
+         coalesce((v.definition->>'maxAttempts')::int, 3) as "maxAttempts",
+         exists (select 1 from operator_task t where t.campaign_id = c.id and t.step_id = s.id and t.state = 'open')
+           or exists (select 1 from hold h where h.campaign_id = c.id and h.reason = 'takeOver' and h.released_at is null) as blocked,
+         s.lease_expires_at > $2 and (select l.agent_session_id from step_lease l where l.lease = s.lease)
+           is not distinct from (select id from agent_session where rig_id = $1 and ended_at is null) as "answerLost"
     from step s
     join campaign c on c.id = s.campaign_id
     join protocol_version v on v.id = s.protocol_version_id
@@ -60,16 +69,16 @@ type GiveOut = { rig: RigRow; session?: string; now: Date };
 
 /** Gives the rig's open step out under a fresh lease, or nothing. A physical act whose outcome nobody knows is not given out again blindly. */
 export async function giveOut(transaction: Transaction, { rig, session, now }: GiveOut): Promise<StepAnswer | undefined> {
-  const step = await row<OpenStep>(OPEN_STEP, [rig.id], transaction);
+  const step = await row<OpenStep>(OPEN_STEP, [rig.id, now], transaction);
   if (!step) return undefined;
 
-  const wanted = step.campaignState === "running" || (step.detour === "park" && step.parking === "running");
-  if (!wanted) {
-    if (step.state === "out") await takeBack(transaction, step, now);
+  const parks = step.detour === "park" && step.parking === "running";
+  if (step.blocked || (step.campaignState !== "running" && !parks)) {
+    if (step.state === "out") await takeBack(transaction, step, rig, now);
     return undefined;
   }
   if (step.state === "out") {
-    const emptyAttempts = step.stored > step.storedAtIssue ? 0 : step.emptyAttempts + 1;
+    const emptyAttempts = step.stored > step.storedAtIssue ? 0 : step.emptyAttempts + (step.answerLost ? 0 : 1);
     if (emptyAttempts >= step.maxAttempts) {
       await failStep(transaction, {
         step,
@@ -79,9 +88,9 @@ export async function giveOut(transaction: Transaction, { rig, session, now }: G
       await countFailure(transaction, { step, now });
       return undefined;
     }
-    if (emptyAttempts > 0) {
+    if (emptyAttempts > step.emptyAttempts) {
       await countFailure(transaction, { step, now });
-      if (!(await stillWanted(transaction, step, now))) return undefined;
+      if (!(await stillWanted(transaction, step, rig, now))) return undefined;
     }
     step.emptyAttempts = emptyAttempts;
     if (await nobodyKnows(transaction, step, rig)) {
@@ -93,23 +102,24 @@ export async function giveOut(transaction: Transaction, { rig, session, now }: G
 }
 
 /** A limit on failed attempts may just have held or stopped the campaign. */
-async function stillWanted(transaction: Transaction, step: OpenStep, now: Date): Promise<boolean> {
+async function stillWanted(transaction: Transaction, step: OpenStep, rig: RigRow, now: Date): Promise<boolean> {
   const campaign = await row<{ state: string }>(`select state from campaign where id = $1`, [step.campaignId], transaction);
   if (campaign?.state === step.campaignState) return true;
-  await takeBack(transaction, { ...step, campaignState: campaign?.state ?? "stopped" }, now);
+  await takeBack(transaction, { ...step, campaignState: campaign?.state ?? "stopped" }, rig, now);
   return false;
 }
 
-/** An agent that lost its memory asks while its campaign is held or stopped: the step waits, or is over. */
-async function takeBack(transaction: Transaction, step: OpenStep, now: Date) {
-  const state = step.campaignState === "held" ? "ready" : "skipped";
+/** An agent that lost its memory asks while nothing may go out: the step waits, or is over. What it was pumping somebody looks at first. */
+async function takeBack(transaction: Transaction, step: OpenStep, rig: RigRow, now: Date) {
+  const isOver = step.campaignState !== "running" && step.campaignState !== "held" && step.detour !== "park";
+  if (!isOver && (await nobodyKnows(transaction, step, rig))) return askForALook(transaction, { step, now });
+  const state = isOver ? "skipped" : "ready";
   await change(
     `update step set state = $2, lease = null, lease_expires_at = null, closed_at = case when $2 = 'skipped' then $3::timestamptz end where id = $1`,
     [step.id, state, now],
     transaction,
   );
-  await change(`update campaign set needs_advance = true where id = $1`, [step.campaignId], transaction);
-  await notify(`campaign:${step.campaignId}`, transaction);
+  await wakeCampaign(transaction, step.campaignId);
 }
 
 /** A fill or rinse that was out, without a word of how far it came, by an agent that did not say it can repeat that kind. */

@@ -4,6 +4,7 @@ import { audit } from "@/lib/audit/record";
 import { lockCampaign, type CampaignRow } from "@/lib/campaigns/campaign-row";
 import { recordEvent } from "@/lib/campaigns/record-event";
 import { releaseHolds } from "@/lib/campaigns/release-hold";
+import { wakeCampaign } from "@/lib/campaigns/wake-campaign";
 import { change, inTransaction, row } from "@/lib/db";
 import { conflict, gone, impossible, notFound } from "@/lib/errors";
 import { formatDayTime } from "@/lib/format-time";
@@ -74,7 +75,7 @@ async function goOn(transaction: Transaction, { campaignId, holdId, instruction 
   if (!campaignId) return;
   await recordEvent(transaction, { campaignId, now, kind: "task", who: by.name, text: `Done: ${instruction}` });
   if (holdId) await releaseHolds(transaction, { campaignId, holdId, by, now });
-  await notify(`campaign:${campaignId}`, transaction);
+  await wakeCampaign(transaction, campaignId);
 }
 
 async function tellOfIt(transaction: Transaction, task: LockedTask, campaign: CampaignRow | undefined, by: Actor, note: string | undefined, now: Date): Promise<void> {
