@@ -1,5 +1,6 @@
 import type { Transaction } from "sequelize";
 import type { CampaignRow } from "@/lib/campaigns/campaign-row";
+import { checkBottle } from "@/lib/campaigns/check-bottle";
 import { openHold } from "@/lib/campaigns/open-hold";
 import { change, row } from "@/lib/db";
 import { notify } from "@/lib/notify";
@@ -47,6 +48,7 @@ export async function makeStep(transaction: Transaction, { campaign, cursor, pla
   if (measure && measure.role !== "find") await makePhase(transaction, { campaign, plan: measure, stepId: made.id, loadId: made.loadId });
   if (plan.kind === "ask") await ask(transaction, campaign, plan, made.id, now);
   else if (plan.kind !== "wait") await notify(`rig:${campaign.rigId}`, transaction);
+  if (plan.kind === "fill" || plan.kind === "rinse") await checkBottle(transaction, { campaign, slot: plan.slot, stepId: made.id, now });
   await notify(`changed:campaign:${campaign.id}`, transaction);
 }
 
