@@ -1,9 +1,8 @@
 import { z } from "zod";
+import type { DocumentedOperation, Json, Media, OpenApiDocument, Parameter } from "@/lib/http/openapi-types";
 import { EXAMPLES } from "@/lib/http/examples";
 import type { Operation } from "@/lib/http/operation";
 import { problemCodesOf } from "@/lib/http/problem-codes";
-
-type Json = Record<string, unknown>;
 
 const METHODS = ["GET", "POST", "PUT", "PATCH", "DELETE"] as const;
 type Method = (typeof METHODS)[number];
@@ -25,9 +24,9 @@ export function operationsOf(module: Record<string, unknown>): DocumentedRoute["
 export const pathOf = (file: string): string => `/api/${file.replace(/\/?route\.ts$/, "").replaceAll(/\[(\w+)\]/g, "{$1}")}`;
 
 /** OpenAPI 3.1 of all routes, from the schemas that validate them. */
-export function openApiDocument(routes: readonly DocumentedRoute[], server: string): Json {
-  const components: Record<string, unknown> = { Problem: PROBLEM };
-  const paths: Record<string, Json> = {};
+export function openApiDocument(routes: readonly DocumentedRoute[], server: string): OpenApiDocument {
+  const components: Record<string, Json> = { Problem: PROBLEM };
+  const paths: OpenApiDocument["paths"] = {};
   for (const { path, operations } of routes.toSorted((a, b) => (a.path < b.path ? -1 : 1))) {
     const entries = Object.entries(operations).map(([method, operation]) => [
       method.toLowerCase(),
@@ -57,13 +56,13 @@ export function openApiDocument(routes: readonly DocumentedRoute[], server: stri
   };
 }
 
-function describe(path: string, method: Method, operation: Operation, components: Record<string, unknown>): Json {
+function describe(path: string, method: Method, operation: Operation, components: Record<string, Json>): DocumentedOperation {
   const { access, summary, description, status } = operation;
   const id = operationId(method, path);
   const agent = access === "agent";
   const call = `${method} ${path}`;
   const schemaOf = (schema: z.ZodType, io: "input" | "output", part: string) => jsonSchema(schema, io, `${id}_${part}`, components);
-  const content = (schema: unknown, types: readonly string[]) => Object.fromEntries(types.map((type) => [type, { schema }]));
+  const content = (schema: Json, types: readonly string[]): Record<string, Media> => Object.fromEntries(types.map((type) => [type, { schema }]));
 
   const parameters = [
     ...pathParameters(path, operation, schemaOf),
@@ -100,13 +99,13 @@ function describe(path: string, method: Method, operation: Operation, components
   };
 }
 
-function withExamples(content: Record<string, { schema: unknown }>, examples: Readonly<Record<string, unknown>> = {}): Json {
+function withExamples(content: Record<string, Media>, examples: Readonly<Record<string, unknown>> = {}): Record<string, Media> {
   const named = Object.entries(examples).map(([summary, value]) => [summary.replaceAll(/\W+/g, "-"), { summary, value }]);
   if (named.length === 0) return content;
   return Object.fromEntries(Object.entries(content).map(([type, media]) => [type, { ...media, examples: Object.fromEntries(named) }]));
 }
 
-const header = (name: string, description: string, maxLength: number): Json => ({
+const header = (name: string, description: string, maxLength: number): Parameter => ({
   name,
   in: "header",
   required: false,
@@ -114,13 +113,13 @@ const header = (name: string, description: string, maxLength: number): Json => (
   schema: { type: "string", maxLength },
 });
 
-function pathParameters(path: string, { params }: Operation, schemaOf: (schema: z.ZodType, io: "input", part: string) => Json): Json[] {
+function pathParameters(path: string, { params }: Operation, schemaOf: (schema: z.ZodType, io: "input", part: string) => Json): Parameter[] {
   const given = params ? parametersOf(schemaOf(params, "input", "params"), "path") : [];
   const missing = [...path.matchAll(/\{(\w+)\}/g)].map(([, name]) => name).filter((name) => !given.some((parameter) => parameter.name === name));
-  return [...given, ...missing.map((name) => ({ name, in: "path", required: true, schema: { type: "string" } }))];
+  return [...given, ...missing.map((name): Parameter => ({ name, in: "path", required: true, schema: { type: "string" } }))];
 }
 
-function parametersOf(schema: Json, where: "path" | "query"): Json[] {
+function parametersOf(schema: Json, where: "path" | "query"): Parameter[] {
   const required = Array.isArray(schema.required) ? schema.required : [];
   return Object.entries((schema.properties ?? {}) as Record<string, Json>).map(([name, property]) => ({
     name,
@@ -137,7 +136,7 @@ const operationId = (method: string, path: string) =>
  * A zod schema as JSON Schema 2020-12. What the schema defines for itself (recursion, schemas with an id) moves to the
  * document's components, where references resolve.
  */
-function jsonSchema(schema: z.ZodType, io: "input" | "output", name: string, components: Record<string, unknown>): Json {
+function jsonSchema(schema: z.ZodType, io: "input" | "output", name: string, components: Record<string, Json>): Json {
   const made = z.toJSONSchema(schema, { io, unrepresentable: "any" }) as Json;
   const { $defs, ...own } = made;
   delete own.$schema;
@@ -154,9 +153,9 @@ function jsonSchema(schema: z.ZodType, io: "input" | "output", name: string, com
       }),
     );
   };
-  for (const [key, definition] of Object.entries(($defs ?? {}) as Json)) components[rename(key)] = moved(definition);
+  for (const [key, definition] of Object.entries(($defs ?? {}) as Json)) components[rename(key)] = moved(definition) as Json;
   if (!root) return moved(own) as Json;
-  components[name] = moved(own);
+  components[name] = moved(own) as Json;
   return { $ref: `#/components/schemas/${name}` };
 }
 

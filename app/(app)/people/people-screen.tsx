@@ -50,7 +50,7 @@ export function PeopleScreen({ myId, laboratory, now }: Props) {
           </>
         }
       >
-        <PeopleTable people={persons} myId={myId} zone={laboratory.timeZone} />
+        <PeopleTable people={persons} myId={myId} zone={laboratory.timeZone} now={now} />
         <More hasMore={people.hasNextPage} busy={people.isFetchingNextPage} onMore={() => void people.fetchNextPage()}>More people</More>
       </Section>
       <Section head="Invitations" note="A link for one person, good for seven days.">

@@ -7,7 +7,7 @@ import { DataTable, type TableColumn } from "@/components/ui/data-table";
 import { ConfirmDialog } from "@/components/ui/dialog";
 import { Problem } from "@/components/ui/states";
 import { capitalised } from "@/lib/format";
-import { formatDay } from "@/lib/format-time";
+import { formatAgo, formatDay, formatRecent } from "@/lib/format-time";
 import { fetchJson } from "@/lib/http/fetch-json";
 import { peopleOptions } from "@/lib/people/client";
 import { personAnswer, type PersonAnswer } from "@/lib/people/schema";
@@ -26,7 +26,7 @@ function useChangePerson() {
   });
 }
 
-export function PeopleTable({ people, myId, zone }: { people: readonly PersonAnswer[]; myId: string; zone: string }) {
+export function PeopleTable({ people, myId, zone, now }: { people: readonly PersonAnswer[]; myId: string; zone: string; now: string }) {
   const { mutate, isPending, error, reset } = useChangePerson();
   const [leaving, setLeaving] = useState<PersonAnswer>();
 
@@ -52,6 +52,8 @@ export function PeopleTable({ people, myId, zone }: { people: readonly PersonAns
           ),
       },
       { id: "email", head: "E-mail", slot: "w", cell: ({ email, closedAt }) => <span className={closedAt ? "text-ink3" : undefined}>{email}</span> },
+      { id: "mail", head: "By e-mail", slot: "x", cell: (person) => <span className={person.closedAt ? "text-ink3" : undefined}>{mailInWords(person)}</span> },
+      { id: "seen", head: "Seen", align: "right", slot: "x", cell: ({ id, seenAt, closedAt }) => <span className={closedAt ? "num text-ink3" : "num"}>{seenInWords({ seenAt, now, zone, isMe: id === myId })}</span> },
       {
         id: "since",
         head: "Since",
@@ -74,7 +76,7 @@ export function PeopleTable({ people, myId, zone }: { people: readonly PersonAns
         },
       },
     ],
-    [myId, zone, isPending, mutate],
+    [myId, zone, now, isPending, mutate],
   );
 
   return (
@@ -95,4 +97,17 @@ export function PeopleTable({ people, myId, zone }: { people: readonly PersonAns
       />
     </>
   );
+}
+
+function mailInWords({ notify, closedAt }: PersonAnswer): string {
+  if (closedAt) return "none";
+  return [notify.alarms && "alarms", notify.tasks && "tasks"].filter(Boolean).join(" and ") || "none";
+}
+
+const AN_HOUR_MS = 3_600_000;
+
+function seenInWords({ seenAt, now, zone, isMe }: { seenAt: string | null; now: string; zone: string; isMe: boolean }): string {
+  if (isMe) return "now";
+  if (!seenAt) return "never";
+  return Date.parse(now) - Date.parse(seenAt) < AN_HOUR_MS ? formatAgo(seenAt, now) : formatRecent(seenAt, zone, now);
 }
