@@ -94,7 +94,7 @@ describe("parking while something else holds", () => {
   });
 
   test("a rig heard again before anything was parked goes on with what is in the cell", async () => {
-    await make({ blocks: [fill, liquid, drain], limits: [{ id: "quiet", kind: "silence", afterS: 600, does: ["hold"], clearAt: 0.8, deadTimeS: 0 }] });
+    await make({ blocks: [fill, liquid, drain], limits: [{ id: "quiet", kind: "silence", afterS: 600, does: ["hold"], clearAt: 0.8, falseAlarmsPerYear: 1, maxTimes: 2 }] });
     const step = (await bench.run(inLiquid)) as StepAnswer;
     bench.pass(700);
     await watchSilence({ now: now() });
