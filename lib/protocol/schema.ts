@@ -1,6 +1,7 @@
 import { z } from "zod";
 import { blockSchema, type ParsedBlock } from "./block-schema";
 import { complete } from "./complete";
+import { issueWords } from "./issue-words";
 import { limitSchema } from "./limit-schema";
 import { checkStructure } from "./structure";
 import { searchSchema, type sweepSchema } from "./sweep-schema";
@@ -85,7 +86,7 @@ export function parseDefinition(
   makeId: () => string,
 ): { ok: true; definition: Definition } | { ok: false; errors: DefinitionError[] } {
   if (nestedTooDeep(input)) return { ok: false, errors: [{ path: "blocks", message: "Blocks are nested too deep" }] };
-  const parsed = definitionSchema.safeParse(input);
+  const parsed = definitionSchema.safeParse(input, { error: issueWords });
   if (parsed.success) return { ok: true, definition: complete(parsed.data, makeId) };
   const errors = parsed.error.issues.map(({ path, message }) => ({ path: path.map(String).join("."), message }));
   return { ok: false, errors };
