@@ -12,6 +12,9 @@ export const holdAnswer = z.object({
   by: z.string().optional(),
   openedAt: time,
   releasedAt: time.optional(),
+  /** The same by the rig's clock. */
+  since: time,
+  until: time.optional(),
   text: z.string(),
 });
 

@@ -60,16 +60,19 @@ export async function getCampaign({ campaignId, now }: { campaignId: string; now
 }
 
 async function readHolds(campaignId: string): Promise<CampaignAnswer["holds"]> {
-  const holds = await rows<{ id: string; reason: CampaignAnswer["holds"][number]["reason"]; by: string | null; openedAt: Date; releasedAt: Date | null; text: string }>(
-    `select h.id, h.reason, p.name as by, h.opened_at as "openedAt", h.released_at as "releasedAt", h.text
+  const holds = await rows<{ id: string; reason: CampaignAnswer["holds"][number]["reason"]; by: string | null; openedAt: Date; releasedAt: Date | null; since: Date; until: Date | null; text: string }>(
+    `select h.id, h.reason, p.name as by, h.opened_at as "openedAt", h.released_at as "releasedAt", coalesce(h.opened_clock, h.opened_at) as since,
+            coalesce(h.released_clock, h.released_at) as until, h.text
        from hold h left join person p on p.id = h.opened_by where h.campaign_id = $1 order by h.opened_at desc, h.id desc limit 200`,
     [campaignId],
   );
-  return holds.map(({ by, openedAt, releasedAt, ...hold }) => ({
+  return holds.map(({ by, openedAt, releasedAt, since, until, ...hold }) => ({
     ...hold,
     ...(by ? { by } : {}),
     openedAt: openedAt.toISOString(),
+    since: since.toISOString(),
     ...(releasedAt ? { releasedAt: releasedAt.toISOString() } : {}),
+    ...(until ? { until: until.toISOString() } : {}),
   }));
 }
 
