@@ -28,6 +28,13 @@ export const campaignChange = z.strictObject({
 
 export const queueBody = z.strictObject({ acknowledgements: z.array(z.string().min(1).max(200)).max(200).default([]) });
 
+export const moveBody = z.strictObject({ before: idSchema.nullable().describe("The queued campaign of the same rig that it is to stand before; null: at the end of the line") });
+export const movedAnswer = z.object({
+  id: z.string(),
+  /** Ids of the rig's queued campaigns, first first. */
+  line: z.array(z.string()),
+});
+
 export const campaignCreated = z.object({ id: z.string(), name: z.string() });
 
 const problem = z.object({ path: z.string(), severity: z.enum(["error", "warning"]), message: z.string() });

@@ -35,6 +35,7 @@ export const CAMPAIGN_EXAMPLES = {
   "POST /api/campaigns/check": { "Before it is made": campaign },
   "PATCH /api/campaigns/{id}": { "Another bottle": { slots: { sample: { port: 2, lotId: "9" } } } },
   "POST /api/campaigns/{id}/queue": { "Nothing to acknowledge": {}, "Cautions read": { acknowledgements: ["flammable:7"] } },
+  "POST /api/campaigns/{id}/move": { "Before another": { before: "118" }, "To the end of the line": { before: null } },
   "POST /api/campaigns/{id}/hold": { "With a reason": { why: "Lid opened for a look" } },
   "POST /api/campaigns/{id}/resume": { "Where it stood": {}, "The phase again": { from: "phase" } },
   "POST /api/campaigns/{id}/stop": { "For good": { why: "The wire is bent" } },
