@@ -59,6 +59,7 @@ export function FindField({ onFind }: FindFieldProps) {
     <form
       className="find"
       role="search"
+      aria-label="Find from any page"
       action="/find"
       onSubmit={(event) => {
         event.preventDefault();

@@ -34,7 +34,7 @@ export function Masthead({ now, zone, person, alarms, more = MORE_PLACES, demo, 
     <>
       <a className="skip-link" href="#main">Skip to the page</a>
       <PageKeys places={[...PLACES, ...more]} />
-      {demo && <div className="demo-notice">{demo}</div>}
+      {demo && <aside className="demo-notice" aria-label="Demo">{demo}</aside>}
       <header className="page-row masthead">
         <Link className="wordmark" href="/"><ReedMark />Longreed</Link>
         <div className="bar">

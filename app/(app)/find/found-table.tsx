@@ -5,7 +5,7 @@ import { DataTable, type TableColumn } from "@/components/ui/data-table";
 import type { Found } from "@/lib/find/schema";
 
 const COLUMNS: readonly TableColumn<Found>[] = [
-  { id: "name", head: "Name", slot: "a", cell: ({ name, href, retired }) => <Link href={href} className={retired ? "text-ink3" : "font-semibold"}>{name}</Link> },
+  { id: "name", head: "Name", slot: "a", width: 420, cell: ({ name, href, retired }) => <Link href={href} className={retired ? "text-ink3" : "font-semibold"}>{name}</Link> },
   { id: "note", head: "About", slot: "c", cell: ({ note }) => <span className="text-ink2">{note}</span> },
 ];
 

@@ -24,9 +24,9 @@ export default async function FindPage({ searchParams }: { searchParams: Promise
     <>
       <PageSentence>{sentenceOf(q, found)}</PageSentence>
       <PageRow className="mt-4">
-        <Form action="/find" role="search" className="flex max-w-130 items-end gap-2">
+        <Form action="/find" role="search" aria-label="Find with all answers" className="flex max-w-130 items-end gap-2">
           <TextField key={q} className="flex-1" type="search" name="q" label="Words" defaultValue={q} maxLength={100} autoFocus={q === ""} hint={found ? undefined : "A serial number, a lot, a name, or a campaign’s number as C-118"} />
-          {found && <Button type="submit">Find</Button>}
+          {found && <div className="mb-1"><Button type="submit">Find</Button></div>}
         </Form>
       </PageRow>
       {found && kindsOf(found).map((kind) => <FoundOfKind key={kind} kind={kind} q={q} found={found} />)}
