@@ -37,6 +37,13 @@ export async function findTokens({ by, limit, cursor }: PageQuery & { by: Actor 
   return cutPage(found.map(presentToken), limit, ({ id }) => [id]);
 }
 
+/** One's own, or as administrator anybody's. @throws AppError 404 for another's and for none alike. */
+export async function getToken({ by, tokenId }: { by: Actor; tokenId: string }): Promise<TokenAnswer> {
+  const token = await AccessToken.findByPk(tokenId);
+  if (!token || (token.personId !== by.id && !may(by.role, "people"))) throw notFound("token");
+  return presentToken(token);
+}
+
 /** One's own, or as administrator anybody's. Withdrawing again is a success. */
 export function withdrawToken({ by, now, tokenId }: { by: Actor; now: Date; tokenId: string }): Promise<TokenAnswer> {
   return inTransaction(async (transaction) => {

@@ -132,6 +132,7 @@ export const blockedTimePage = pageOf(blockedTimeAnswer);
 
 export const loadAnswer = z.object({
   id: z.string(),
+  rigId: z.string(),
   port: z.int(),
   how: z.enum(["replace", "topUp"]),
   volumeMl: z.number(),

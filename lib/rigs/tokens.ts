@@ -45,24 +45,30 @@ export async function revokeAgentToken({ by, now, rigId, tokenId }: Revocation):
 type TokenQuery = { by: Actor; rigId: string; limit: number; cursor?: string };
 type TokenRow = Omit<TokenAnswer, "createdAt" | "lastUsedAt" | "revokedAt"> & { createdAt: Date; lastUsedAt: Date | null; revokedAt: Date | null };
 
+const SELECT = `
+  select t.id, t.name, t.last4, p.name as "createdBy", t.created_at as "createdAt", t.last_used_at as "lastUsedAt", t.revoked_at as "revokedAt"
+    from agent_token t left join person p on p.id = t.created_by`;
+
 /** Tokens of a rig, the withdrawn ones too, newest first; of each only the last four signs. */
 export async function findAgentTokens({ by, rigId, limit, cursor }: TokenQuery): Promise<Page<TokenAnswer>> {
   demand(by, "agent tokens");
   const [id] = readCursor(cursor, z.tuple([idSchema])) ?? [null];
-  const found = await rows<TokenRow>(
-    `select t.id, t.name, t.last4, p.name as "createdBy", t.created_at as "createdAt", t.last_used_at as "lastUsedAt", t.revoked_at as "revokedAt"
-       from agent_token t left join person p on p.id = t.created_by
-      where t.rig_id = $1 and ($2::bigint is null or t.id < $2) order by t.id desc limit $3`,
-    [rigId, id, limit + 1],
-  );
+  const found = await rows<TokenRow>(`${SELECT} where t.rig_id = $1 and ($2::bigint is null or t.id < $2) order by t.id desc limit $3`, [rigId, id, limit + 1]);
   const { items, nextCursor } = cutPage(found, limit, (token) => [token.id]);
-  return {
-    items: items.map((token) => ({
-      ...token,
-      createdAt: token.createdAt.toISOString(),
-      lastUsedAt: token.lastUsedAt?.toISOString() ?? null,
-      revokedAt: token.revokedAt?.toISOString() ?? null,
-    })),
-    nextCursor,
-  };
+  return { items: items.map(present), nextCursor };
 }
+
+/** @throws AppError 404 when the rig has no such token. */
+export async function getAgentToken({ by, rigId, tokenId }: { by: Actor; rigId: string; tokenId: string }): Promise<TokenAnswer> {
+  demand(by, "agent tokens");
+  const found = await row<TokenRow>(`${SELECT} where t.rig_id = $1 and t.id = $2`, [rigId, tokenId]);
+  if (!found) throw notFound("token");
+  return present(found);
+}
+
+const present = (token: TokenRow): TokenAnswer => ({
+  ...token,
+  createdAt: token.createdAt.toISOString(),
+  lastUsedAt: token.lastUsedAt?.toISOString() ?? null,
+  revokedAt: token.revokedAt?.toISOString() ?? null,
+});
