@@ -15,8 +15,6 @@ export function issueWords(issue: z.core.$ZodRawIssue): string | undefined {
       if (issue.origin === "string") return `It has at most ${issue.maximum} characters`;
       if (issue.origin === "array") return `There are at most ${issue.maximum}`;
       return issue.inclusive === false ? `It has to be below ${issue.maximum}` : `It has to be at most ${issue.maximum}`;
-    case "unrecognized_keys":
-      return `There is no field ${issue.keys.join(", ")} here`;
     case "invalid_union":
       return "A value of another form is needed";
     case "invalid_value":

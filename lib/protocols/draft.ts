@@ -56,9 +56,8 @@ export function setAt<T extends Fields>(record: T, path: string, value: unknown)
   const [key, ...rest] = path.split(".");
   const inner = record[key];
   const next = rest.length === 0 ? value : setAt(isFields(inner) ? inner : {}, rest.join("."), value);
-  if (next !== undefined) return { ...record, [key]: next };
-  const { [key]: _, ...left } = record;
-  return left as T;
+  const left = next === undefined ? Object.entries(record).filter(([name]) => name !== key) : Object.entries({ ...record, [key]: next });
+  return Object.fromEntries(left) as T;
 }
 
 /** A copy with ids of its own, inner blocks too. */
