@@ -64,7 +64,8 @@ async function readOpenPhase({ stepId, discard }: SelectedPhase, fitRunId: strin
   const readings = await rows<{ idx: number; at: Date; f0Hz: number; q: number; f0StdHz: number | null; temperatureC: number | null; flags: number; excluded: boolean }>(
     `select r.idx, r.at, f.f0_hz as "f0Hz", f.q, f.f0_std_hz as "f0StdHz", r.temperature_c as "temperatureC", f.flags,
             exists (select 1 from exclusion e where e.step_id = r.step_id and e.idx = r.idx and e.undone_at is null) as excluded
-       from reading r join fit f on f.fit_run_id = $2 and f.step_id = r.step_id and f.idx = r.idx where r.step_id = $1 order by r.idx`,
+       from reading r cross join lateral (select * from fit where fit_run_id = $2 and step_id = $1 and idx = r.idx offset 0) f
+      where r.step_id = $1 order by r.idx`,
     [stepId, fitRunId],
   );
   const columns = emptyColumns(readings.length);

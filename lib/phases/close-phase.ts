@@ -77,7 +77,7 @@ async function readColumns(transaction: Transaction, { stepId, fitRunId }: Phase
   const readings = await rows<ReadingRow>(
     `select r.idx, r.at, r.temperature_c as "temperatureC", r.pressure_pa as "pressurePa", f.f0_hz as "f0Hz", f.q, f.f0_std_hz as "f0StdHz",
             coalesce(f.flags, r.flags) as flags
-       from reading r left join fit f on f.fit_run_id = $2 and f.step_id = r.step_id and f.idx = r.idx
+       from reading r left join lateral (select * from fit where fit_run_id = $2 and step_id = $1 and idx = r.idx offset 0) f on true
       where r.step_id = $1 order by r.idx`,
     [stepId, fitRunId],
     transaction,

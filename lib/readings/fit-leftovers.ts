@@ -6,8 +6,7 @@ export async function fitLeftovers({ now }: { now: Date }): Promise<void> {
   const steps = await rows<{ id: string }>(
     `select s.id from step s join fit_run r on r.campaign_id = s.campaign_id and r.current
       where s.kind = 'measure' and s.stored > 0 and (s.state in ('ready', 'out') or s.closed_at > now() - interval '1 day')
-        and exists (select 1 from reading g where g.step_id = s.id
-                     and not exists (select 1 from fit f where f.fit_run_id = r.id and f.step_id = s.id and f.idx = g.idx))
+        and s.stored > (select count(*) from fit f where f.fit_run_id = r.id and f.step_id = s.id)
       limit 100`,
   );
   for (const { id } of steps) await fitStep({ stepId: id, now });

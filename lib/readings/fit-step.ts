@@ -41,10 +41,12 @@ async function fitBatch(transaction: Transaction, stepId: string): Promise<numbe
   );
   if (!context) return 0;
   const waiting = await rows<{ idx: number; kind: number; flags: number; startHz: number | null; stopHz: number | null; points: number; data: Buffer }>(
+    // One look-up a reading, by the whole key: PostgreSQL takes a new step for one row and would go through it once for each.
     `select r.idx, r.kind, r.flags, w.start_hz as "startHz", w.stop_hz as "stopHz", w.points, w.data
-       from reading r join sweep w using (step_id, idx)
-      where r.step_id = $1 and not exists (select 1 from fit f where f.fit_run_id = $2 and f.step_id = $1 and f.idx = r.idx)
-      order by r.idx limit ${BATCH}`,
+       from (select idx from reading where step_id = $1 except select idx from fit where fit_run_id = $2 and step_id = $1 order by idx limit ${BATCH}) left_over
+       cross join lateral (select * from reading where step_id = $1 and idx = left_over.idx offset 0) r
+       cross join lateral (select * from sweep where step_id = $1 and idx = left_over.idx offset 0) w
+      order by r.idx`,
     [stepId, context.fitRunId],
     transaction,
   );

@@ -27,6 +27,11 @@ export class Kept {
     if (JSON.stringify(this.rigs()) !== JSON.stringify(entries)) writePrivately(this.file("demo-rigs.json"), entries);
   }
 
+  /** The server answers elsewhere than last time. */
+  moveTo(url: string): void {
+    this.writeRigs(this.rigs().map((entry) => ({ ...entry, url })));
+  }
+
   rigs(): RigEntry[] {
     return this.read("demo-rigs.json", z.array(z.custom<RigEntry>())) ?? [];
   }

@@ -30,7 +30,7 @@ const cleanWithPropanol: BlockInput[] = [
 ];
 
 /** The air reference comes at six in the morning, long after the drying: the cell is warm again by then. */
-const threeLiquids: DefinitionInput = {
+const twoLiquids: DefinitionInput = {
   ...common,
   name: "Wire, two liquids a day",
   baseline: { airReferences: 5 },
@@ -204,7 +204,7 @@ const staircase: DefinitionInput = {
 /** Ids of protocol versions. */
 export type Protocols = Record<keyof typeof definitions, string>;
 
-export const definitions = { threeLiquids, brine, cold, staircase };
+export const definitions = { twoLiquids, brine, cold, staircase };
 
 export async function seedProtocols({ by, now }: { by: Actor; now: Date }): Promise<Protocols> {
   const versions: Partial<Protocols> = {};
