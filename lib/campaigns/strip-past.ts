@@ -5,6 +5,7 @@ import type { StepPlan } from "@/lib/protocol/types";
 export type PastStep = {
   campaignId: string;
   kind: StepPlan["kind"];
+  role: "reference" | "check" | "sample" | "find" | null;
   medium: string | null;
   slot: string | null;
   cycle: number;
@@ -23,7 +24,7 @@ export type PastStep = {
 /** Steps that took time by the rig's clock, of all campaigns asked for, each campaign's in order. */
 export const readPastSteps = (campaignIds: readonly string[]): Promise<PastStep[]> =>
   rows<PastStep>(
-    `select s.campaign_id as "campaignId", s.kind, s.medium, s.slot, s.cycle, s.label, s.sequence, s.started_clock as "from",
+    `select s.campaign_id as "campaignId", s.kind, s.role, s.medium, s.slot, s.cycle, s.label, s.sequence, s.started_clock as "from",
             case when s.state in ('ready', 'out') then null else greatest(s.ended_clock, p.ended_at, s.started_clock) end as "to",
             (s.params->>'repeats')::int as repeats, s.stored, p.id as "phaseId", su.f0_mean as "f0Mean", su.f0_u as "f0U"
        from step s left join phase p on p.step_id = s.id
@@ -40,7 +41,7 @@ export function segmentKind(kind: StepPlan["kind"], medium: string | null): Stri
 }
 
 /** A step as the strip draws it; one under way reaches to the clock. */
-export function pastSegment({ kind, medium, slot, cycle, label, from, to, repeats, stored, phaseId, f0Mean, f0U }: PastStep, clock: Date): StripSegment {
+export function pastSegment({ kind, role, medium, slot, cycle, label, from, to, repeats, stored, phaseId, f0Mean, f0U }: PastStep, clock: Date): StripSegment {
   const of = medium ?? slot;
   return {
     kind: segmentKind(kind, medium),
@@ -49,7 +50,7 @@ export function pastSegment({ kind, medium, slot, cycle, label, from, to, repeat
     cycle,
     label,
     ...(of && of !== "air" ? { medium: of } : {}),
-    ...(kind === "measure" ? { repeats: repeats ?? 0, taken: stored } : {}),
+    ...(role === "find" ? { find: true } : kind === "measure" ? { repeats: repeats ?? 0, taken: stored } : {}),
     ...(phaseId ? { phaseId } : {}),
     ...(f0Mean !== null ? { f0: { mean: f0Mean, u: f0U } } : {}),
   };

@@ -9,6 +9,8 @@ export const stripSegment = z.object({
   from: time,
   to: time,
   planned: z.boolean().optional(),
+  /** The search for a resonance before a phase, not a phase. */
+  find: z.boolean().optional(),
   /** The slot whose liquid it is. */
   medium: z.string().optional(),
   cycle: z.int(),
@@ -28,7 +30,7 @@ export const stripAnswer = z.object({
   liquids: z.array(z.object({ slot: z.string(), name: z.string(), letter: z.string(), tint })),
   halt: z.object({ at: time, open: z.boolean() }).optional(),
   /** Air references against the baseline of their mount and set-point, or against the first while there is none, mHz. */
-  trace: z.array(z.object({ at: time, value: z.number(), u: z.number().optional() })),
+  trace: z.array(z.object({ at: time, phaseId: z.string(), value: z.number(), u: z.number().optional() })),
   /** Half-width of the `return` limit in the trace's unit. */
   limit: z.number().optional(),
 });

@@ -103,8 +103,9 @@ function stripOf(head: Head, now: Date, { past, holds, air, tracks, liquids }: P
     segments,
     liquids: liquids.map(({ slot, name, letter, tint }) => ({ slot, name, letter, tint })),
     ...(halted ? { halt: { at: halted.from.toISOString(), open: halted.to === null } } : {}),
-    trace: air.map(({ at, f0Hz, u, shiftU, baselineHz: baseline }) => ({
+    trace: air.map(({ at, phaseId, f0Hz, u, shiftU, baselineHz: baseline }) => ({
       at: at.toISOString(),
+      phaseId,
       value: (f0Hz - (baseline ?? air[0].f0Hz)) * 1000,
       ...((shiftU ?? u) === null ? {} : { u: ((shiftU ?? u) as number) * 1000 }),
     })),

@@ -29,7 +29,7 @@ export function BackToAir({ campaign }: { campaign: CampaignAnswer }) {
   return (
     <div>
       <DataTable
-        label="Back to air"
+        label="the air references"
         columns={columns}
         rows={shown}
         rowKey={({ phaseId }) => phaseId}

@@ -8,7 +8,7 @@ import { PhaseChip, TextureChip } from "@/components/ui/phase-chip";
 import { Section } from "@/components/ui/page";
 import { Empty, Loading, Problem } from "@/components/ui/states";
 import type { CampaignAnswer } from "@/lib/campaigns/answers";
-import { stripOptions } from "@/lib/campaigns/client";
+import { seriesOptions, stripOptions } from "@/lib/campaigns/client";
 import { campaignCode } from "@/lib/campaigns/code";
 import type { StripAnswer } from "@/lib/campaigns/strip-schema";
 import { formatDayTime } from "@/lib/format-time";
@@ -16,11 +16,14 @@ import { toStripInput } from "../../to-strip-input";
 
 type RunProps = { campaign: CampaignAnswer; window?: { from: string; to: string }; onWindow: (from: string, to: string) => void; onWhole: () => void };
 
+const TRACE_POINTS = 1500;
+
 /** The run strip with its reading line; a drag over it sets the window of all plots. */
 export function Run({ campaign, window, onWindow, onWhole }: RunProps) {
   const { data: strip, error, refetch } = useQuery(stripOptions(campaign.id));
   const silent = campaign.holds.find(({ reason, releasedAt }) => reason === "silence" && !releasedAt)?.since;
-  const input = useMemo(() => strip && toStripInput(strip, { campaignId: campaign.id, silentSince: silent }), [strip, campaign.id, silent]);
+  const { data: air } = useQuery({ ...seriesOptions(campaign.id, { medium: "air", quantity: "f0", points: TRACE_POINTS }), enabled: campaign.media.length > 0 });
+  const input = useMemo(() => strip && toStripInput(strip, { campaignId: campaign.id, silentSince: silent, air }), [strip, campaign.id, silent, air]);
   return (
     <Section head="Run" note="Height is the liquid level in the cell. Below it, the air reference against the baseline." legend={strip && <Legend strip={strip} />}>
       {error && <Problem error={error} onRetry={() => void refetch()} />}
