@@ -12,7 +12,7 @@ export type Slot = "a" | "b" | "c" | "d" | "w" | "x";
 
 export type TableColumn<Row> = {
   id: string;
-  /** The unit stands in the head: `Shift / mHz`. */
+  /** The unit stands in the head: `Shift / mHz`. Empty over verbs. */
   head: ReactNode;
   cell: (row: Row) => ReactNode;
   align?: "right";
@@ -59,7 +59,7 @@ export function DataTable<Row extends RowData>(props: DataTableProps<Row>) {
       columns.map((column) => ({
         id: column.id,
         accessorFn: (row: Row) => row,
-        header: () => column.head,
+        header: () => column.head || <span className="visually-hidden">What can be done</span>,
         cell: ({ row }: { row: { original: Row } }) => column.cell(row.original),
         enableSorting: Boolean(column.sortable && onSort),
         meta: { column: column as TableColumn<unknown> },

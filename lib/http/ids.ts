@@ -6,7 +6,8 @@ const LARGEST = "9223372036854775807";
 export const idSchema = z
   .string()
   .regex(/^[1-9]\d{0,18}$/, "is not an id")
-  .refine((id) => id.length < LARGEST.length || id <= LARGEST, "is not an id");
+  .refine((id) => id.length < LARGEST.length || id <= LARGEST, "is not an id")
+  .meta({ title: "id" });
 
 /** For addresses with one `[id]`. */
 export const idParams = z.object({ id: idSchema });

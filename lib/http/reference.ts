@@ -30,6 +30,7 @@ const HEADS: Readonly<Record<string, string>> = {
   mounts: "Sensors",
   lots: "Liquids",
   "blocked-times": "Rigs",
+  loads: "Rigs",
   audit: "Audit log",
   laboratory: "Laboratory",
   health: "Longreed itself",

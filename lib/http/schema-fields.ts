@@ -35,6 +35,7 @@ export function schemaFields(schema: Json, depth = 0): SchemaField[] {
 export function typeInWords(schema: Json): string {
   const ref = refOf(schema);
   if (ref) return ref;
+  if (typeof schema.title === "string") return schema.title;
   if (schema.const !== undefined) return JSON.stringify(schema.const);
   if (Array.isArray(schema.enum)) return schema.enum.map((value) => JSON.stringify(value)).join(" or ");
   const members = membersOf(schema);
@@ -49,7 +50,7 @@ export function typeInWords(schema: Json): string {
 export function rangeInWords(schema: Json): string {
   const parts = [span(lower(schema), upper(schema)), span(bound(schema.minLength, "at least "), bound(schema.maxLength, "at most "), " characters"), span(bound(schema.minItems, "at least "), bound(schema.maxItems, "at most "), " of them")];
   if (schema.default !== undefined) parts.push(`${JSON.stringify(schema.default)} unless given`);
-  if (typeof schema.pattern === "string" && !schema.format) parts.push(`matches ${schema.pattern}`);
+  if (typeof schema.pattern === "string" && !schema.format && !schema.title) parts.push(`matches ${schema.pattern}`);
   return parts.filter(Boolean).join(", ");
 }
 

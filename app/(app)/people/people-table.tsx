@@ -52,7 +52,7 @@ export function PeopleTable({ people, myId, zone, now }: { people: readonly Pers
           ),
       },
       { id: "email", head: "E-mail", slot: "w", cell: ({ email, closedAt }) => <span className={closedAt ? "text-ink3" : undefined}>{email}</span> },
-      { id: "mail", head: "By e-mail", slot: "x", cell: (person) => <span className={person.closedAt ? "text-ink3" : undefined}>{mailInWords(person)}</span> },
+      { id: "mail", head: "Mail of", slot: "x", cell: (person) => <span className={person.closedAt ? "text-ink3" : undefined}>{mailInWords(person)}</span> },
       { id: "seen", head: "Seen", align: "right", slot: "x", cell: ({ id, seenAt, closedAt }) => <span className={closedAt ? "num text-ink3" : "num"}>{seenInWords({ seenAt, now, zone, isMe: id === myId })}</span> },
       {
         id: "since",

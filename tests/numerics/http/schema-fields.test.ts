@@ -1,5 +1,6 @@
 import { describe, expect, test } from "vitest";
 import { z } from "zod";
+import { idSchema } from "@/lib/http/ids";
 import type { Json } from "@/lib/http/openapi-types";
 import { rangeInWords, schemaFields, typeInWords } from "@/lib/http/schema-fields";
 
@@ -9,6 +10,7 @@ describe("a type in words", () => {
   test.each([
     [z.string(), "text"],
     [z.iso.datetime(), "time"],
+    [idSchema, "id"],
     [z.int(), "whole number"],
     [z.number(), "number"],
     [z.boolean(), "true or false"],
@@ -26,6 +28,7 @@ describe("a range in words", () => {
   test.each([
     [z.int().min(1).max(99), "1 to 99"],
     [z.number().positive(), "above 0"],
+    [idSchema, ""],
     [z.number().min(-5), "at least -5"],
     [z.number().gt(0).lt(1), "above 0 and below 1"],
     [z.int(), ""],
