@@ -10,12 +10,26 @@ const BATCH = 200;
 
 type FitContext = { fitRunId: string; settings: FitSettings; readout: Readout; dwellS: number | undefined };
 
+/** Steps that this process is fitting: who asks again waits, then finds what is left, instead of fitting the same once more. */
+const inHand = new Map<string, Promise<unknown>>();
+
 /**
  * Fits what of a step has no fit yet in the campaign's current run. Any number of processes may do it at once:
  * the first result of a reading stays, and equal input gives an equal result. What came too late for its phase is shown with
  * it all the same. Returns how many were fitted.
  */
-export async function fitStep({ stepId, now }: { stepId: string; now: Date }): Promise<number> {
+export async function fitStep(asked: { stepId: string; now: Date }): Promise<number> {
+  const before = inHand.get(asked.stepId) ?? Promise.resolve();
+  const work = before.catch(() => undefined).then(() => fitAll(asked));
+  inHand.set(asked.stepId, work);
+  try {
+    return await work;
+  } finally {
+    if (inHand.get(asked.stepId) === work) inHand.delete(asked.stepId);
+  }
+}
+
+async function fitAll({ stepId, now }: { stepId: string; now: Date }): Promise<number> {
   let fitted = 0;
   for (;;) {
     const n = await inTransaction((transaction) => fitBatch(transaction, stepId));

@@ -7,7 +7,7 @@ import type { DemoRig } from "./rigs";
 
 const LOOK_EVERY_MS = 250;
 /** A campaign that stands still for this long is not going to end. */
-const PATIENCE_MS = 60_000;
+const PATIENCE_MS = 120_000;
 
 export type Standing = { state: string; repeats: number; cycle: number; planned: number };
 
