@@ -36,9 +36,13 @@ const QUEUES = [
   { name: "sweep", policy: "short", retryLimit: 1, expireInSeconds: 120, retentionSeconds: 3600, deleteAfterSeconds: 3600, notify: true },
 ] as const satisfies readonly ({ name: QueueName } & Parameters<PgBoss["createQueue"]>[1])[];
 
+/** Settings of single queues in place of the ones above; a policy cannot be changed. */
+export type QueueSettings = Partial<Record<QueueName, Omit<NonNullable<Parameters<PgBoss["updateQueue"]>[1]>, "name">>>;
+
 /** Makes the queues that are missing and brings the settings of the others up to date. @throws when one has another policy, which cannot be changed. */
-export async function createQueues(boss: PgBoss): Promise<void> {
-  for (const { name, policy, ...settings } of QUEUES) {
+export async function createQueues(boss: PgBoss, instead: QueueSettings = {}): Promise<void> {
+  for (const { name, policy, ...given } of QUEUES) {
+    const settings = { ...given, ...instead[name] };
     await boss.createQueue(name, { policy, ...settings });
     const stored = await boss.getQueue(name);
     if (stored?.policy !== policy) throw new Error(`queue ${name} has the policy ${stored?.policy}, it needs ${policy}`);

@@ -41,10 +41,12 @@ export function todaySentence({ rigs, now, openAlarms }: { rigs: readonly SaidRi
 }
 
 function measuringSentence(measuring: readonly SaidRig[], rigs: readonly SaidRig[]): string {
-  if (measuring.length === 0) return rigs.every(({ word }) => word === undefined) ? `${rigs.length === 1 ? `${rigs[0].name} is` : `All ${inWords(rigs.length)} rigs are`} free.` : "No rig is measuring.";
+  if (measuring.length === 0) return rigs.every(({ word }) => word === undefined) ? `${rigs.length === 1 ? `${rigs[0].name} is` : `${allOf(rigs)} are`} free.` : "No rig is measuring.";
   if (measuring.length === 1) return `${measuring[0].name} is measuring.`;
-  return measuring.length === rigs.length ? `All ${inWords(rigs.length)} rigs are measuring.` : `${capitalised(inWords(measuring.length))} rigs are measuring.`;
+  return measuring.length === rigs.length ? `${allOf(rigs)} are measuring.` : `${capitalised(inWords(measuring.length))} rigs are measuring.`;
 }
+
+const allOf = (rigs: readonly SaidRig[]) => (rigs.length === 2 ? "Both rigs" : `All ${inWords(rigs.length)} rigs`);
 
 function haltedSentence(halted: readonly SaidRig[]): string {
   if (halted.length === 0) return "";
