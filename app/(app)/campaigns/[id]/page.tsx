@@ -1,8 +1,10 @@
 import type { Metadata } from "next";
 import { notFound, permanentRedirect } from "next/navigation";
 import { Hydrated } from "@/components/hydrated";
-import { campaignOptions, stripOptions } from "@/lib/campaigns/client";
+import { campaignOptions, eventsOptions, notesOptions, stripOptions } from "@/lib/campaigns/client";
 import { campaignCode, campaignIdOf } from "@/lib/campaigns/code";
+import { findEvents } from "@/lib/campaigns/events";
+import { findNotes } from "@/lib/campaigns/notes";
 import { getCampaign } from "@/lib/campaigns/read";
 import { readStrip } from "@/lib/campaigns/strip";
 import { orNotFound } from "@/lib/or-not-found";
@@ -23,12 +25,19 @@ export default async function CampaignPage({ params }: Address) {
   if (!campaignId) notFound();
   if (part !== campaignCode(campaignId)) permanentRedirect(`/campaigns/${campaignCode(campaignId)}`);
   const now = new Date();
-  const [campaign, strip] = await orNotFound(Promise.all([getCampaign({ campaignId, now }), readStrip({ campaignId, now })]));
+  const campaign = await orNotFound(getCampaign({ campaignId, now }));
+  const [strip, events, notes] = await Promise.all([
+    readStrip({ campaignId, now }),
+    findEvents({ campaignId, query: { limit: 50 } }),
+    findNotes({ campaignId, query: { limit: 100 } }),
+  ]);
   return (
     <Hydrated
       data={[
         [campaignOptions(campaignId).queryKey, campaign],
         [stripOptions(campaignId).queryKey, strip],
+        [eventsOptions(campaignId, false).queryKey, { pages: [events], pageParams: [null] }],
+        [notesOptions(campaignId).queryKey, notes],
       ]}
     >
       <CampaignScreen campaignId={campaignId} role={role} />
