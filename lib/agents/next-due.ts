@@ -24,5 +24,13 @@ export async function nextDue(transaction: Transaction, rig: RigRow, now: Date):
     transaction,
   );
   const clock = rig.clock === "real" ? now : rig.reportedClock;
-  return start?.startAt && clock && start.startAt > clock ? start.startAt : undefined;
+  if (!start || !clock) return undefined;
+  const begins = start.startAt && start.startAt > clock ? start.startAt : clock;
+  const blocked = await row<{ to: Date }>(
+    `select upper(period) as "to" from maintenance_window where rig_id = $1 and withdrawn_at is null and period @> $2::timestamptz`,
+    [rig.id, begins],
+    transaction,
+  );
+  const due = blocked?.to ?? begins;
+  return due > clock ? due : undefined;
 }

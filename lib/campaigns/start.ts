@@ -7,11 +7,13 @@ import { notify } from "@/lib/notify";
 import { start } from "@/lib/protocol/interpreter";
 import { FIT_CODE_VERSION } from "@/lib/readings/fit-code-version";
 
-/** Whether a rig has no campaign on it, and which queued one would be next: highest priority, then longest in line, of those whose time has come. */
+/** Whether a rig has no campaign on it and is not blocked, and which queued one would be next: highest priority, then longest in line, of those whose time has come. */
 const NEXT_IN_LINE = `
   select c.id from campaign c join rig on rig.id = c.rig_id
    where c.rig_id = $1 and c.state = 'queued' and rig.retired_at is null and rig.abilities is not null
      and (c.start_at is null or c.start_at <= case when rig.clock = 'real' then $2::timestamptz else rig.reported_clock end)
+     and not exists (select 1 from maintenance_window w where w.rig_id = c.rig_id and w.withdrawn_at is null
+                      and w.period @> case when rig.clock = 'real' then $2::timestamptz else rig.reported_clock end)
      and not exists (select 1 from campaign other where other.rig_id = c.rig_id and other.origin = 'protocol' and not other.set_aside
                       and (other.state in ('running', 'held') or other.parking in ('wanted', 'running')))
    order by c.priority desc, c.queued_at, c.id

@@ -4,7 +4,7 @@ import { forecast, type Segment } from "@/lib/protocol/forecast";
 import type { Definition } from "@/lib/protocol/schema";
 import { trackKey, type Cursor, type RigAbilities } from "@/lib/protocol/types";
 
-const MOST_PLANNED = 400;
+export const MOST_PLANNED = 400;
 
 export type Track = { medium: string; setPointC: number | null; f0Hz: number; q: number };
 
@@ -32,7 +32,7 @@ export function plannedSegments({ definition, cursor, abilities, timeZone, nomin
   return [...rest, ...ahead.filter(({ kind }) => kind !== "ask" && kind !== "settle").map((segment) => planned(segment, time))];
 }
 
-function planned({ kind, medium, slot, cycle, label, startS, durationS }: Segment, time: (seconds: number) => string): StripSegment {
+function planned({ kind, role, medium, slot, cycle, label, startS, durationS }: Segment, time: (seconds: number) => string): StripSegment {
   const of = medium ?? slot;
   return {
     kind: segmentKind(kind, medium ?? null),
@@ -41,6 +41,7 @@ function planned({ kind, medium, slot, cycle, label, startS, durationS }: Segmen
     planned: true,
     cycle,
     label,
+    ...(role === "find" ? { find: true } : {}),
     ...(of && of !== "air" ? { medium: of } : {}),
   };
 }

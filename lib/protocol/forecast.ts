@@ -53,7 +53,8 @@ export function forecast(definition: Definition, cursor: Cursor, world: World, l
   return segments;
 }
 
-function resumed(definition: Definition, cursor: Cursor): Cursor {
+/** A held or parked campaign as it would be if somebody let it go on now. */
+export function resumed(definition: Definition, cursor: Cursor): Cursor {
   if (cursor.redirection || (!cursor.parked && !cursor.held)) return cursor;
   const to = redirect(definition, cursor, { kind: "resume", from: cursor.parked?.begun ? "phase" : "here" });
   return "impossible" in to ? cursor : to;

@@ -1,6 +1,7 @@
 import { infiniteQueryOptions, queryOptions } from "@tanstack/react-query";
 import { fetchJson } from "@/lib/http/fetch-json";
 import { blockedTimePage, contactsAnswer, loadPage, rigAnswer, rigPage, tokenPage, type RigAnswer } from "@/lib/rigs/schema";
+import { timelineAnswer } from "@/lib/rigs/timeline-schema";
 
 const LIVE_MS = 10_000;
 
@@ -28,6 +29,13 @@ export const contactsOptions = () =>
     queryKey: ["rigs", "contacts"],
     queryFn: ({ signal }) => fetchJson("/api/rigs/contacts", { answer: contactsAnswer, signal }),
     refetchInterval: 60_000,
+  });
+
+export const timelineOptions = () =>
+  queryOptions({
+    queryKey: ["rigs", "timeline"],
+    queryFn: ({ signal }) => fetchJson("/api/rigs/timeline", { answer: timelineAnswer, signal }),
+    refetchInterval: LIVE_MS,
   });
 
 export const tokensOptions = (rigId: string) =>

@@ -1,24 +1,34 @@
 "use client";
 
-import { useInfiniteQuery } from "@tanstack/react-query";
-import { LinkButton } from "@/components/ui/button";
+import { useInfiniteQuery, useQuery } from "@tanstack/react-query";
+import { useState } from "react";
+import { Button, LinkButton } from "@/components/ui/button";
 import { More } from "@/components/ui/more";
-import { PageSentence, PageTitle, Section } from "@/components/ui/page";
+import { PageRow, PageSentence, PageTitle, Section } from "@/components/ui/page";
 import { Empty, Loading, Problem } from "@/components/ui/states";
-import { capitalised, inWords, listOf, plural } from "@/lib/format";
+import { plural } from "@/lib/format";
 import { may, type Role } from "@/lib/permissions";
-import { rigsOptions } from "@/lib/rigs/client";
-import type { RigAnswer } from "@/lib/rigs/schema";
+import { rigsOptions, timelineOptions } from "@/lib/rigs/client";
+import type { LaneAnswer } from "@/lib/rigs/timeline-schema";
 import { AgentsTable } from "./agents-table";
+import { BlockTimeDialog } from "./block-time-dialog";
 import { RigBottles } from "./rig-bottles";
-import { RigsTable } from "./rigs-table";
-import { rigWord } from "./rig-word";
+import { rigsSentence } from "./rigs-sentence";
+import { useMoves } from "./use-moves";
+import { WhoRunsWhat } from "./who-runs-what";
 
-/** Who runs what, whether each agent is heard, and what stands on the ports. */
+const NONE: readonly LaneAnswer[] = [];
+
+/** Who runs what when, whether each agent is heard, and what stands on the ports. */
 export function RigsScreen({ role }: { role: Role }) {
-  const { data, error, refetch, hasNextPage, isFetchingNextPage, fetchNextPage, isRefetching, dataUpdatedAt } = useInfiniteQuery(rigsOptions());
+  const { data, error, refetch, hasNextPage, isFetchingNextPage, fetchNextPage, dataUpdatedAt } = useInfiniteQuery(rigsOptions());
+  const timeline = useQuery(timelineOptions());
+  const lanes = timeline.data?.items ?? NONE;
+  const moves = useMoves(lanes);
+  const [blocking, setBlocking] = useState(false);
   const rigs = data?.pages.flatMap(({ items }) => items);
-  const newRig = may(role, "edit rigs") && <LinkButton href="/rigs/new">New rig</LinkButton>;
+  const mayEdit = may(role, "edit rigs");
+  const newRig = mayEdit && <LinkButton href="/rigs/new">New rig</LinkButton>;
 
   if (!rigs || rigs.length === 0) {
     return (
@@ -36,6 +46,7 @@ export function RigsScreen({ role }: { role: Role }) {
       </>
     );
   }
+  const needsOf = new Map(lanes.map(({ rigId, needs }) => [rigId, needs]));
   return (
     <>
       <PageSentence
@@ -43,35 +54,23 @@ export function RigsScreen({ role }: { role: Role }) {
         actions={
           <>
             {may(role, "edit campaigns") && <LinkButton look="primary" href="/campaigns/new">Queue a campaign</LinkButton>}
+            {mayEdit && <Button onClick={() => setBlocking(true)}>Block time</Button>}
             {newRig}
           </>
         }
       >
-        {sentenceOf(rigs)}
+        {rigsSentence(moves.shown) || "Rigs"}
       </PageSentence>
-      {error && <Problem error={error} onRetry={() => void refetch()} />}
-      <Section head="What runs" note="Times are those of each rig.">
-        <RigsTable rigs={rigs} refreshing={isRefetching} />
-        <More hasMore={hasNextPage} busy={isFetchingNextPage} onMore={() => void fetchNextPage()}>More rigs</More>
-      </Section>
+      {(error ?? timeline.error) && <PageRow><Problem error={error ?? timeline.error} onRetry={() => void Promise.all([refetch(), timeline.refetch()])} /></PageRow>}
+      {timeline.data ? <WhoRunsWhat lanes={lanes} rigs={rigs} moves={moves} role={role} /> : !timeline.error && <PageRow><Loading label="what runs when" height={300} /></PageRow>}
       <Section head="Agents" note="Each line is ten minutes, its height the number of contacts. Silence shortens or removes it.">
         <AgentsTable rigs={rigs} asOf={dataUpdatedAt} />
       </Section>
-      <Section head="Bottles" note="Level now. Waste is what is in the container.">
-        <div className="grid gap-x-8 gap-y-6 grid-cols-[repeat(auto-fill,minmax(330px,1fr))]">
-          {rigs.map((rig) => <RigBottles key={rig.id} rig={rig} />)}
-        </div>
+      <Section head="Bottles" note="Level now. The notch is what the campaign on the rig and those in line still need. Waste is read the other way: the notch is what will still come.">
+        <div className="bottles">{rigs.map((rig) => <RigBottles key={rig.id} rig={rig} needs={needsOf.get(rig.id)} />)}</div>
+        <More hasMore={hasNextPage} busy={isFetchingNextPage} onMore={() => void fetchNextPage()}>More rigs</More>
       </Section>
+      {blocking && <BlockTimeDialog rigs={rigs} onClose={() => setBlocking(false)} />}
     </>
   );
-}
-
-function sentenceOf(rigs: readonly RigAnswer[]): string {
-  const measuring = rigs.filter((rig) => rigWord(rig) === "Measuring").length;
-  const halted = rigs.filter((rig) => rigWord(rig) === "Halted").map(({ name }) => name);
-  const free = rigs.filter(({ campaign }) => !campaign).map(({ name }) => name);
-  const parts = [`${capitalised(inWords(measuring))} ${plural(measuring, "rig is", "rigs are")} measuring`];
-  if (free.length > 0) parts.push(`${free.length > 3 ? `${inWords(free.length)} are` : `${listOf(free)} ${plural(free.length, "is", "are")}`} free`);
-  const needs = halted.length > 0 ? ` ${listOf(halted)} halted and ${plural(halted.length, "needs", "need")} a person.` : "";
-  return `${parts.join("; ")}.${needs}`;
 }
