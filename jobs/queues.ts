@@ -43,7 +43,7 @@ export type QueueSettings = Partial<Record<QueueName, Omit<NonNullable<Parameter
 export async function createQueues(boss: PgBoss, instead: QueueSettings = {}): Promise<void> {
   for (const { name, policy, ...given } of QUEUES) {
     const settings = { ...given, ...instead[name] };
-    await boss.createQueue(name, { policy, ...settings });
+    await boss.createQueue(name, { policy, ...given });
     const stored = await boss.getQueue(name);
     if (stored?.policy !== policy) throw new Error(`queue ${name} has the policy ${stored?.policy}, it needs ${policy}`);
     await boss.updateQueue(name, settings);

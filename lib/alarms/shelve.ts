@@ -15,7 +15,7 @@ const LONGEST_MS = 7 * 86_400_000;
 type Shelve = { by: Actor; alarmId: string; until: Date | null; note?: string; now: Date };
 
 /** Lays an alarm aside until a time, over whatever state it is in: it is not counted and sends no mail. Null brings it back now. */
-export function shelveAlarm({ by, alarmId, until, note, now }: Shelve): Promise<AlarmAnswer> {
+export async function shelveAlarm({ by, alarmId, until, note, now }: Shelve): Promise<AlarmAnswer> {
   if (until && until <= now) throw impossible("An alarm can be shelved until a time to come only");
   if (until && until.getTime() - now.getTime() > LONGEST_MS) throw impossible("An alarm can be shelved for seven days at most; clear it with a note instead");
   return inTransaction(async (transaction) => {

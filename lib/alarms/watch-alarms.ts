@@ -26,13 +26,13 @@ async function endShelves(transaction: Transaction, now: Date): Promise<void> {
   if (due.length > 0) await notify("changed:alarms", transaction);
 }
 
-/** Only of those that were mailed when they opened: a limit that does not mail stays quiet. */
+/** Only of those that were mailed when they opened, as a limit that does not mail stays quiet, and not soon after other mail of it. */
 async function remind(transaction: Transaction, now: Date): Promise<void> {
   const due = await rows<{ id: string }>(
     `select a.id from alarm a
       where a.state = 'unacknowledged' and a.shelved_until is null and a.opened_at <= $1
         and exists (select 1 from notification n where n.alarm_id = a.id and n.kind = 'alarm')
-        and not exists (select 1 from notification n where n.alarm_id = a.id and n.kind = 'reminder')
+        and not exists (select 1 from notification n where n.alarm_id = a.id and (n.kind = 'reminder' or n.created_at > $1))
       for no key update of a skip locked`,
     [new Date(now.getTime() - REMIND_AFTER_MS)],
     transaction,
