@@ -42,6 +42,16 @@ export class DraftSaver {
   };
   readonly get = (): SaverState => this.state;
 
+  /** A protocol is made at once, so that a reload finds it under its address; from then on a pause in typing is waited for. */
+  private get delayMs(): number {
+    return this.state.id === null ? 0 : (this.options.delayMs ?? 800);
+  }
+
+  /** A save is under way. */
+  get isSaving(): boolean {
+    return this.atWork !== undefined;
+  }
+
   /** What is not stored yet; undefined when everything is. */
   get unsaved(): Draft | undefined {
     return this.wanted;
@@ -52,7 +62,7 @@ export class DraftSaver {
     this.wanted = draft;
     if (this.state.status === "conflict") return;
     this.tell({ ...this.state, status: this.atWork ? "saving" : "waiting" });
-    this.plan(this.options.delayMs ?? 800);
+    this.plan(this.delayMs);
   }
 
   /** Saves now what waits, and answers when nothing is under way. */
@@ -91,7 +101,7 @@ export class DraftSaver {
   private save(): Promise<void> {
     this.atWork ??= this.send().finally(() => {
       this.atWork = undefined;
-      if (this.wanted && this.state.status !== "conflict" && !this.isClosed) this.plan(this.state.status === "failed" ? (this.options.retryMs ?? 5000) : (this.options.delayMs ?? 800));
+      if (this.wanted && this.state.status !== "conflict" && !this.isClosed) this.plan(this.state.status === "failed" ? (this.options.retryMs ?? 5000) : this.delayMs);
     });
     return this.atWork;
   }

@@ -51,7 +51,7 @@ export function BlockFields({ kind, isCheck }: { kind: string; isCheck: boolean 
 
 function SlotInput() {
   const { slots } = useFields();
-  return <TextInput path="slot" label="Slot" hint="a name; each inside For each" suggestions={[...slots, "each"]} />;
+  return <TextInput path="slot" label="Slot" hint="a name, or each in For each" suggestions={[...slots, "each"]} />;
 }
 
 function MeasureFields({ isCheck }: { isCheck: boolean }) {
@@ -64,7 +64,7 @@ function MeasureFields({ isCheck }: { isCheck: boolean }) {
         <SelectInput
           path="role"
           label="As"
-          options={[{ value: "", label: `as usual: ${usual}` }, { value: "reference", label: "reference" }, { value: "check", label: "check" }, { value: "sample", label: "sample" }]}
+          options={[{ value: "", label: `usual: ${usual}` }, { value: "reference", label: "reference" }, { value: "check", label: "check" }, { value: "sample", label: "sample" }]}
         />
       )}
       <NumberInput path="repeats" label="Repeats" hint="1 to 100 000" />

@@ -17,6 +17,7 @@ import { AddStep } from "./add-step";
 import { EditorContext, type Editor } from "./editor-context";
 import { LimitsSection } from "./limits-section";
 import { ListSection } from "./list-section";
+import { MistakesPanel } from "./mistakes-panel";
 import { ProtocolFields } from "./protocol-fields";
 import { SaveDialog } from "./save-dialog";
 import { SavedNote } from "./saved-note";
@@ -45,6 +46,7 @@ export function EditorScreen({ zone, ...begun }: EditorScreenProps) {
   const openAt = (path: string) => {
     const { id, field } = ownerOf(draft, path);
     if (id) setOpen({ id, field: field || undefined });
+    else document.querySelector<HTMLElement>(`[data-field="${CSS.escape(field)}"]`)?.focus();
   };
   const places = errors.length;
   return (
@@ -89,7 +91,7 @@ export function EditorScreen({ zone, ...begun }: EditorScreenProps) {
           </div>
           <aside className="stays">
             {estimate.error && !estimate.data ? <Problem error={estimate.error} onRetry={() => void estimate.refetch()} /> : <EstimatePanel estimate={estimate.data} busy={estimate.isFetching} rigName={rigName} sensorSerial={sensorSerial} stale={!definition} />}
-            {places > 0 && <MistakesPanel errors={errors} onOpen={openAt} />}
+            {places > 0 && <MistakesPanel draft={draft} errors={errors} onOpen={openAt} />}
             {estimate.data && definition && <ProblemsPanel estimate={estimate.data} rigName={rigName} onOpen={openAt} />}
           </aside>
         </div>
@@ -99,20 +101,6 @@ export function EditorScreen({ zone, ...begun }: EditorScreenProps) {
       <div className="visually-hidden" role="status" aria-live="polite">{said}</div>
       {saves && <SaveDialog draft={draft} saver={saver} version={version} onRefused={refuse} onClose={() => setSaves(false)} />}
     </EditorContext>
-  );
-}
-
-function MistakesPanel({ errors, onOpen }: { errors: readonly { path: string; message: string }[]; onOpen: (path: string) => void }) {
-  return (
-    <section aria-live="polite">
-      <h3>Before it can be saved</h3>
-      <ul className="mistakes">
-        {errors.slice(0, 12).map(({ path, message }) => (
-          <li key={`${path} ${message}`}><button type="button" className="text-left underline decoration-rule3 underline-offset-[3px]" onClick={() => onOpen(path)}>{message}</button>.</li>
-        ))}
-      </ul>
-      {errors.length > 12 && <p className="caption">And {errors.length - 12} more.</p>}
-    </section>
   );
 }
 

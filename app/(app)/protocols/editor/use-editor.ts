@@ -64,12 +64,13 @@ function useKeptOnLeaving(saver: DraftSaver): void {
     const onHide = () => {
       const { id, savedAt, status } = saver.get();
       const draft = saver.unsaved;
-      if (!draft || status === "conflict") return;
+      // While another save is under way, a second one would make the protocol twice or meet the first: `warn` has asked to wait.
+      if (!draft || saver.isSaving || status === "conflict") return;
       const [path, method, body] = id === null ? ["/api/protocols/drafts", "POST", { draft }] : [`/api/protocols/${id}`, "PATCH", { draft, draftBasedOn: savedAt }];
       void fetch(path, { method, keepalive: true, headers: { "Content-Type": "application/json" }, body: JSON.stringify(body) }).catch(() => undefined);
     };
     const warn = (event: BeforeUnloadEvent) => {
-      if (saver.unsaved && ["failed", "conflict"].includes(saver.get().status)) event.preventDefault();
+      if (saver.unsaved && saver.get().status !== "waiting") event.preventDefault();
     };
     window.addEventListener("pagehide", onHide);
     window.addEventListener("beforeunload", warn);
