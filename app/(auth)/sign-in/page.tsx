@@ -21,10 +21,10 @@ export default async function SignInPage({ searchParams }: { searchParams: Promi
           <SignInForm next={next} demo={demo} />
         </div>
       </main>
-      <div className="page-row ring-down">
+      <aside className="page-row ring-down" aria-label="How a wire rings down">
         <div className="margin">A tungsten wire of 0.1&nbsp;mm and 1&nbsp;kHz let go in air, in water, and in an oil of 8&nbsp;mPa·s.</div>
         <div className="body"><RingDown /></div>
-      </div>
+      </aside>
     </>
   );
 }
