@@ -4,6 +4,7 @@ import { useState } from "react";
 import { Button, LinkButton } from "@/components/ui/button";
 import type { CampaignAnswer } from "@/lib/campaigns/answers";
 import { address } from "@/lib/campaigns/client";
+import { campaignCode } from "@/lib/campaigns/code";
 import { may, type Role } from "@/lib/permissions";
 import { GoOnDialog } from "./go-on-dialog";
 import { PauseDialog, SetAsideDialog, StopDialog, TakeOverDialog } from "./verb-dialogs";
@@ -25,7 +26,7 @@ export function CampaignVerbs({ campaign, role }: { campaign: CampaignAnswer; ro
 
   return (
     <>
-      {state === "draft" && may(role, "edit campaigns") && <LinkButton look="primary" href={`${again}&draft=${id}`}>Queue</LinkButton>}
+      {state === "draft" && may(role, "edit campaigns") && <LinkButton look="primary" href={`/campaigns/new?draft=${campaignCode(id)}`}>Queue</LinkButton>}
       {state === "held"
         ? may(role, "resume campaigns") && <Button look="primary" notPossible={can.goOn} onClick={() => setAsking("goOn")}>Go on</Button>
         : (heldOrRuns || state === "queued") && may(role, "hold campaigns") && <Button look="primary" notPossible={can.pause} onClick={() => setAsking("pause")}>Pause</Button>}

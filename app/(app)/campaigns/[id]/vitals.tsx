@@ -7,8 +7,13 @@ import { endOf } from "../end-words";
 export function vitalsOf(campaign: CampaignAnswer): Vital[] {
   const { cycle, progress, air, now: asOf } = campaign;
   const end = endOf(campaign, Date.parse(asOf));
+  const held = campaign.state === "held";
   return [
-    { label: campaign.endedAt ? "How it ended" : "Now", value: nowWords(campaign), note: campaign.step?.state === "ready" && campaign.state === "running" ? "waits for the agent" : undefined },
+    {
+      label: campaign.endedAt ? "How it ended" : "Now",
+      value: held ? campaign.word : nowWords(campaign),
+      note: held ? nowWords(campaign) : campaign.step?.state === "ready" && campaign.state === "running" ? "waits for the agent" : undefined,
+    },
     {
       label: "Cycle",
       value: progress.cycles === null ? formatCount(cycle) : `${formatCount(cycle)} of ${formatCount(progress.cycles)}`,

@@ -30,7 +30,7 @@ function QueueForm({ choices, personName, now, given }: QueueScreenProps & { cho
   const { draft, change, body } = useDraft(choices, given);
   const check = useQuery(checkOptions(useLater(body, 300)));
   const [acknowledged, setAcknowledged] = useState<Acknowledged>({});
-  const queue = useQueue();
+  const queue = useQueue(given.draftId);
 
   const checked = body ? check.data : undefined;
   const findings = findingsOf({ draft, choices, checked, error: check.error });

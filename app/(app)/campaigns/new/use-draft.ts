@@ -17,14 +17,19 @@ export type Draft = {
   name: string;
 };
 
-export type Given = Pick<Draft, "protocolVersionId" | "sensorId" | "rigId">;
+/** What the address names, or all of a draft that was left before. */
+export type Given = Pick<Draft, "protocolVersionId" | "sensorId" | "rigId"> & Partial<Draft> & { draftId?: string };
 
 /** The campaign as it is being put together, and as the API takes it once nothing is missing. */
 export function useDraft(choices: Choices, given: Given) {
-  const [draft, setDraft] = useState<Draft>(() => bound({ ...given, slots: {}, notBefore: "", priority: "0", name: "" }, choices));
+  const [draft, setDraft] = useState<Draft>(() => bound(begun(given), choices));
   const change = (changes: Partial<Draft>) => setDraft((before) => bound({ ...before, ...changes }, choices));
   const body = useMemo(() => bodyOf(draft, choices), [draft, choices]);
   return { draft, change, body };
+}
+
+function begun({ draftId: _draftId, slots = {}, notBefore = "", priority = "0", name = "", ...given }: Given): Draft {
+  return { ...given, slots, notBefore, priority, name };
 }
 
 /** Slots follow the protocol and the rig; a sensor that is mounted brings its rig, and a rig the sensor that is mounted there. */

@@ -8,11 +8,11 @@ import type { CampaignInput } from "@/lib/campaigns/draft-schema";
 
 type ToQueue = { draft: CampaignInput; acknowledgements: readonly string[] };
 
-/** Saves the draft once and queues it. When queueing is refused, the next try changes the same draft. */
-export function useQueue() {
+/** Saves the draft once and queues it. When queueing is refused, the next try changes the same draft; so does going on with one that was left. */
+export function useQueue(keptId?: string) {
   const router = useRouter();
   const queries = useQueryClient();
-  const draftId = useRef<string>(undefined);
+  const draftId = useRef<string | undefined>(keptId);
   const save = async (draft: CampaignInput) => {
     const { id } = await saveDraft(draft, draftId.current);
     draftId.current = id;
