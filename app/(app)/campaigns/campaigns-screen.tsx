@@ -24,7 +24,6 @@ export function CampaignsScreen({ role }: { role: Role }) {
   const spanMs = Math.max(SHORTEST_SPAN_MS, ...Object.values(spans));
   const mayQueue = may(role, "edit campaigns");
   const queue = mayQueue && <LinkButton look="primary" href="/campaigns/new">Queue a campaign</LinkButton>;
-  const importing = mayQueue && <LinkButton href="/import">Import earlier data</LinkButton>;
 
   if (!overview) return <><PageTitle>Campaigns</PageTitle><Section label="Campaigns">{error ? <Problem error={error} onRetry={() => void refetch()} /> : <Loading label="the campaigns" height={320} />}</Section></>;
   if (overview.total === 0) {
@@ -33,8 +32,8 @@ export function CampaignsScreen({ role }: { role: Role }) {
         <PageTitle>Campaigns</PageTitle>
         <Section label="Campaigns">
           <Empty
-            note={`A campaign is one run of a protocol version with one sensor on one rig.${mayQueue ? " Write a protocol first, or bring in data that were measured before." : ""}`}
-            actions={mayQueue && <><LinkButton look="primary" href="/protocols">Write a protocol</LinkButton>{importing}</>}
+            note={`A campaign is one run of a protocol version with one sensor on one rig.${mayQueue ? " Write a protocol first." : ""}`}
+            actions={mayQueue && <LinkButton look="primary" href="/protocols">Write a protocol</LinkButton>}
           >
             No campaign has been made here yet.
           </Empty>
