@@ -44,7 +44,7 @@ export function CampaignsScreen({ role }: { role: Role }) {
   const tables = PLACES.filter(({ place }) => (filter.state ? place === filter.state : place !== "draft" || overview.places.draft > 0) && (overview.places[place] > 0 || filter.state === place));
   return (
     <>
-      <PageSentence margin={<><b className="text-ink">{overview.total} {overview.total === 1 ? "campaign" : "campaigns"}</b>, {overview.shown} shown</>} actions={<>{queue}{importing}</>}>
+      <PageSentence margin={<><b className="text-ink">{overview.total} {overview.total === 1 ? "campaign" : "campaigns"}</b>, {overview.shown} shown</>} actions={queue}>
         {overviewSentence(overview.words)}
       </PageSentence>
       <PageRow className="mt-4">
