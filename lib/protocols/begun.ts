@@ -1,10 +1,20 @@
 import { randomBytes } from "node:crypto";
+import type { Actor } from "@/lib/people/actor";
+import { type Definition, parseDefinition } from "@/lib/protocol/schema";
 import { type Draft, readDraft } from "@/lib/protocols/draft";
+import { estimateProtocol } from "@/lib/protocols/estimate";
 import { getProtocol, getVersion } from "@/lib/protocols/read";
+import type { EstimateAnswer } from "@/lib/protocols/schema";
 
 const makeId = () => randomBytes(5).toString("hex");
 
 export type BegunDraft = { protocolId: string | null; draft: Draft; draftSavedAt: string | null; version: number };
+
+/** The estimate that the editor begins with, and the definition it is of; undefined while the draft has mistakes. */
+export async function estimateOfDraft({ by, now, draft }: { by: Actor; now: Date; draft: Draft }): Promise<{ definition: Definition; estimate: EstimateAnswer } | undefined> {
+  const parsed = parseDefinition(draft, makeId);
+  return parsed.ok ? { definition: parsed.definition, estimate: await estimateProtocol({ by, now, definition: parsed.definition }) } : undefined;
+}
 
 /** What the editor goes on from: the stored draft, else the newest version. */
 export async function begunFrom(protocolId: string): Promise<BegunDraft & { name: string; isRetired: boolean }> {

@@ -1,6 +1,6 @@
 import Link from "next/link";
 import type { TableColumn } from "@/components/ui/data-table";
-import { formatVolume, NO_VALUE } from "@/lib/format";
+import { formatVolume, NO_VALUE, plural } from "@/lib/format";
 import { formatDuration, formatPlusMinus, formatRecent } from "@/lib/format-time";
 import type { ProtocolItem } from "@/lib/protocols/schema";
 
@@ -18,7 +18,7 @@ export const columnsIn = (zone: string, now: string): TableColumn<ProtocolItem>[
     ),
   },
   { id: "versions", head: "Versions", slot: "x", align: "right", sortable: true, cell: ({ versions }) => (versions === 0 ? "none yet" : versions) },
-  { id: "campaigns", head: "Campaigns", slot: "d", align: "right", sortable: true, cell: ({ campaigns }) => campaigns },
+  { id: "campaigns", head: "Campaigns", slot: "d", align: "right", sortable: true, cell: ({ campaigns }) => <>{campaigns}<span className="hidden phone:inline"> {plural(campaigns, "campaign")}</span></> },
   {
     id: "takes",
     head: "Takes",

@@ -59,8 +59,8 @@ function StepRow({ block, list, slots, isCheck = false }: StepRowProps) {
     <li className={classNames("step", isOpen && "being-edited")}>
       <StepChip block={block} />
       <div className="words">{own}</div>
-      <span className={classNames("amount num", seconds === undefined && "none")}>{seconds === undefined ? NO_VALUE : formatDuration(seconds)}</span>
-      <span className={classNames("amount num", ml === 0 && "none")}>{ml > 0 ? formatVolume(ml) : NO_VALUE}</span>
+      {list === "blocks" && <span className={classNames("amount num", seconds === undefined && "none")}>{seconds === undefined ? NO_VALUE : formatDuration(seconds)}</span>}
+      {list === "blocks" && <span className={classNames("amount num", ml === 0 && "none")}>{ml > 0 ? formatVolume(ml) : NO_VALUE}</span>}
     </li>
   );
 }

@@ -7,7 +7,8 @@ import { choicesOptions } from "@/lib/campaigns/draft-client";
 import { readLaboratory } from "@/lib/laboratory";
 import { currentPerson } from "@/lib/people/current-person";
 import { may, whoMay } from "@/lib/permissions";
-import { begunNew } from "@/lib/protocols/begun";
+import { begunNew, estimateOfDraft } from "@/lib/protocols/begun";
+import { estimateOptions } from "@/lib/protocols/client";
 import { PROTOCOL_EXAMPLES } from "@/lib/protocols/examples";
 import { EditorScreen } from "../editor/editor-screen";
 import { Beginnings } from "./beginnings";
@@ -15,9 +16,9 @@ import { Beginnings } from "./beginnings";
 export const metadata: Metadata = { title: "New protocol" };
 
 export default async function NewProtocolPage({ searchParams }: { searchParams: Promise<{ from?: string | string[] }> }) {
-  const { role } = await currentPerson();
+  const person = await currentPerson();
   const crumbs = [{ label: "Protocols", href: "/protocols" }, { label: "New protocol" }];
-  if (!may(role, "edit protocols"))
+  if (!may(person.role, "edit protocols"))
     return (
       <>
         <PageTitle crumbs={crumbs}>New protocol</PageTitle>
@@ -33,10 +34,16 @@ export default async function NewProtocolPage({ searchParams }: { searchParams: 
         <Section head="Begin from" note="Takes and waste are reckoned for a wire of 2 kHz on a rig like most."><Beginnings now={new Date()} zone={(await readLaboratory()).timeZone} /></Section>
       </>
     );
-  const [choices, { timeZone }] = await Promise.all([findChoices(), readLaboratory()]);
+  const begun = begunNew(example ?? { name: "", readout: "velocity", blocks: [], limits: [] });
+  const [choices, { timeZone }, begins] = await Promise.all([findChoices(), readLaboratory(), estimateOfDraft({ by: person, now: new Date(), draft: begun.draft })]);
   return (
-    <Hydrated data={[[choicesOptions().queryKey, choices]]}>
-      <EditorScreen key={String(from)} {...begunNew(example ?? { name: "", readout: "velocity", blocks: [], limits: [] })} zone={timeZone} />
+    <Hydrated
+      data={[
+        [choicesOptions().queryKey, choices],
+        ...(begins ? [[estimateOptions({ definition: begins.definition, rigId: "", sensorId: "" }).queryKey, begins.estimate] as const] : []),
+      ]}
+    >
+      <EditorScreen key={String(from)} {...begun} zone={timeZone} />
     </Hydrated>
   );
 }
