@@ -12,7 +12,7 @@ export const PLACES: readonly { place: Place; head: string; end: string; sort: s
     place: "on-rigs",
     head: "On the rigs",
     end: "Expected end",
-    sort: "start",
+    sort: "oldest",
     note: "Each strip begins at its own start; all are to one scale, a line a week. The last column is the newest air reference against the baseline, on its limit.",
   },
   { place: "in-line", head: "In line", end: "Expected end", sort: "line", note: "Priority orders this list." },
