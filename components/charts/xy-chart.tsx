@@ -28,6 +28,8 @@ export type XyChartProps = {
   yLimits?: readonly { value: number; label: string }[];
   /** Dashed verticals: a flash point less 5 °C, the end of a mount. */
   xLimits?: readonly { value: number; label: string }[];
+  /** Arrows that stand on the x axis: set-points in use. */
+  xMarks?: readonly { value: number; label: string }[];
   /** Stretches of x that nothing is claimed for: hatched. */
   outside?: readonly [number, number][];
   xRange?: [number, number];
@@ -43,7 +45,7 @@ export type XyChartProps = {
 const TOP = 22;
 
 /** Any quantity against another: points with bars, models with their band, limits, and what is not claimed. */
-export function XyChart({ label, sentence, file, x, y, series, yLimits = [], xLimits = [], outside = [], xRange, yRange, logX, logY, zero, height = 168, equal }: XyChartProps) {
+export function XyChart({ label, sentence, file, x, y, series, yLimits = [], xLimits = [], xMarks = [], outside = [], xRange, yRange, logX, logY, zero, height = 168, equal }: XyChartProps) {
   const [ref, width] = useWidth();
   const [cursor, setCursor] = useState<number>();
   const left = 50;
@@ -105,6 +107,9 @@ export function XyChart({ label, sentence, file, x, y, series, yLimits = [], xLi
                 <path className="limit-line" d={`M${placeX(value)} ${TOP}V${bottom}`} />
                 <text className="halo" x={placeX(value) - 5} y={TOP + 10} textAnchor="end">{text}</text>
               </g>
+            ))}
+            {xMarks.map(({ value, label: text }) => (
+              <path key={text} d={`M${placeX(value)} ${bottom}v-9m-3.5 3.5l3.5 -3.5l3.5 3.5`} fill="none" stroke="var(--ink)" strokeWidth="1.6"><title>{text}</title></path>
             ))}
             {here && <circle cx={placeX(here.point.x)} cy={placeY(here.point.y)} r="6.5" fill="none" stroke="var(--ink)" strokeWidth="1.6" />}
             <QuantityLabel quantity={y} x={left} y={10} />

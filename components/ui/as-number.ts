@@ -16,3 +16,6 @@ export const asDay = (end: "begins" | "ends") => ({
   setValueAs: (typed: unknown): unknown =>
     typeof typed === "string" && /^\d{4}-\d{2}-\d{2}$/.test(typed) ? `${typed}T${end === "begins" ? "00:00:00" : "23:59:59"}Z` : typed === "" ? undefined : typed,
 });
+
+/** The same, with `null` for nothing: a change that empties a field. */
+export const orNull = ({ setValueAs }: { setValueAs: (typed: unknown) => unknown }) => ({ setValueAs: (typed: unknown): unknown => setValueAs(typed) ?? null });

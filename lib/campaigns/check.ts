@@ -2,6 +2,7 @@ import type { Transaction } from "sequelize";
 import { readBindings, readChosen, type BoundSlot, type Chosen, type SlotBindings } from "@/lib/campaigns/bindings";
 import { findCautions, type Caution } from "@/lib/campaigns/cautions";
 import type { CampaignProblem, CheckAnswer } from "@/lib/campaigns/draft-schema";
+import { forecastInLine } from "@/lib/campaigns/forecast-in-line";
 import { planCampaign, type Plan } from "@/lib/campaigns/plan";
 import { traceLiquids } from "@/lib/campaigns/trace-liquids";
 import { formatVolume } from "@/lib/format";
@@ -12,9 +13,10 @@ type Draft = { protocolVersionId: string; sensorId: string; rigId: string; slots
 export type Checked = { chosen: Chosen; bound: BoundSlot[]; plan: Plan; problems: CampaignProblem[]; cautions: Caution[] };
 
 /** What a campaign would take and what stands against it, for the screen that queues it. Nothing is stored. */
-export async function checkCampaign({ by, now, ...draft }: Draft & { by: Actor; now: Date }): Promise<CheckAnswer> {
+export async function checkCampaign({ by, now, priority = 0, ...draft }: Draft & { by: Actor; now: Date; priority?: number }): Promise<CheckAnswer> {
   demand(by, "edit campaigns");
-  const { bound, plan, problems, cautions } = await checkDraft({ ...draft, now });
+  const checked = await checkDraft({ ...draft, now });
+  const { bound, plan, problems, cautions } = checked;
   const { seconds, lowS, highS, steps, repeats, cycles, wasteMl, people } = plan;
   return {
     estimate: { seconds, lowS, highS, steps, repeats, cycles, wasteMl, people },
@@ -26,6 +28,7 @@ export async function checkCampaign({ by, now, ...draft }: Draft & { by: Actor; 
     })),
     problems,
     cautions,
+    forecast: await forecastInLine({ checked, rigId: draft.rigId, startAt: draft.startAt, priority, now }),
   };
 }
 

@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { idSchema } from "@/lib/http/ids";
+import { laneAnswer, laneCampaign } from "@/lib/rigs/timeline-schema";
 import { instant, time, words } from "@/lib/schema";
 
 const port = z.int().min(1).max(99);
@@ -55,6 +56,8 @@ export const checkAnswer = z.object({
   slots: z.array(z.object({ slot: z.string(), neededMl: z.number(), port: z.int().nullable(), loadedMl: z.number().nullable() })),
   problems: z.array(problem),
   cautions: z.array(caution),
+  /** Its rig's next weeks with it in them (its id there is empty), and when it needs a person. */
+  forecast: z.object({ lane: laneAnswer, from: time, end: laneCampaign.shape.end, people: z.array(z.object({ at: time, label: z.string() })) }).nullable(),
 });
 
 /** What a campaign can be made of; the newest 500 of each. */

@@ -1,6 +1,6 @@
 import { infiniteQueryOptions, queryOptions } from "@tanstack/react-query";
 import { fetchJson } from "@/lib/http/fetch-json";
-import { liquidAnswer, liquidPage, lotPage, type LiquidAnswer } from "@/lib/liquids/schema";
+import { liquidAnswer, liquidPage, lotPage, usedInPage, type LiquidAnswer, type UsedInAnswer } from "@/lib/liquids/schema";
 
 type LiquidPage = { items: LiquidAnswer[]; nextCursor: string | null };
 
@@ -26,6 +26,20 @@ export const lotsOfLiquidOptions = (liquidId: string) =>
   queryOptions({
     queryKey: ["liquids", "lots", liquidId],
     queryFn: ({ signal }) => fetchJson(`/api/liquids/${liquidId}/lots?limit=200`, { answer: lotPage, signal }),
+  });
+
+type UsedInPage = { items: UsedInAnswer[]; nextCursor: string | null };
+
+/** Campaigns with the liquid, newest first, a page at a time. */
+export const usedInOptions = (liquidId: string) =>
+  infiniteQueryOptions({
+    queryKey: ["liquids", "used-in", liquidId],
+    queryFn: ({ signal, pageParam }): Promise<UsedInPage> => {
+      const query = new URLSearchParams({ limit: "20", ...(pageParam && { cursor: pageParam }) });
+      return fetchJson(`/api/liquids/${liquidId}/campaigns?${query}`, { answer: usedInPage, signal });
+    },
+    initialPageParam: null as string | null,
+    getNextPageParam: ({ nextCursor }: UsedInPage) => nextCursor,
   });
 
 /** Lots that a person may put on a port or bind to a slot, newest first. */

@@ -1,4 +1,5 @@
 import { z } from "zod";
+import { campaignState } from "@/lib/campaigns/schema";
 import { pageOf, pageQuery } from "@/lib/http/paging";
 import { idSchema } from "@/lib/http/ids";
 import { instant, time, words } from "@/lib/schema";
@@ -148,10 +149,31 @@ export const liquidAnswer = z.object({
   retiredAt: time.nullable(),
 });
 
+/** A campaign that has a lot of the liquid bound to a slot. */
+export const usedInAnswer = z.object({
+  campaignId: z.string(),
+  name: z.string(),
+  state: campaignState,
+  /** The screen's word. */
+  word: z.string(),
+  slot: z.string(),
+  lotId: z.string(),
+  lotCode: z.string(),
+  fills: z.int(),
+  usedMl: z.number(),
+  /** Where it was measured; of a campaign that is not over also where it will be. */
+  setPointsC: z.array(z.number()),
+  /** Newest phase value in it. */
+  f0: z.object({ mean: z.number(), u: z.number().nullable() }).nullable(),
+});
+
+export const usedInPage = pageOf(usedInAnswer);
+
 export const liquidPage = pageOf(liquidAnswer);
 export const liquidCreated = z.object({ id: z.string(), letter: z.string() });
 
 export type LiquidAnswer = z.output<typeof liquidAnswer>;
 export type LiquidQuery = z.output<typeof liquidQuery>;
+export type UsedInAnswer = z.output<typeof usedInAnswer>;
 export type LotAnswer = z.output<typeof lotAnswer>;
 export type LotQuery = z.output<typeof lotQuery>;

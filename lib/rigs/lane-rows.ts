@@ -48,7 +48,7 @@ export const readOpenCampaigns = (rigIds: readonly string[]): Promise<OpenCampai
 
 export type BlockedRow = { id: string; rigId: string; from: Date; to: Date; why: string };
 
-/** Blocked times that have not passed by a day before the present. */
+/** Blocked times that end after a time, in the order in which they begin. */
 export const readBlocked = (rigIds: readonly string[], since: Date): Promise<BlockedRow[]> =>
   rows<BlockedRow>(
     `select id, rig_id as "rigId", lower(period) as "from", upper(period) as "to", why from maintenance_window

@@ -29,7 +29,7 @@ export async function readTimeline({ now, rigId, draft }: Ask): Promise<Timeline
     findCampaigns({ query: campaignQuery.parse({ state: "on-rigs", limit: 200, rigId }), now }),
     readStrips({ campaignIds: onRigs, now }),
     slotLiquids(open.map(({ id }) => id)),
-    readBlocked(rigIds, new Date(now.getTime() - BACK_MS)),
+    readBlocked(rigIds, new Date(Math.min(now.getTime(), ...rigs.map((rig) => (rig.now ?? now).getTime())) - BACK_MS)),
   ]);
   const itemOf = new Map(items.items.map((item) => [item.id, item]));
   const stripOf = new Map(strips.items.map(({ campaignId, strip }) => [campaignId, strip]));
@@ -102,7 +102,7 @@ function lane({ rig, nowMs, open, blocked, liquids, itemOf, stripOf }: Parts): L
     from: iso(window.fromMs),
     to: iso(window.toMs),
     campaigns,
-    blocked: blocked.filter(({ from }) => from.getTime() < window.toMs).map(({ id, from, to, why }) => ({ id, from: from.toISOString(), to: to.toISOString(), why })),
+    blocked: blocked.filter(({ from, to }) => from.getTime() < window.toMs && to.getTime() > window.fromMs).map(({ id, from, to, why }) => ({ id, from: from.toISOString(), to: to.toISOString(), why })),
     freeFrom: isKnown ? iso(last) : null,
     needs: needsOf(open, still, liquids),
   };

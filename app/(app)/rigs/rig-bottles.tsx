@@ -1,14 +1,15 @@
 import Link from "next/link";
 import { Vessel } from "@/components/vessel";
-import { formatVolume } from "@/lib/format";
+import { capitalised, formatVolume, listOf, plural } from "@/lib/format";
 import type { RigAnswer } from "@/lib/rigs/schema";
 import type { LaneAnswer } from "@/lib/rigs/timeline-schema";
 
-const ITEM = "w-[62px] text-[11.5px] leading-[15px] text-ink2";
+const ITEM = "w-[76px] text-[11.5px] leading-[15px] text-ink2";
 
 /** The bottles of a rig and its waste, drawn as vessels, with a notch at what the campaign on it and those in line still need. */
 export function RigBottles({ rig, needs }: { rig: RigAnswer; needs: LaneAnswer["needs"] | undefined }) {
   const { ports, wasteMl, wasteCapacityMl } = rig;
+  const empty = ports.filter(({ bottle }) => bottle === null);
   const addsMl = needs && needs.wasteMl + needs.inLineWasteMl;
   return (
     <div>
@@ -16,15 +17,12 @@ export function RigBottles({ rig, needs }: { rig: RigAnswer; needs: LaneAnswer["
       <ul className="flex flex-wrap gap-x-1.5 gap-y-4">
         {ports.map(({ number, bottle, remainingMl }) => {
           const neededMl = neededOf(needs, number);
+          if (!bottle) return null;
           return (
             <li key={number} className={ITEM}>
-              {bottle ? (
-                <Vessel liquid={bottle} ml={remainingMl} fullMl={Math.max(bottle.fullMl, neededMl)} stillMl={neededMl > 0 ? neededMl : undefined} label={`Port ${number}, ${bottle.liquidName}`} />
-              ) : (
-                <span className="block h-16 w-[34px] border-b border-dashed border-rule3" />
-              )}
-              <b className="mt-1 block truncate text-ink" title={bottle?.liquidName}>{bottle?.liquidName ?? `Port ${number}`}</b>
-              <span className="num block">{bottle ? formatVolume(remainingMl) : "nothing"}</span>
+              <Vessel liquid={bottle} ml={remainingMl} fullMl={Math.max(bottle.fullMl, neededMl)} stillMl={neededMl > 0 ? neededMl : undefined} label={`Port ${number}, ${bottle.liquidName}`} />
+              <b className="mt-1 block truncate text-ink" title={bottle.liquidName}>{bottle.liquidName}</b>
+              <span className="num block">{formatVolume(remainingMl)}</span>
               {neededMl > 0 && <Amount word="needs" ml={neededMl} strong={neededMl > remainingMl} />}
             </li>
           );
@@ -36,6 +34,8 @@ export function RigBottles({ rig, needs }: { rig: RigAnswer; needs: LaneAnswer["
           {addsMl !== undefined && addsMl > 0 && <Amount word="adds" ml={addsMl} strong={wasteCapacityMl !== null && wasteMl + addsMl > wasteCapacityMl} />}
         </li>
       </ul>
+      {empty.length > 0 && <p className="small mt-2 text-ink2">{capitalised(plural(empty.length, "port"))} {listOf(empty.map(({ number }) => String(number)))}: nothing</p>}
+      {empty.map(({ number }) => neededOf(needs, number) > 0 && <p key={number} className="small"><b>Port {number} needs {formatVolume(neededOf(needs, number))}</b></p>)}
     </div>
   );
 }

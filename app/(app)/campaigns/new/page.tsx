@@ -35,7 +35,6 @@ export default async function NewCampaignPage({ searchParams }: { searchParams: 
     <Hydrated data={[[choicesOptions().queryKey, choices]]}>
       <QueueScreen
         personName={person.name}
-        now={new Date().toISOString()}
         given={kept ?? { protocolVersionId: known(version, choices.versions), sensorId: known(sensor, choices.sensors), rigId: known(rig, choices.rigs) }}
       />
     </Hydrated>

@@ -2,6 +2,7 @@
 
 import { useQuery } from "@tanstack/react-query";
 import { useState } from "react";
+import { HATCH } from "@/components/strip/tint";
 import { Button } from "@/components/ui/button";
 import { PageTitle, Section } from "@/components/ui/page";
 import { Loading, Problem } from "@/components/ui/states";
@@ -17,7 +18,7 @@ import { useDraft, type Given } from "./use-draft";
 import { useQueue } from "./use-queue";
 import { WhatAndWhere } from "./what-and-where";
 
-type QueueScreenProps = { personName: string; now: string; given: Given };
+type QueueScreenProps = { personName: string; given: Given };
 
 export function QueueScreen(props: QueueScreenProps) {
   const { data: choices, error, refetch } = useQuery(choicesOptions());
@@ -26,7 +27,7 @@ export function QueueScreen(props: QueueScreenProps) {
 }
 
 /** Forecast first, then what and where, then what must be fixed, then cautions. Nothing leaves this page before it is queued. */
-function QueueForm({ choices, personName, now, given }: QueueScreenProps & { choices: Choices }) {
+function QueueForm({ choices, personName, given }: QueueScreenProps & { choices: Choices }) {
   const { draft, change, body } = useDraft(choices, given);
   const check = useQuery(checkOptions(useLater(body, 300)));
   const [acknowledged, setAcknowledged] = useState<Acknowledged>({});
@@ -53,8 +54,18 @@ function QueueForm({ choices, personName, now, given }: QueueScreenProps & { cho
       >
         {draft.name.trim() || "New campaign"}
       </PageTitle>
-      <Section head="Forecast" note="What it takes on this rig with this sensor.">
-        <Forecast checked={checked} busy={check.isFetching} rig={rig} now={now} notBefore={draft.notBefore} />
+      <Section
+        head="Forecast"
+        note={`What ${rig?.name ?? "the rig"} does over the next weeks with this campaign in it. Rings are where a person is needed.`}
+        legend={
+          <>
+            <span><svg width="28" height="10" aria-hidden="true"><path d="M1 5H27M1 1v8M27 1v8" stroke="var(--ink2)" strokeWidth="1.25" /></svg>likely range</span>
+            <span><svg width="26" height="14" aria-hidden="true"><rect width="26" height="14" fill={HATCH} /></svg>blocked</span>
+            <span><svg width="14" height="12" aria-hidden="true"><circle cx="7" cy="6" r="4.5" fill="none" stroke="var(--ink)" strokeWidth="1.6" /></svg>person needed</span>
+          </>
+        }
+      >
+        <Forecast checked={checked} busy={check.isFetching} rig={rig} />
       </Section>
       <div className="grid grid-cols-[minmax(0,1fr)_372px] gap-x-10 narrow:grid-cols-1">
         <div>

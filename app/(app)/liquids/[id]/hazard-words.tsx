@@ -5,7 +5,7 @@ import type { LiquidAnswer } from "@/lib/liquids/schema";
 
 export function HazardWords({ hazards: { statements, flashPointC, waste, notWith } }: { hazards: LiquidAnswer["hazards"] }) {
   return (
-    <>
+    <div>
       <dl className="grid max-w-[52em] grid-cols-[150px_minmax(0,1fr)] gap-x-4 phone:grid-cols-1">
         <Row name="Hazard statements">
           {statements.length === 0
@@ -26,7 +26,7 @@ export function HazardWords({ hazards: { statements, flashPointC, waste, notWith
         <Row name="Not to be mixed with">{notWith.length > 0 ? notWith.join("; ") : "Nothing recorded."}</Row>
       </dl>
       <p className="caption">Local rules and the laboratory’s safety officer decide what may stand on a bench and how long.</p>
-    </>
+    </div>
   );
 }
 

@@ -3,9 +3,10 @@ import { notFound } from "next/navigation";
 import { Hydrated } from "@/components/hydrated";
 import { idSchema } from "@/lib/http/ids";
 import { readLaboratory } from "@/lib/laboratory";
-import { liquidOptions, lotsOfLiquidOptions } from "@/lib/liquids/client";
+import { liquidOptions, lotsOfLiquidOptions, usedInOptions } from "@/lib/liquids/client";
 import { findLots } from "@/lib/liquids/lots";
 import { getLiquid } from "@/lib/liquids/read";
+import { findUsedIn } from "@/lib/liquids/used-in";
 import { orNotFound } from "@/lib/or-not-found";
 import { currentPerson } from "@/lib/people/current-person";
 import { LiquidScreen } from "./liquid-screen";
@@ -18,12 +19,13 @@ export default async function LiquidPage({ params }: { params: Promise<{ id: str
   if (!id.success) notFound();
   const liquidId = id.data;
   const liquid = await orNotFound(getLiquid(liquidId));
-  const [lots, { timeZone }] = await Promise.all([findLots({ liquidId, limit: 200 }), readLaboratory()]);
+  const [lots, usedIn, { timeZone }] = await Promise.all([findLots({ liquidId, limit: 200 }), findUsedIn({ liquidId, limit: 20 }), readLaboratory()]);
   return (
     <Hydrated
       data={[
         [liquidOptions(liquidId).queryKey, liquid],
         [lotsOfLiquidOptions(liquidId).queryKey, lots],
+        [usedInOptions(liquidId).queryKey, { pages: [usedIn], pageParams: [null] }],
       ]}
     >
       <LiquidScreen liquidId={liquidId} role={role} zone={timeZone} now={new Date().toISOString()} />

@@ -1,18 +1,20 @@
 "use client";
 
 import { useFormContext } from "react-hook-form";
+import type { z } from "zod";
 import { asNumber, orNothing } from "@/components/ui/as-number";
 import { NumberField, Option, TextField } from "@/components/ui/field";
 import { GHS_CODES, hazardStatement } from "@/lib/liquids/ghs";
-import type { LiquidValues } from "./new-liquid-form";
+import type { liquidChange } from "@/lib/liquids/schema";
 
 /** Separated by commas or semicolons, as a list. */
 const asList = {
   setValueAs: (typed: unknown): unknown => (typeof typed === "string" ? typed.split(/[,;]/).map((part) => part.trim()).filter(Boolean) : typed),
 };
 
+/** Hazards of a liquid, inside the form that makes or changes it. */
 export function HazardFields() {
-  const { register, formState } = useFormContext<LiquidValues>();
+  const { register, formState } = useFormContext<Pick<z.input<typeof liquidChange>, "hazards">>();
   const errors = formState.errors.hazards;
   return (
     <div className="grid gap-4">

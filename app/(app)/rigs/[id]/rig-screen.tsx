@@ -5,6 +5,7 @@ import Link from "next/link";
 import { PageRow, PageTitle, Section, Vitals } from "@/components/ui/page";
 import { StateMark } from "@/components/ui/state-mark";
 import { Loading, Problem } from "@/components/ui/states";
+import { campaignCode } from "@/lib/campaigns/code";
 import { formatNumber, NO_VALUE, plural } from "@/lib/format";
 import { formatAgo, formatDayTime } from "@/lib/format-time";
 import { may, type Role } from "@/lib/permissions";
@@ -37,7 +38,7 @@ export function RigScreen({ rigId, role }: { rigId: string; role: Role }) {
         <Vitals
           items={[
             { label: "State", value: campaign ? <StateMark state={rigWord(rig)} /> : "Free", note: campaign?.takenOver ? "taken over by hand" : undefined },
-            { label: "Campaign", value: campaign ? <Link href={`/campaigns/${campaign.id}`}>{campaign.name}</Link> : NO_VALUE, note: campaign?.cursorText ?? `${rig.queued} in line` },
+            { label: "Campaign", value: campaign ? <Link href={`/campaigns/${campaignCode(campaign.id)}`}>{campaign.name}</Link> : NO_VALUE, note: campaign?.cursorText ?? `${rig.queued} in line` },
             { label: "Cell", value: rig.temperatureC === null ? NO_VALUE : `${formatNumber(rig.temperatureC, { decimals: 2 })}\u00a0°C`, note: mountedText(mounts) },
             { label: "Agent seen", value: rig.lastContactAt ? formatAgo(rig.lastContactAt, dataUpdatedAt) : "never", note: simulatedTime(rig, dataUpdatedAt) },
           ]}

@@ -30,6 +30,7 @@ export function RigVerbs({ rig, role }: { rig: RigAnswer; role: Role }) {
   return (
     <>
       {may(role, "edit campaigns") && <LinkButton href={`/campaigns/new?rig=${rig.id}`}>Queue a campaign</LinkButton>}
+      {may(role, "edit rigs") && <LinkButton href={`/rigs/${rig.id}/edit`}>Edit</LinkButton>}
       {may(role, "take over rigs") &&
         (campaign?.takenOver ? (
           <Button look="primary" busy={giveBack.isPending} onClick={() => giveBack.mutate()}>Give back</Button>

@@ -26,7 +26,7 @@ export default async function SensorPage({ params }: { params: Promise<{ id: str
         [mountsOptions(sensorId).queryKey, mounts],
       ]}
     >
-      <SensorScreen sensorId={sensorId} role={role} zone={timeZone} />
+      <SensorScreen sensorId={sensorId} role={role} zone={timeZone} now={new Date().toISOString()} />
     </Hydrated>
   );
 }
