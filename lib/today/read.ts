@@ -69,7 +69,7 @@ export async function readToday({ now }: { now: Date }): Promise<TodayAnswer> {
     now: now.toISOString(),
     laboratory,
     rigs: rigs.map((rig) => present(rig, byId.get(rig.campaignId ?? "") ?? null, now)),
-    alarms: alarms.items.toSorted((a, b) => rank(a) - rank(b)),
+    alarms: alarms.items.toSorted((a, b) => rank(a) - rank(b) || Number(!a.campaignId) - Number(!b.campaignId)),
     tasks: tasks.items,
     moreTasks: tasks.nextCursor !== null,
     log: { since: since.toISOString(), items: log },

@@ -1,8 +1,8 @@
 import type { Metadata } from "next";
 import { z } from "zod";
 import { Hydrated } from "@/components/hydrated";
-import { openAlarmsOptions, pastAlarmsOptions } from "@/lib/alarms/client";
-import { findAlarms } from "@/lib/alarms/read";
+import { alarmOptions, openAlarmsOptions, pastAlarmsOptions } from "@/lib/alarms/client";
+import { findAlarms, getAlarm } from "@/lib/alarms/read";
 import { idSchema } from "@/lib/http/ids";
 import { readLaboratory } from "@/lib/laboratory";
 import { currentPerson } from "@/lib/people/current-person";
@@ -10,6 +10,9 @@ import { findRigs } from "@/lib/rigs/read";
 import { AlarmsScreen } from "./alarms-screen";
 
 export const metadata: Metadata = { title: "Alarms" };
+
+/** So many stand on the first screen; the others' plots follow. */
+const FIRST_DRAWN = 6;
 
 type Search = Promise<Record<string, string | string[] | undefined>>;
 
@@ -25,9 +28,12 @@ export default async function AlarmsPage({ searchParams }: { searchParams: Searc
     findAlarms({ query: { state: "past", limit: 50, rigId, kind }, now }),
     findRigs({ limit: 200, retired: "false" }),
   ]);
+  const drawn = open.items.filter(({ phaseId }) => phaseId !== undefined).slice(0, FIRST_DRAWN);
+  const details = await Promise.all(drawn.map(({ id }) => getAlarm({ alarmId: id, now })));
   return (
     <Hydrated
       data={[
+        ...details.map((alarm) => [alarmOptions(alarm.id).queryKey, alarm] as const),
         [openAlarmsOptions().queryKey, open],
         [pastAlarmsOptions({ rigId, kind }).queryKey, { pages: [past], pageParams: [null] }],
       ]}
