@@ -23,6 +23,7 @@ import { SaveDialog } from "./save-dialog";
 import { SavedNote } from "./saved-note";
 import { slotsIn } from "./slots-in";
 import { StepRows } from "./step-rows";
+import { ThrowAway } from "./throw-away";
 import { type Begun, useDraftEditor } from "./use-editor";
 
 type EditorScreenProps = Begun & { zone: string };
@@ -59,6 +60,7 @@ export function EditorScreen({ zone, ...begun }: EditorScreenProps) {
           <>
             <Button look="primary" notPossible={places > 0 ? `${inWords(places)} ${plural(places, "thing")} must be mended first` : null} onClick={() => setSaves(true)}>Save version {version + 1}</Button>
             <Button notPossible={canUndo ? null : "nothing has been changed"} onClick={undo}>Undo</Button>
+            {saved.savedAt && <ThrowAway draft={draft} saver={saver} version={version} />}
             {saved.id && <LinkButton look="link" href={`/protocols/${saved.id}`}>Leave</LinkButton>}
           </>
         }
