@@ -47,7 +47,7 @@ export function SensorScreen({ sensorId, role, zone, now }: { sensorId: string; 
         {error && <Problem error={error} onRetry={() => void refetch()} />}
         <Vitals
           items={[
-            { label: "Mounted", value: mount ? <Link href={`/rigs/${mount.rigId}`}>{mount.rigName}</Link> : "nowhere", note: mount ? `position ${mount.position}, since ${formatDayTime(mount.since, zone)}` : undefined },
+            { label: "Mounted", value: mount ? <Link href={`/rigs/${mount.rigId}`}>{mount.rigName}</Link> : "nowhere", note: mount ? `position ${mount.position}, since ${formatDayTime(mount.since, zone, now)}` : undefined },
             { label: "In campaign", value: campaign ? <Link href={`/campaigns/${campaignCode(campaign.id)}`}>{campaign.name}</Link> : NO_VALUE, note: `${sensor.campaigns} so far` },
             { label: <>Nominal <F0 /></>, value: `${formatNumber(nominalF0Hz)}\u00a0Hz` },
             { label: <>Nominal <Q /></>, value: formatNumber(nominalQ) },
@@ -77,9 +77,9 @@ export function SensorScreen({ sensorId, role, zone, now }: { sensorId: string; 
 
 const columnsIn = ({ zone, first, now }: { zone: string; first: string; now: string }): TableColumn<MountAnswer>[] => [
   { id: "rig", head: "Rig", slot: "a", cell: ({ rigId, rigName, position }) => <><Link href={`/rigs/${rigId}`}>{rigName}</Link>, position {position}</> },
-  { id: "from", head: "From", slot: "c", cell: ({ from }) => <span className="num">{formatDayTime(from, zone)}</span> },
-  { id: "to", head: "To", slot: "d", cell: ({ to }) => <span className="num">{to ? formatDayTime(to, zone) : "now"}</span> },
-  { id: "span", head: "Mounted", slot: "w", width: 300, cell: ({ from, to, rigName }) => <MountSpan span={{ from, to }} from={first} now={now} label={`On ${rigName} from ${formatDayTime(from, zone, now)} to ${to ? formatDayTime(to, zone, now) : "now"}`} /> },
+  { id: "from", head: "From", slot: "c", width: 170, cell: ({ from }) => <span className="num">{formatDayTime(from, zone, now)}</span> },
+  { id: "to", head: "To", slot: "d", width: 170, cell: ({ to }) => <span className="num">{to ? formatDayTime(to, zone, now) : "now"}</span> },
+  { id: "span", head: "Mounted", slot: "w", width: 280, cell: ({ from, to, rigName }) => <MountSpan span={{ from, to }} from={first} now={now} label={`On ${rigName} from ${formatDayTime(from, zone, now)} to ${to ? formatDayTime(to, zone, now) : "now"}`} /> },
   { id: "by", head: "Mounted by", slot: "b", cell: ({ mountedBy }) => mountedBy ?? NO_VALUE },
   { id: "ended", head: "Taken out by", slot: "x", cell: ({ endedBy }) => endedBy ?? NO_VALUE },
   { id: "note", head: "Note", slot: "x", cell: ({ note }) => note ?? "" },
