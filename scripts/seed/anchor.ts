@@ -21,7 +21,7 @@ export function anchorOf(begunAt: Date): Anchor {
   const north = nextLocalTime({ time: "05:30" }, now - 44 * DAY_MS, ZONE);
   return {
     setUpAt: at(north - 3 * DAY_MS),
-    clockStart: { north: at(north), south: at(now - 53.3 * HOUR_MS), cold: at(now - 41 * HOUR_MS) },
+    clockStart: { north: at(north), south: at(now - 52 * HOUR_MS), cold: at(now - 41 * HOUR_MS) },
     tonight: at(nextLocalTime({ time: "20:00" }, now, ZONE)),
   };
 }
