@@ -12,7 +12,6 @@ type Counts = { total: number; shown: number; state: number; rigId: number; sens
 
 /** How many campaigns do what, how many the filter shows, what it would show with one word less, and the words to filter by. */
 export async function readOverview(query: OverviewQuery): Promise<OverviewAnswer> {
-  const { state, ...rest } = query;
   const [counts, words, rigs, sensors] = await Promise.all([
     count(query),
     row<OverviewAnswer["words"]>(
@@ -30,22 +29,22 @@ export async function readOverview(query: OverviewQuery): Promise<OverviewAnswer
   ]);
   const { total, shown, state: withoutState, rigId, sensorId, search, ...places } = counts;
   return { total, shown, places, without: { state: withoutState, rigId, sensorId, search }, words: words ?? { measuring: 0, paused: 0, waiting: 0, halted: 0, queued: 0 }, rigs, sensors };
+}
 
-  async function count(filter: OverviewQuery): Promise<Counts> {
-    const variants = { shown: filter, state: rest, rigId: { ...filter, rigId: undefined }, sensorId: { ...filter, sensorId: undefined }, search: { ...filter, search: undefined } };
-    const bind: unknown[] = [];
-    const filters = Object.entries(variants).map(([name, variant]) => {
-      const { where, bind: values } = campaignWhere(variant, bind.length + 1);
-      bind.push(...values);
-      return [name, where] as const;
-    });
-    const stateless = filters[1][1];
-    const columns = [
-      ...filters.map(([name, where]) => `count(*) filter (where ${where})::int as "${name}"`),
-      ...Object.entries(STATES).map(([name, where]) => `count(*) filter (where ${where} and (${stateless}))::int as "${name}"`),
-    ];
-    const found = await row<Counts>(`select count(*)::int as total, ${columns.join(", ")} ${FROM}`, bind);
-    if (!found) throw new Error("a count answered no row");
-    return found;
-  }
+async function count(filter: OverviewQuery): Promise<Counts> {
+  const variants = { shown: filter, state: { ...filter, state: undefined }, rigId: { ...filter, rigId: undefined }, sensorId: { ...filter, sensorId: undefined }, search: { ...filter, search: undefined } };
+  const bind: unknown[] = [];
+  const filters = Object.entries(variants).map(([name, variant]) => {
+    const { where, bind: values } = campaignWhere(variant, bind.length + 1);
+    bind.push(...values);
+    return [name, where] as const;
+  });
+  const stateless = filters[1][1];
+  const columns = [
+    ...filters.map(([name, where]) => `count(*) filter (where ${where})::int as "${name}"`),
+    ...Object.entries(STATES).map(([name, where]) => `count(*) filter (where ${where} and (${stateless}))::int as "${name}"`),
+  ];
+  const found = await row<Counts>(`select count(*)::int as total, ${columns.join(", ")} ${FROM}`, bind);
+  if (!found) throw new Error("a count answered no row");
+  return found;
 }

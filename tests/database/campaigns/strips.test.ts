@@ -43,9 +43,10 @@ describe("strips", () => {
     const campaignIds = [bench.campaign.id, ...others.map(({ id }) => id)];
     const count = async (work: () => Promise<unknown>) => {
       let queries = 0;
-      sequelize.options.logging = () => queries++;
+      const { options } = sequelize as unknown as { options: { logging: false | (() => void) } };
+      options.logging = () => queries++;
       await work();
-      sequelize.options.logging = false;
+      options.logging = false;
       return queries;
     };
     const one = await count(() => readStrips({ campaignIds: campaignIds.slice(0, 1), now: bench.now }));

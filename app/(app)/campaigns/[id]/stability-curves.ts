@@ -10,16 +10,15 @@ type Medium = CampaignAnswer["media"][number];
 const DASHES: readonly Dash[] = ["solid", "dashed", "dotted"];
 
 /** Air in ink, liquids in their tints; liquids of one tint are told apart by their dash. */
-export function pensOf(media: readonly Medium[]): Map<string, { pen: Pen; dash?: Dash }> {
+function pensOf(media: readonly Medium[]): Map<string, { pen: Pen; dash?: Dash }> {
   const used = new Map<number, number>();
-  return new Map(
-    media.map(({ medium, tint }) => {
-      if (medium === "air" || !tint) return [medium, { pen: "ink" as const }];
-      const times = used.get(tint) ?? 0;
-      used.set(tint, times + 1);
-      return [medium, { pen: `liquid-${tint}` as const, ...(times > 0 && { dash: DASHES[(tint - 1 + times) % 3] }) }];
-    }),
-  );
+  const pens = new Map<string, { pen: Pen; dash?: Dash }>();
+  for (const { medium, tint } of media) {
+    const times = tint ? (used.get(tint) ?? 0) : 0;
+    if (tint) used.set(tint, times + 1);
+    pens.set(medium, tint ? { pen: `liquid-${tint}`, ...(times > 0 && { dash: DASHES[(tint - 1 + times) % 3] }) } : { pen: "ink" });
+  }
+  return pens;
 }
 
 const toPoint = ({ tauS, deviation, lower, upper, n, noise, noiseMarked }: StabilityAnswer["points"][number]): DeviationPoint => ({
