@@ -29,7 +29,7 @@ export default async function SettingsPage() {
       <Section head="Password" note="All sessions end with a change, this one too.">
         <PasswordForm email={me.email} />
       </Section>
-      <Section head="Mail" note={<>Goes to {me.email}. Alarms and tasks stand on Today for everybody, whatever is chosen here.</>}>
+      <Section head="Mail" note={<>Goes to {me.email}. Alarms and tasks stand on Today for everybody, whatever is chosen here.{may(by.role, "settings") && <> What the mail server refused is under <Link href="/settings/mail">undelivered mail</Link>.</>}</>}>
         <MailChoices wishes={me.notify} />
       </Section>
       <Section head="Paper" note="On this browser.">
