@@ -43,6 +43,8 @@ export type XyChartProps = {
 };
 
 const TOP = 22;
+/** A vertical limit is named at its right, nearer to the right end at its left. */
+const LABEL_PX = 110;
 
 /** Any quantity against another: points with bars, models with their band, limits, and what is not claimed. */
 export function XyChart({ label, sentence, file, x, y, series, yLimits = [], xLimits = [], xMarks = [], outside = [], xRange, yRange, logX, logY, zero, height = 168, equal }: XyChartProps) {
@@ -105,7 +107,7 @@ export function XyChart({ label, sentence, file, x, y, series, yLimits = [], xLi
             {xLimits.map(({ value, label: text }) => (
               <g key={text}>
                 <path className="limit-line" d={`M${placeX(value)} ${TOP}V${bottom}`} />
-                <text className="halo" x={placeX(value) - 5} y={TOP + 10} textAnchor="end">{text}</text>
+                <text className="halo" x={placeX(value) + (placeX(value) > right - LABEL_PX ? -5 : 5)} y={TOP + 10} textAnchor={placeX(value) > right - LABEL_PX ? "end" : "start"}>{text}</text>
               </g>
             ))}
             {xMarks.map(({ value, label: text }) => (

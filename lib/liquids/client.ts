@@ -2,6 +2,9 @@ import { infiniteQueryOptions, queryOptions } from "@tanstack/react-query";
 import { fetchJson } from "@/lib/http/fetch-json";
 import { liquidAnswer, liquidPage, lotPage, usedInPage, type LiquidAnswer, type UsedInAnswer } from "@/lib/liquids/schema";
 
+/** What the server has just read for a page is not asked for again by it. */
+const FRESH_MS = 10_000;
+
 type LiquidPage = { items: LiquidAnswer[]; nextCursor: string | null };
 
 /** Liquids by name, a page at a time. */
@@ -26,6 +29,7 @@ export const lotsOfLiquidOptions = (liquidId: string) =>
   queryOptions({
     queryKey: ["liquids", "lots", liquidId],
     queryFn: ({ signal }) => fetchJson(`/api/liquids/${liquidId}/lots?limit=200`, { answer: lotPage, signal }),
+    staleTime: FRESH_MS,
   });
 
 type UsedInPage = { items: UsedInAnswer[]; nextCursor: string | null };
@@ -34,6 +38,7 @@ type UsedInPage = { items: UsedInAnswer[]; nextCursor: string | null };
 export const usedInOptions = (liquidId: string) =>
   infiniteQueryOptions({
     queryKey: ["liquids", "used-in", liquidId],
+    staleTime: FRESH_MS,
     queryFn: ({ signal, pageParam }): Promise<UsedInPage> => {
       const query = new URLSearchParams({ limit: "20", ...(pageParam && { cursor: pageParam }) });
       return fetchJson(`/api/liquids/${liquidId}/campaigns?${query}`, { answer: usedInPage, signal });

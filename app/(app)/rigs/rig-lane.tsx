@@ -57,7 +57,7 @@ export function RigLane({ lane, stored = lane, window, moves, rings }: RigLanePr
 
 const runOf = ({ id, from: begin, end, strip }: LaneCampaign, from: string, to: string): LaneRun => {
   const { segments, halt } = stripInputIn({ ...strip, from, to, trace: [] }, { from, to });
-  return { key: id, segments, from: begin, to: end.at, range: end.range, halt: halt?.open ? halt : undefined };
+  return { key: id, segments, from: begin, to: end.at, range: end.range, halt: halt?.open && halt.at >= from && halt.at <= to ? halt : undefined };
 };
 
 function NameOf({ campaign }: { campaign: LaneCampaign | undefined }) {

@@ -1,15 +1,17 @@
 import { StripRuler } from "@/components/strip/strip-ruler";
 import { Vitals } from "@/components/ui/page";
+import { Loading } from "@/components/ui/states";
 import type { CheckAnswer, Choices } from "@/lib/campaigns/draft-schema";
 import { formatCount, formatVolume } from "@/lib/format";
 import { formatDayTime, formatDurationInWords, formatPlusMinus } from "@/lib/format-time";
 import { RigLane } from "../../rigs/rig-lane";
 
-type ForecastProps = { checked: CheckAnswer | undefined; busy: boolean; rig: Choices["rigs"][number] | undefined };
+type ForecastProps = { checked: CheckAnswer | undefined; /** Everything that it hangs on is chosen. */ complete: boolean; busy: boolean; rig: Choices["rigs"][number] | undefined };
 
 /** The estimate as a sentence, the rig's next weeks with this campaign in them, and what it needs of steps, liquid, waste and people. */
-export function Forecast({ checked, busy, rig }: ForecastProps) {
-  if (!checked || !rig) return <p className="estimate text-ink2">Choose a protocol, a sensor and a rig, and give every slot a port and a lot.</p>;
+export function Forecast({ checked, complete, busy, rig }: ForecastProps) {
+  if (!checked && complete && busy) return <Loading label="the forecast" height={170} />;
+  if (!checked || !rig) return <p className="estimate text-ink2">{complete ? "The forecast comes once what stands against it is put right." : "Choose a protocol, a sensor and a rig, and give every slot a port and a lot."}</p>;
   const { estimate, forecast, slots } = checked;
   const { seconds, lowS, highS, steps, repeats, wasteMl } = estimate;
   const litres = slots.reduce((sum, { neededMl }) => sum + neededMl, 0);

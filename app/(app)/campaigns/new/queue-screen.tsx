@@ -65,7 +65,7 @@ function QueueForm({ choices, personName, given }: QueueScreenProps & { choices:
           </>
         }
       >
-        <Forecast checked={checked} busy={check.isFetching} rig={rig} />
+        <Forecast checked={checked} complete={body !== undefined} busy={check.isFetching} rig={rig} />
       </Section>
       <div className="grid grid-cols-[minmax(0,1fr)_372px] gap-x-10 narrow:grid-cols-1">
         <div>

@@ -82,14 +82,14 @@ export function LiquidScreen({ liquidId, role, zone, now }: LiquidScreenProps) {
 
 /** Density and viscosity at 20 °C, with the model's uncertainty where it has one, and how far the model reaches. */
 function Properties({ liquid: { name, at20C, range } }: { liquid: LiquidAnswer }) {
-  const reach = `known from ${formatNumber(range.minC)} to ${formatNumber(range.maxC)} °C`;
+  const reach = `known from ${formatNumber(range.minC)} to ${formatNumber(range.maxC)}\u00a0°C`;
   if (!at20C) return <>{name} is {reach}.</>;
   const { densityKgM3, viscosityMPaS } = at20C;
   const uViscosity = range.uViscosityPercent === null ? null : (viscosityMPaS * range.uViscosityPercent) / 100;
   return (
     <>
       {name} is <b><Quantity value={densityKgM3} u={range.uDensityKgM3} unit="kg/m³" decimals={2} /></b> and{" "}
-      <b><Quantity value={viscosityMPaS} u={uViscosity} unit="mPa·s" decimals={3} /></b> at 20 °C, {reach}.
+      <b><Quantity value={viscosityMPaS} u={uViscosity} unit="mPa·s" decimals={3} /></b> at 20&nbsp;°C, {reach}.
     </>
   );
 }
