@@ -4,7 +4,7 @@ import { sequelize } from "@/lib/db";
 export class Protocol extends Model<InferAttributes<Protocol>, InferCreationAttributes<Protocol>> {
   declare id: CreationOptional<string>;
   declare name: string;
-  declare draft: CreationOptional<unknown>;
+  declare draft: CreationOptional<Record<string, unknown> | null>;
   declare draftSavedAt: CreationOptional<Date | null>;
   declare createdBy: CreationOptional<string | null>;
   declare createdAt: Date;

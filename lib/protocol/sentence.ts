@@ -10,8 +10,9 @@ export type SentencePart = string | { value: string; path: string };
 const MISSING = "…";
 
 /** A block as a sentence in parts, so that a page can mark and open its values. Never throws: what is missing reads `…`. */
-export function sentenceParts(block: LooseFields): SentencePart[] {
-  const value = (path: string, write: (given: unknown) => string = plain) => ({ value: write(at(block, path)), path });
+export function sentenceParts(given: object): SentencePart[] {
+  const block: LooseFields = { ...given };
+  const value = (path: string, write: (held: unknown) => string = plain) => ({ value: write(at(block, path)), path });
   const seconds = (path: string) => value(path, asDuration);
   const counted = (path: string, unit: string) => value(path, (n) => count(n, unit));
   const optional = (path: string, parts: () => SentencePart[]) => (at(block, path) === undefined ? [] : parts());
@@ -78,7 +79,7 @@ export function sentenceParts(block: LooseFields): SentencePart[] {
 }
 
 /** How a measurement sweeps, as a second sentence. */
-export function sweepParts(block: LooseFields): SentencePart[] {
+export function sweepParts(block: object): SentencePart[] {
   const value = (path: string, write: (given: unknown) => string = plain) => ({ value: write(at(block, path)), path });
   const centre = at(block, "sweep.centre");
   return [

@@ -1,7 +1,8 @@
 import { at, count, type LooseFields, plain } from "@/lib/protocol/sentence";
 
 /** What stands at the closing repeat sign. */
-export function repeatFoot(block: LooseFields): string {
+export function repeatFoot(given: object): string {
+  const block: LooseFields = { ...given };
   switch (block.kind) {
     case "repeat":
       return block.until === undefined ? `back to the first of these, ${count(block.times, "time")} in all` : `back to the first of these until ${plain(block.until)} is over`;

@@ -1,3 +1,4 @@
+import type { QueryKey } from "@tanstack/react-query";
 import type { Metadata } from "next";
 import { notFound } from "next/navigation";
 import { Hydrated } from "@/components/hydrated";
@@ -27,18 +28,21 @@ export default async function ProtocolPage({ params, searchParams }: Props) {
   const other = numbered(search.with);
   const versions = await Promise.all([shown, other].flatMap((one) => (one ? [getVersion({ protocolId, versionId: one.id })] : [])));
   const about = { protocolId, role: person.role, zone: timeZone, now: now.toISOString() };
-  const hydrated = [[protocolOptions(protocolId).queryKey, protocol], ...versions.map((version) => [versionOptions(protocolId, version.id).queryKey, version])] as const;
+  const hydrated: (readonly [QueryKey, unknown])[] = [
+    [protocolOptions(protocolId).queryKey, protocol],
+    ...versions.map((version) => [versionOptions(protocolId, version.id).queryKey, version] as const),
+  ];
 
   if (shown && other && other.id !== shown.id)
     return (
-      <Hydrated data={hydrated.map(([key, value]) => [key, value] as const)}>
+      <Hydrated data={hydrated}>
         <CompareScreen {...about} versionIds={[other, shown].toSorted((a, b) => a.version - b.version).map((one) => one.id) as [string, string]} />
       </Hydrated>
     );
   const definition = versions.at(0)?.definition;
   const estimate = definition && (await estimateProtocol({ by: person, now, definition }));
   return (
-    <Hydrated data={[...hydrated.map(([key, value]) => [key, value] as const), ...(definition ? [[estimateOptions({ definition, rigId: "", sensorId: "" }).queryKey, estimate] as const] : [])]}>
+    <Hydrated data={[...hydrated, ...(definition ? [[estimateOptions({ definition, rigId: "", sensorId: "" }).queryKey, estimate] as const] : [])]}>
       <ProtocolScreen {...about} versionId={shown?.id ?? null} />
     </Hydrated>
   );
