@@ -10,13 +10,15 @@ import { sweepOptions } from "@/lib/campaigns/client";
 import { campaignCode } from "@/lib/campaigns/code";
 import { formatCount, formatUncertain } from "@/lib/format";
 import { formatRecent } from "@/lib/format-time";
+import { ProblemError } from "@/lib/http/fetch-json";
 
 const UNITS = [["V", 1], ["mV", 1e3], ["µV", 1e6]] as const;
 
 /** The newest sweep with its fit and what is left between them. */
 export function LatestSweep({ campaign }: { campaign: CampaignAnswer }) {
   const { data: sweep, error, refetch, isFetching } = useQuery({ ...sweepOptions(campaign.id), enabled: campaign.progress.repeats > 0 });
-  if (campaign.progress.repeats === 0) return <div><Head>Latest sweep</Head><Empty>No sweep has come yet.</Empty></div>;
+  const none = error instanceof ProblemError && error.status === 404;
+  if (campaign.progress.repeats === 0 || none) return <div><Head>Latest sweep</Head><Empty>{none ? "No sweep is kept of these repeats." : "No sweep has come yet."}</Empty></div>;
   if (!sweep) return <div><Head>Latest sweep</Head>{error ? <Problem error={error} onRetry={() => void refetch()} /> : <Loading label="the latest sweep" height={320} />}</div>;
 
   const { curve, f0Hz, f0StdHz, q, qStd, index, points, takenAt, medium, cycle, flags } = sweep;
