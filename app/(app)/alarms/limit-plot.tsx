@@ -7,8 +7,8 @@ import { formatDayTime, formatRecent } from "@/lib/format-time";
 
 type LimitPlotProps = { series: AlarmSeries; zone: string; /** The last value is beyond the limit still. */ breach: boolean };
 
-const HEIGHT = 142;
-const PLOT = { left: 44, right: 8, top: 18, bottom: 104 };
+const HEIGHT = 146;
+const PLOT = { left: 44, right: 8, top: 32, bottom: 108 };
 
 /** The watched values by time with the limit as dashed lines; the newest in the alarm colour while it needs a person. */
 export function LimitPlot({ series: { label, unit, low, high, points }, zone, breach }: LimitPlotProps) {
