@@ -21,7 +21,7 @@ export type StartOptions = {
   signal: AbortSignal;
   stateFolder?: string;
   untilIdle?: boolean;
-  /** A fast rig ends here by its own clock; what it has begun waits for the next agent. */
+  /** A fast rig ends here by its own clock; the step in hand is given back for the next agent. */
   until?: Date;
   /** Gets the true f0 and Q of every reading, one JSON object a line. */
   truthFile?: string;

@@ -79,6 +79,10 @@ async function perform(session: Session, step: Step, incomplete: Incomplete): Pr
     await client.finish(step.id, step.lease, outcome);
   } catch (error) {
     session.release();
+    if (error instanceof CaughtUp) {
+      await client.finish(step.id, step.lease, { outcome: "interrupted" });
+      throw error;
+    }
     if (error instanceof Superseded) return log(`step ${step.sequence}: ${error.message}`);
     if (!(error instanceof Refused) || error.code === "other-agent" || error.status === 401 || error.status === 403) throw error;
     log(`step ${step.sequence}: ${error.message}`);

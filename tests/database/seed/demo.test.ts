@@ -130,7 +130,7 @@ describe("setting up", () => {
     expect(errors).toEqual([]);
   });
 
-  it("stops a rig's clock where it is told to, with what was begun still out", { timeout: 120_000 }, async () => {
+  it("stops a rig's clock where it is told to, and gives the step in hand back", { timeout: 120_000 }, async () => {
     const until = new Date(anchor.clockStart.south.getTime() + 4 * 3_600_000);
     await runCampaign({
       name: "South bench",
@@ -149,8 +149,8 @@ describe("setting up", () => {
       [laboratory.campaigns.south],
     );
     expect((last?.takenAt.getTime() ?? Infinity) + (last?.durationS ?? 0) * 1000).toBeLessThanOrEqual(until.getTime());
-    const open = await rows(`select id from step where campaign_id = $1 and state = 'out'`, [laboratory.campaigns.south]);
-    expect(open).toHaveLength(1);
+    const open = await rows(`select state, stored > 0 as begun, empty_attempts as empty from step where campaign_id = $1 and state in ('ready', 'out')`, [laboratory.campaigns.south]);
+    expect(open).toEqual([{ state: "ready", begun: true, empty: 0 }]);
   });
 });
 
