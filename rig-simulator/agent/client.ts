@@ -56,9 +56,10 @@ export class Client {
     return answer;
   }
 
-  /** One try: the next heartbeat is as good. */
-  async heartbeat(heartbeat: Heartbeat): Promise<HeartbeatAnswer> {
-    return (await this.once("/api/agent/heartbeat", JSON.stringify(heartbeat))) as HeartbeatAnswer;
+  /** One try, as the next heartbeat is as good; `insist` where this one has to arrive. */
+  async heartbeat(heartbeat: Heartbeat, insist = false): Promise<HeartbeatAnswer> {
+    const path = "/api/agent/heartbeat";
+    return (await (insist ? this.persist(path, heartbeat) : this.once(path, JSON.stringify(heartbeat)))) as HeartbeatAnswer;
   }
 
   async next(waitS: number, clock: string, signal: AbortSignal): Promise<Step | undefined> {

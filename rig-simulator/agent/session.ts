@@ -95,19 +95,20 @@ export class Session {
     if (wish !== "none") this.interrupt.controller.abort(new Interrupted());
   }
 
-  async beat(): Promise<HeartbeatAnswer> {
+  async beat(insist = false): Promise<HeartbeatAnswer> {
     const { rig, current } = this;
     const { world, scenario } = rig;
-    const answer = await this.client.heartbeat({
+    const body = {
       clock: rig.reportedClock(),
-      state: current ? "working" : this.message ? "fault" : "idle",
+      state: current ? ("working" as const) : this.message ? ("fault" as const) : ("idle" as const),
       stepId: current?.step.id,
       lease: current?.step.lease,
       done: current?.done,
       temperatureC: Math.round((world.setPointC + world.residualC) * 1e4) / 1e4,
       ...(scenario.rig.levelSensors ? this.levels() : {}),
       message: this.message,
-    });
+    };
+    const answer = await this.client.heartbeat(body, insist);
     if (!current) this.message = undefined;
     this.heed(answer.wish);
     this.dueAtMs = answer.dueAt === undefined ? undefined : Date.parse(answer.dueAt);

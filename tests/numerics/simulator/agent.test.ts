@@ -126,7 +126,7 @@ describe("the agent", () => {
     const server = new ContractServer([fill]);
     const { rig } = await run(server, scenario({ crashes: [{ kind: "fill" }] }, unrepeatable));
     const told = server.calls.filter(({ path, body }) => path.endsWith("/heartbeat") && body.done).map(({ body }) => body.done);
-    expect(told).toEqual([{ volumeMl: 0 }, { volumeMl: 10 }, { volumeMl: 10 }, { volumeMl: 15 }, { volumeMl: 20 }]);
+    expect(told).toEqual([{ volumeMl: 0 }, { volumeMl: 10 }, { volumeMl: 10 }, { volumeMl: 15 }, { volumeMl: 20 }, { volumeMl: 20 }]);
     expect(rig.world.ports[1]).toBe(1980);
   });
 
