@@ -54,8 +54,8 @@ async function save(liquid: Liquid, write: () => Promise<unknown>): Promise<void
     await write();
   } catch (error) {
     const constraint = constraintOf(error);
-    if (constraint === "liquid_name_key") throw conflict(`There is already a liquid called ${liquid.name}`, "already-there");
-    if (constraint === "liquid_letter_key") throw conflict(`The letter ${liquid.letter} is taken by another liquid`, "letter-taken");
+    if (constraint === "liquid_name_key") throw conflict(`There is already a liquid called ${liquid.name}`, "already-there", { errors: [{ path: "name", message: "is taken by another liquid" }] });
+    if (constraint === "liquid_letter_key") throw conflict(`The letter ${liquid.letter} is taken by another liquid`, "letter-taken", { errors: [{ path: "letter", message: "is taken by another liquid" }] });
     throw error;
   }
 }

@@ -41,13 +41,13 @@ export function SlotsTable({ draft, choices: { versions, rigs, lots }, checked, 
               <tr key={slot}>
                 <td><span className="inline-flex items-center gap-2">{lot && <PhaseChip kind="liquid" letter={lot.letter} tint={lot.tint} />}{slot}</span></td>
                 <td>
-                  <select className="control" aria-label={`Port for ${slot}`} value={port ?? ""} onChange={(event) => takePort(slot, Number(event.target.value), lotOn)}>
+                  <select className="control min-w-24" aria-label={`Port for ${slot}`} value={port ?? ""} onChange={(event) => takePort(slot, Number(event.target.value), lotOn)}>
                     <option value="">none</option>
                     {rig.ports.map(({ number }) => <option key={number} value={number}>port {number}</option>)}
                   </select>
                 </td>
                 <td>
-                  <select className="control" aria-label={`Lot for ${slot}`} value={lotId} onChange={(event) => bind(slot, { lotId: event.target.value })}>
+                  <select className="control min-w-44" aria-label={`Lot for ${slot}`} value={lotId} onChange={(event) => bind(slot, { lotId: event.target.value })}>
                     <option value="">choose a lot</option>
                     {lots.map(({ id, code, liquidName }) => <option key={id} value={id}>{code}, {liquidName}</option>)}
                   </select>
