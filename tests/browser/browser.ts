@@ -18,7 +18,7 @@ const FLAGS = [
 export const PASSWORD = "a password of the tests";
 
 /** One Chromium for a test file. */
-export function useBrowser(): { open: (options?: { phone?: boolean; dark?: boolean }) => Promise<Page> } {
+export function browserOfTests(): { open: (options?: { phone?: boolean; dark?: boolean }) => Promise<Page> } {
   const { appUrl, chromium: executablePath } = inject("laboratory");
   let browser: Browser;
   const contexts: BrowserContext[] = [];

@@ -7,7 +7,7 @@ import { createAgentToken } from "@/lib/rigs/tokens";
 import { drift } from "@/lib/numerics/drift/drift";
 import type { StabilityAnswer, DriftAnswer } from "@/lib/analysis/schema";
 import { startRig } from "@/rig-simulator/start-rig";
-import { account, signIn, useBrowser } from "@/tests/browser/browser";
+import { account, signIn, browserOfTests } from "@/tests/browser/browser";
 import { inbox, type Mail } from "@/tests/browser/inbox";
 import { expectedDeviation, readTruth, type Measured } from "@/tests/browser/truth";
 import { writeProtocol } from "@/tests/browser/write-protocol";
@@ -18,7 +18,7 @@ import { buildMount } from "@/tests/factories/mount";
 import { buildRig } from "@/tests/factories/rig";
 import { buildSensor } from "@/tests/factories/sensor";
 
-const browser = useBrowser();
+const browser = browserOfTests();
 const folder = mkdtempSync(path.join(tmpdir(), "longreed-truth-"));
 const truthFile = path.join(folder, "truth.jsonl");
 const simulator = new AbortController();
