@@ -27,6 +27,7 @@ export async function up({ context }: { context: QueryInterface }): Promise<void
       empty_attempts integer not null default 0,
       stored integer not null default 0,
       stored_at_issue integer not null default 0,
+      progressed boolean not null default false,
       lease text,
       lease_expires_at timestamptz,
       done jsonb,
@@ -46,6 +47,7 @@ export async function up({ context }: { context: QueryInterface }): Promise<void
     create unique index step_open on step (campaign_id) where state in ('ready', 'out');
     create index step_track on step (mount_id, medium, set_point_c, id desc) where kind = 'measure';
     create index step_due on step (due_at) where kind = 'wait' and state = 'ready';
+    comment on column step.progressed is 'Heartbeats told of a physical act going on since it was last given out';
     comment on column step.empty_attempts is 'Attempts in a row that stored nothing new; maxAttempts counts these';
 
     create index step_rig_open on step (rig_id) where state in ('ready', 'out');

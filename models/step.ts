@@ -28,6 +28,7 @@ export class Step extends Model<InferAttributes<Step>, InferCreationAttributes<S
   declare failedAttempts: CreationOptional<number>;
   declare stored: CreationOptional<number>;
   declare storedAtIssue: CreationOptional<number>;
+  declare progressed: CreationOptional<boolean>;
   declare lease: CreationOptional<string | null>;
   declare leaseExpiresAt: CreationOptional<Date | null>;
   declare done: CreationOptional<StepProgress | null>;
@@ -66,6 +67,7 @@ Step.init(
     failedAttempts: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
     stored: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
     storedAtIssue: { type: DataTypes.INTEGER, allowNull: false, defaultValue: 0 },
+    progressed: { type: DataTypes.BOOLEAN, allowNull: false, defaultValue: false },
     lease: { type: DataTypes.TEXT },
     leaseExpiresAt: { type: DataTypes.DATE },
     done: { type: DataTypes.JSONB },

@@ -60,7 +60,9 @@ const idOf = ({ stepId }: HeartbeatBody): string | undefined => (stepId !== unde
 async function extendLease(transaction: Transaction, rig: RigRow, body: HeartbeatBody, now: Date): Promise<HeldStep | undefined> {
   if (idOf(body) === undefined) return undefined;
   return row<HeldStep>(
-    `update step set lease_expires_at = $4, done = case when $5::jsonb is null then step.done else coalesce(step.done, '{}') || $5::jsonb end
+    `update step set lease_expires_at = $4, done = case when $5::jsonb is null then step.done else coalesce(step.done, '{}') || $5::jsonb end,
+       progressed = step.progressed or exists (
+         select 1 from jsonb_each_text($5::jsonb) told where told.value::float8 > coalesce((step.done->>told.key)::float8, 0))
        from campaign where campaign.id = step.campaign_id and step.id = $1 and step.rig_id = $2 and step.lease = $3 and step.state = 'out'
      returning campaign.state, campaign.parking, step.detour, step.lease_expires_at as "leaseExpiresAt"`,
     [body.stepId, rig.id, body.lease, new Date(now.getTime() + LEASE_S * 1000), body.done ? JSON.stringify(body.done) : null],

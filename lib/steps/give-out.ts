@@ -35,6 +35,8 @@ export type OpenStep = {
   emptyAttempts: number;
   stored: number;
   storedAtIssue: number;
+  /** Heartbeats told of it going on since it was last given out. */
+  progressed: boolean;
   done: StepProgress | null;
   port: number | null;
   liquidName: string | null;
@@ -48,7 +50,7 @@ export type OpenStep = {
 const OPEN_STEP = `
   select s.id, s.campaign_id as "campaignId", c.rig_number as "campaignNumber", c.state as "campaignState", c.parking, s.rig_id as "rigId",
          s.sequence, s.kind, s.role, s.medium, s.slot, s.cycle, s.label, s.detour, s.params, s.state, s.attempt,
-         s.empty_attempts as "emptyAttempts", s.stored, s.stored_at_issue as "storedAtIssue", s.done, slot.port, liquid.name as "liquidName",
+         s.empty_attempts as "emptyAttempts", s.stored, s.stored_at_issue as "storedAtIssue", s.progressed, s.done, slot.port, liquid.name as "liquidName",
          coalesce((v.definition->>'maxAttempts')::int, 3) as "maxAttempts",
          exists (select 1 from operator_task t where t.campaign_id = c.id and t.step_id = s.id and t.state = 'open')
            or exists (select 1 from hold h where h.campaign_id = c.id and h.reason = 'takeOver' and h.released_at is null) as blocked,
@@ -78,7 +80,7 @@ export async function giveOut(transaction: Transaction, { rig, session, now }: G
     return undefined;
   }
   if (step.state === "out") {
-    const emptyAttempts = step.stored > step.storedAtIssue ? 0 : step.emptyAttempts + (step.answerLost ? 0 : 1);
+    const emptyAttempts = step.stored > step.storedAtIssue || step.progressed ? 0 : step.emptyAttempts + (step.answerLost ? 0 : 1);
     if (emptyAttempts >= step.maxAttempts) {
       await failStep(transaction, {
         step,
@@ -140,7 +142,7 @@ async function lend(transaction: Transaction, { step, rig, session, now }: Lend)
   const leaseExpiresAt = new Date(now.getTime() + LEASE_S * 1000);
   const clock = protocolTime(rig, now) ?? now;
   await change(
-    `update step set state = 'out', attempt = attempt + 1, empty_attempts = $2, stored_at_issue = stored, lease = $3, lease_expires_at = $4,
+    `update step set state = 'out', attempt = attempt + 1, empty_attempts = $2, stored_at_issue = stored, progressed = false, lease = $3, lease_expires_at = $4,
        given_at = coalesce(given_at, $5), started_clock = coalesce(started_clock, $6) where id = $1`,
     [step.id, step.emptyAttempts, lease, leaseExpiresAt, now, clock],
     transaction,

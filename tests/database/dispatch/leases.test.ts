@@ -182,6 +182,22 @@ describe("physical acts", () => {
     expect(await bench.next()).toMatchObject({ id: fill.id, done: { volumeMl: 12.5 } });
   });
 
+  test("an attempt that was seen to progress is not an empty one, one without progress is", async () => {
+    const fill = (await bench.run(({ kind }) => kind === "fill")) as StepAnswer;
+    const emptyAttempts = () => row(`select empty_attempts as n from step where id = $1`, [fill.id]);
+    let out = fill;
+    for (const volumeMl of [5, 9, 14, 20]) {
+      await bench.heartbeat({ state: "working", stepId: out.id, lease: out.lease, done: { volumeMl } });
+      bench.pass(120);
+      out = (await bench.next()) as StepAnswer;
+      expect(await emptyAttempts()).toEqual({ n: 0 });
+    }
+    await bench.heartbeat({ state: "working", stepId: out.id, lease: out.lease, done: { volumeMl: 20 } });
+    bench.pass(120);
+    await bench.next();
+    expect(await emptyAttempts()).toEqual({ n: 1 });
+  });
+
   test("an agent that said it can repeat a fill gets it again", async () => {
     await bench.hello("bench", false, ["fill"]);
     const fill = (await bench.run(({ kind }) => kind === "fill")) as StepAnswer;
