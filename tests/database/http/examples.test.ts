@@ -9,7 +9,7 @@ afterAll(() => sequelize.close());
 
 const modules = import.meta.glob<Record<string, unknown>>("/app/api/**/route.ts", { eager: true });
 
-const operations = new Map<string, ReturnType<typeof operationsOf>[string]>(
+const operations = new Map<string, NonNullable<ReturnType<typeof operationsOf>["GET"]>>(
   Object.entries(modules)
     .filter(([file]) => !file.includes("[..."))
     .flatMap(([file, module]) => Object.entries(operationsOf(module)).map(([method, operation]) => [`${method} ${pathOf(file.replace("/app/api/", ""))}`, operation] as const)),
