@@ -20,6 +20,22 @@ export function toStripInput(strip: StripAnswer, { campaignId, silentSince, air 
   return { from, to, now, segments, halt, silentSince, trace: traceOf(strip, air), limit };
 }
 
+type Window = { from: string; to: string; silentSince?: string };
+
+/** The run cut to a window of time. */
+export function stripInputIn(strip: StripAnswer, { from, to, silentSince }: Window): StripInput {
+  const whole = toStripInput(strip, { silentSince });
+  const start = Date.parse(from);
+  const end = Date.parse(to);
+  return {
+    ...whole,
+    from,
+    to,
+    segments: whole.segments.filter((segment) => Date.parse(segment.to) >= start && Date.parse(segment.from) <= end),
+    trace: whole.trace?.filter(({ at }) => Date.parse(at) >= start && Date.parse(at) <= end),
+  };
+}
+
 function segmentOf({ kind, medium, label, f0, phaseId, cycle, find, ...segment }: StripAnswer["segments"][number], liquids: StripAnswer["liquids"], campaignId: string | undefined): StripSegment {
   const liquid = medium === undefined ? undefined : liquids.find(({ slot }) => slot === medium);
   const name = kind === "liquid" && liquid ? liquid.name : label;

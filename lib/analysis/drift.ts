@@ -5,20 +5,24 @@ import { drift } from "@/lib/numerics/drift/drift";
 
 const DAY_MS = 86_400_000;
 
-/** Drift of phase values: the slope with an uncertainty that holds under correlated noise, the ordinary and the robust one beside it. */
+/**
+ * Drift of phase values: the slope with an uncertainty that holds under correlated noise, the ordinary and the robust one
+ * beside it. A line belongs to one mount: the named one, else the newest; `values` holds those of the others as well.
+ */
 export async function readDrift(campaignId: string, query: DriftQuery): Promise<DriftAnswer> {
   if (query.compensate === "temperature") throw impossible("Temperature compensation is not available for this campaign yet", { errors: [{ path: "compensate", message: "only none" }] });
   const { quantity } = query;
   const unit = quantity === "f0" ? "Hz" : "1";
   const fitRunId = await findFitRun(campaignId, query.fitRunId);
   const phases = fitRunId ? await selectPhases(campaignId, fitRunId, { ...query, medium: query.medium ?? "air" }) : [];
-  const values = phases.flatMap(({ role, startedAt, f0Mean, f0U, qMean, qU, cycle, phaseId }) => {
+  const values = phases.flatMap(({ role, startedAt, f0Mean, f0U, qMean, qU, cycle, phaseId, mountId }) => {
     const value = quantity === "f0" ? f0Mean : qMean;
     if (role === "check" || value === null || !startedAt) return [];
-    return [{ at: startedAt, value, u: quantity === "f0" ? f0U : qU, cycle, phaseId }];
+    return [{ at: startedAt, value, u: quantity === "f0" ? f0U : qU, cycle, phaseId, mountId }];
   });
-  const shown = values.map(({ at, ...rest }) => ({ at: at.toISOString(), ...rest }));
-  const rising = values.filter(({ at }, i) => i === 0 || at > values[i - 1].at);
+  const shown = values.map(({ at, mountId: _mountId, ...rest }) => ({ at: at.toISOString(), ...rest }));
+  const ofMount = values.filter(({ mountId }) => mountId === values[values.length - 1].mountId);
+  const rising = ofMount.filter(({ at }, i) => i === 0 || at > ofMount[i - 1].at);
   const first = rising[0]?.at;
   const line =
     first &&
@@ -26,8 +30,9 @@ export async function readDrift(campaignId: string, query: DriftQuery): Promise<
       atDays: Float64Array.from(rising, ({ at }) => (at.getTime() - first.getTime()) / DAY_MS),
       values: Float64Array.from(rising, ({ value }) => value),
     });
-  const used = `${values.length} phase values${values.length < 3 ? "; at least three are needed" : ""}`;
-  const common = { unit, n: values.length, steps: [], values: shown, used };
+  const newest = ofMount.length < values.length ? ` of the newest mount, ${values.length - ofMount.length} before it left out` : "";
+  const used = `${rising.length} phase values${newest}${rising.length < 3 ? "; at least three are needed" : ""}`;
+  const common = { unit, n: rising.length, steps: [], values: shown, used };
   if (!line) {
     return { ...common, slopePerDay: null, u: null, ppmPerDay: null, lower: null, upper: null, intercept: null, from: null, to: null, leastSquares: null, theilSen: null };
   }

@@ -62,16 +62,21 @@ async function repeats(phases: readonly SelectedPhase[], fitRunId: string, quant
   return { atS, values, leftOut, used: `${n - out} repeats of ${phases.length} phases${out > 0 ? `, ${out} left out` : ""}` };
 }
 
-/** One value a cycle, of the role that decides in the medium: references in air, samples in a liquid. Missing cycles are holes. */
+/**
+ * One value a cycle, of the role that decides in the medium: references in air, samples in a liquid. Missing cycles are holes,
+ * and so is a re-mount: what the clamping changed is no instability of the sensor.
+ */
 function phaseValues(phases: readonly SelectedPhase[], quantity: "f0" | "q"): Series {
   const role = phases.some((phase) => phase.role === "reference") ? "reference" : "sample";
   const byCycle = new Map<number, SelectedPhase>();
   for (const phase of phases) if (phase.role === role && phase.f0Mean !== null && phase.startedAt) byCycle.set(phase.cycle, phase);
   const kept = [...byCycle.values()].sort((a, b) => a.sequence - b.sequence);
+  const places = kept.flatMap((phase, i) => (i > 0 && phase.mountId !== kept[i - 1].mountId ? [{ phase, isHole: true }, { phase, isHole: false }] : [{ phase, isHole: false }]));
+  const mounts = places.length - kept.length + 1;
   return {
-    atS: Float64Array.from(kept, ({ startedAt }) => (startedAt as Date).getTime() / 1000),
-    values: Float64Array.from(kept, ({ f0Mean, qMean }) => (quantity === "f0" ? f0Mean : qMean) as number),
-    leftOut: new Uint8Array(kept.length),
-    used: `${kept.length} phase values, one a cycle, of the ${role}s`,
+    atS: Float64Array.from(places, ({ phase }) => (phase.startedAt as Date).getTime() / 1000),
+    values: Float64Array.from(places, ({ phase }) => (quantity === "f0" ? phase.f0Mean : phase.qMean) as number),
+    leftOut: Uint8Array.from(places, ({ isHole }) => (isHole ? 1 : 0)),
+    used: `${kept.length} phase values, one a cycle, of the ${role}s${mounts > 1 ? ` under ${mounts} mounts` : ""}`,
   };
 }

@@ -85,7 +85,7 @@ export function presentCampaign(found: CampaignRecord): CampaignItem {
     startedClock: iso(found.startedClock),
     endedClock: iso(found.endedClock),
     cursor: found.cursorText,
-    cycle: cursor?.cycle ?? 0,
+    cycle: cursor?.cyclesBegun ?? 0,
     progress: { repeats: found.repeats, repeatsPlanned: planned?.repeats ?? null, cycles: planned?.cycles ?? null },
     expectedEnd: expectedEnd(found),
     shiftPpm: found.shiftPpm,

@@ -79,8 +79,8 @@ test("the main job: protocol, queue, drift and pump failure mailed, an operator'
   await desk.getByText("Halted").first().waitFor({ timeout: 120_000 });
   const pump = await mailAbout(/Test bench halted/, operator.email);
   expect(pump.subject).toMatch(/fill/i);
-  expect(pump.text).toMatch(/Where: Test bench, sensor WR-2301, campaign C-\d+/);
-  expect(pump.text).toMatch(/Since: .*simulated rig time/);
+  expect(pump.text).toMatch(/Where: Test bench; sensor WR-2301; campaign C-\d+/);
+  expect(pump.text).toMatch(/halted Mon 5 Jan \d\d:\d\d \(the rig's simulated time\)/);
   expect(pump.text).toContain("The step was given up and the campaign holds.");
   expect(pump.text).toContain(`${appUrl}/alarms/`);
   const away = await mailAbout(/air reference/, researcher.email);

@@ -12,7 +12,7 @@ type Row = { rig: RigAnswer; asOf: number; counts: readonly number[]; longestSil
 
 const COLUMNS: readonly TableColumn<Row>[] = [
   { id: "rig", head: "Rig", slot: "a", cell: ({ rig }) => rig.name },
-  { id: "contacts", head: "Contacts, 24 h", slot: "w", cell: ({ rig, counts }) => <Contacts name={rig.name} counts={counts} />, width: 380 },
+  { id: "contacts", head: "Contacts, 24 h", slot: "w", cell: ({ rig, counts }) => <Contacts name={rig.name} counts={counts} />, width: 300 },
   { id: "seen", head: "Seen", slot: "b", align: "right", cell: ({ rig, asOf }) => (rig.lastContactAt ? formatAgo(rig.lastContactAt, asOf) : "never") },
   { id: "silence", head: "Longest silence", slot: "c", align: "right", cell: ({ longestSilenceS }) => (longestSilenceS === null ? NO_VALUE : formatDuration(longestSilenceS)) },
   { id: "state", head: "Says", slot: "d", cell: ({ rig }) => rig.agent?.message ?? rig.agent?.state ?? NO_VALUE },

@@ -7,7 +7,7 @@ import type { LaneRun } from "@/components/strip/lane-geometry";
 import { campaignCode } from "@/lib/campaigns/code";
 import { formatDay, formatDayTime } from "@/lib/format-time";
 import type { LaneAnswer, LaneCampaign } from "@/lib/rigs/timeline-schema";
-import { stripInputIn } from "../strip-input";
+import { stripInputIn } from "../to-strip-input";
 import { MoveHandle } from "./move-handle";
 import type { Moves } from "./use-moves";
 

@@ -11,7 +11,7 @@ import type { StripAnswer } from "@/lib/campaigns/strip-schema";
 import { formatUncertain } from "@/lib/format";
 import { formatAgo, formatDayTime, formatPlusMinus, formatRecent } from "@/lib/format-time";
 import type { TodayRig } from "@/lib/today/schema";
-import { stripInputIn } from "../strip-input";
+import { stripInputIn } from "../to-strip-input";
 import type { DaysShown } from "./on-the-rigs";
 
 const DAY_MS = 86_400_000;
