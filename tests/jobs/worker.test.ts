@@ -53,11 +53,12 @@ async function queue(): Promise<PgBoss> {
   return boss;
 }
 
+/** Opened at the present: one from long ago that nobody has would be told of once more by the sweep. */
 async function alarmWithMail(people = 1): Promise<string> {
   const rig = await buildRig();
   for (let i = 0; i < people; i++) await buildPerson({ role: "operator" });
   const { alarmId } = await inTransaction((transaction) =>
-    openAlarm(transaction, { now, rigId: rig.id, source: "system", kind: "clock", text: `${rig.name}: the clock is off`, actionText: "Measuring goes on.", mail: true }),
+    openAlarm(transaction, { now: new Date(), rigId: rig.id, source: "system", kind: "clock", text: `${rig.name}: the clock is off`, actionText: "Measuring goes on.", mail: true }),
   );
   return alarmId;
 }

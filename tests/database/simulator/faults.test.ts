@@ -46,7 +46,14 @@ async function endsTheSame({ person, ...disturbance }: Disturbance): Promise<voi
 }
 
 const tasks = () => rows<{ kind: string; state: string }>(`select kind, state from operator_task where campaign_id = $1 order by id`, [campaignId]);
-const isProgress = ({ path, body }: Request) => path.endsWith("/heartbeat") && body.includes('"done"');
+const FILL_ML = 20;
+
+/** A heartbeat that tells how far a fill is; the last one, with the whole volume, goes before the finish and tells nothing new. */
+function isProgress({ path, body }: Request): boolean {
+  if (!path.endsWith("/heartbeat")) return false;
+  const { done } = JSON.parse(body) as { done?: { volumeMl?: number } };
+  return done?.volumeMl !== undefined && done.volumeMl < FILL_ML;
+}
 
 describe("a disturbed run ends as the undisturbed one", { timeout: 90_000 }, () => {
   test("requests and answers dropped, delayed, doubled and in the wrong order", async () => {
