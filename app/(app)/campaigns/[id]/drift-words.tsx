@@ -14,7 +14,7 @@ export function DriftWords({ drift, name, n, leftOut }: DriftWordsProps) {
   return (
     <>
       {name} drifts by <b className="num">{formatUncertain(slopePerDay * 1000, u * 1000, { signed: true })} mHz a day</b> ({formatNumber(ppmPerDay, { decimals: 3, signed: true })} ppm; 95 % from {inMHz(lower)} to {inMHz(upper)} mHz), by
-      generalised least squares over {drift.n} phase values; the band is that of the slope.
+      generalised least squares over {drift.used}; the band is that of the slope.
       {leastSquares && ` Ordinary line ${formatUncertain(leastSquares.slopePerDay * 1000, leastSquares.u * 1000, { signed: true })}`}
       {theilSen && `, Theil–Sen ${inMHz(theilSen.slopePerDay)}`}
       {(leastSquares || theilSen) && " mHz a day."} {counted}
