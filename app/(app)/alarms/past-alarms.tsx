@@ -55,7 +55,7 @@ export function PastAlarms({ filter, rigs, now }: PastAlarmsProps) {
 }
 
 const columnsAt = (now: string): readonly TableColumn<AlarmAnswer>[] => [
-  { id: "since", head: "Since", slot: "b", cell: ({ openedAt, timeZone }) => <span className="num">{formatRecent(openedAt, timeZone, now)}</span> },
+  { id: "since", head: "Since", slot: "b", cell: ({ openedAt, openedClock, timeZone }) => <span className="num">{formatRecent(openedClock ?? openedAt, timeZone, now)}</span> },
   { id: "what", head: "What", slot: "a", cell: (alarm) => <Link href={`/alarms/${alarm.id}`}>{capitalised(titleOf(alarm))}</Link> },
   { id: "where", head: "Where", slot: "c", cell: ({ rig, campaignId }) => `${rig}${campaignId ? `, ${campaignCode(campaignId)}` : ""}` },
   { id: "far", head: "How far", slot: "x", cell: (alarm) => <HowFar alarm={alarm} /> },
