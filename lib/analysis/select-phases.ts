@@ -1,7 +1,7 @@
 import type { Selection } from "@/lib/analysis/schema";
 import { row, rows } from "@/lib/db";
 import { notFound } from "@/lib/errors";
-import { emptyColumns, decodeColumns, type PhaseColumns } from "@/lib/phases/columns";
+import { columnsOf, decodeColumns, type PhaseColumns, type Repeat } from "@/lib/phases/columns";
 import { markLeftOut } from "@/lib/phases/summarise";
 
 export type SelectedPhase = {
@@ -61,23 +61,14 @@ export async function loadColumns(phases: readonly SelectedPhase[], fitRunId: st
 }
 
 async function readOpenPhase({ stepId, discard }: SelectedPhase, fitRunId: string): Promise<PhaseColumns> {
-  const readings = await rows<{ idx: number; at: Date; f0Hz: number; q: number; f0StdHz: number | null; temperatureC: number | null; flags: number; excluded: boolean }>(
+  const readings = await rows<Repeat & { excluded: boolean }>(
     `select r.idx, r.at, f.f0_hz as "f0Hz", f.q, f.f0_std_hz as "f0StdHz", r.temperature_c as "temperatureC", f.flags,
             exists (select 1 from exclusion e where e.step_id = r.step_id and e.idx = r.idx and e.undone_at is null) as excluded
        from reading r cross join lateral (select * from fit where fit_run_id = $2 and step_id = $1 and idx = r.idx offset 0) f
       where r.step_id = $1 order by r.idx`,
     [stepId, fitRunId],
   );
-  const columns = emptyColumns(readings.length);
-  readings.forEach((reading, i) => {
-    columns.idx[i] = reading.idx;
-    columns.at[i] = reading.at.getTime();
-    columns.f0Hz[i] = reading.f0Hz ?? NaN;
-    columns.q[i] = reading.q ?? NaN;
-    columns.f0StdHz[i] = reading.f0StdHz ?? NaN;
-    columns.temperatureC[i] = reading.temperatureC ?? NaN;
-    columns.flags[i] = reading.flags;
-  });
+  const columns = columnsOf(readings);
   markLeftOut(columns, { discard, excluded: new Set(readings.filter(({ excluded }) => excluded).map(({ idx }) => idx)) });
   return columns;
 }

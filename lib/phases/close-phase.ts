@@ -1,6 +1,6 @@
 import type { Transaction } from "sequelize";
 import { change, row, rows } from "@/lib/db";
-import { emptyColumns, encodeColumns, type PhaseColumns } from "@/lib/phases/columns";
+import { columnsOf, encodeColumns, type PhaseColumns, type Repeat } from "@/lib/phases/columns";
 import { markLeftOut, summarise, type PhaseSummaryValues } from "@/lib/phases/summarise";
 
 export type ClosedPhase = {
@@ -62,16 +62,7 @@ const NO_VALUE = { n: 0, mean: NaN, sd: NaN, u: NaN, r1: NaN };
 
 const withoutValue = (summary: PhaseSummaryValues): PhaseSummaryValues => ({ ...summary, nUsed: 0, f0: NO_VALUE, q: NO_VALUE });
 
-type ReadingRow = {
-  idx: number;
-  at: Date;
-  temperatureC: number | null;
-  pressurePa: number | null;
-  f0Hz: number | null;
-  q: number | null;
-  f0StdHz: number | null;
-  flags: number;
-};
+type ReadingRow = Repeat & { pressurePa: number | null };
 
 async function readColumns(transaction: Transaction, { stepId, fitRunId }: PhaseRow): Promise<{ columns: PhaseColumns; pressurePa: number | null }> {
   const readings = await rows<ReadingRow>(
@@ -82,23 +73,9 @@ async function readColumns(transaction: Transaction, { stepId, fitRunId }: Phase
     [stepId, fitRunId],
     transaction,
   );
-  const columns = emptyColumns(readings.length);
-  let pressures = 0;
-  let pressureSum = 0;
-  readings.forEach((reading, i) => {
-    columns.idx[i] = reading.idx;
-    columns.at[i] = reading.at.getTime();
-    columns.f0Hz[i] = reading.f0Hz ?? NaN;
-    columns.q[i] = reading.q ?? NaN;
-    columns.f0StdHz[i] = reading.f0StdHz ?? NaN;
-    columns.temperatureC[i] = reading.temperatureC ?? NaN;
-    columns.flags[i] = reading.flags;
-    if (reading.pressurePa !== null) {
-      pressures++;
-      pressureSum += reading.pressurePa;
-    }
-  });
-  return { columns, pressurePa: pressures > 0 ? pressureSum / pressures : null };
+  const pressures = readings.flatMap(({ pressurePa }) => pressurePa ?? []);
+  const pressurePa = pressures.length > 0 ? pressures.reduce((sum, pressure) => sum + pressure, 0) / pressures.length : null;
+  return { columns: columnsOf(readings), pressurePa };
 }
 
 /** Median lag-1 autocorrelation of this medium's earlier phases in the campaign: the floor for short phases. */

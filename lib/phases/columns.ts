@@ -19,7 +19,7 @@ export type PhaseColumns = {
 
 const BYTES_EACH = 8 * 5 + 4 + 2 + 1;
 
-export function emptyColumns(n: number): PhaseColumns {
+function emptyColumns(n: number): PhaseColumns {
   return columnsOn(new ArrayBuffer(n * BYTES_EACH), n);
 }
 
@@ -36,6 +36,32 @@ function columnsOn(buffer: ArrayBuffer, n: number): PhaseColumns {
     flags: new Uint16Array(buffer, 44 * n, n),
     leftOut: new Uint8Array(buffer, 46 * n, n),
   };
+}
+
+/** One repeat as the database has it. */
+export type Repeat = {
+  idx: number;
+  at: Date;
+  f0Hz: number | null;
+  q: number | null;
+  f0StdHz: number | null;
+  temperatureC: number | null;
+  flags: number;
+};
+
+/** Repeats by rising index as columns; `leftOut` is not marked yet. */
+export function columnsOf(repeats: readonly Repeat[]): PhaseColumns {
+  const columns = emptyColumns(repeats.length);
+  repeats.forEach((repeat, i) => {
+    columns.idx[i] = repeat.idx;
+    columns.at[i] = repeat.at.getTime();
+    columns.f0Hz[i] = repeat.f0Hz ?? NaN;
+    columns.q[i] = repeat.q ?? NaN;
+    columns.f0StdHz[i] = repeat.f0StdHz ?? NaN;
+    columns.temperatureC[i] = repeat.temperatureC ?? NaN;
+    columns.flags[i] = repeat.flags;
+  });
+  return columns;
 }
 
 /** Little-endian bytes for `phase_summary.columns`. */
