@@ -57,16 +57,17 @@ function limitsNear(buckets: readonly { min: number; max: number }[], limit: num
   return [low < -limit / 3 ? -limit : 0, high > limit / 3 ? limit : 0].filter((value) => value !== 0).map((value) => ({ value, label: `limit ${formatNumber(value, { decimals: Math.abs(value) < 10 ? 1 : 0 })} mHz` }));
 }
 
-/** The drift line over each phase, with the 95 % band of its slope about the mean time of the phase values. */
+/** The drift line over each phase of its mount, with the 95 % band of its slope about the mean time of the phase values. */
 export function driftLine({ slopePerDay, intercept, from, lower, upper, values }: DriftAnswer, phases: readonly AxisPhase[], shift: (hz: number) => number): ModelPoint[] | undefined {
   if (slopePerDay === null || intercept === null || from === null || lower === null || upper === null || values.length === 0) return undefined;
   const start = Date.parse(from);
-  const pivot = values.reduce((sum, { at }) => sum + Date.parse(at) / values.length, 0);
+  const own = values.filter(({ at }) => Date.parse(at) >= start);
+  const pivot = own.reduce((sum, { at }) => sum + Date.parse(at) / own.length, 0);
   const point = (time: number): ModelPoint => {
     const value = intercept + (slopePerDay * (time - start)) / DAY_MS;
     const days = (time - pivot) / DAY_MS;
     const ends = [value + (lower - slopePerDay) * days, value + (upper - slopePerDay) * days].map(shift).sort((a, b) => a - b);
     return { at: new Date(time).toISOString(), value: shift(value), low: ends[0], high: ends[1] };
   };
-  return phases.flatMap((phase) => [point(Date.parse(phase.from)), point(Date.parse(phase.to))]);
+  return phases.filter((phase) => Date.parse(phase.from) >= start).flatMap((phase) => [point(Date.parse(phase.from)), point(Date.parse(phase.to))]);
 }
