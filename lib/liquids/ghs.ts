@@ -1,7 +1,7 @@
 /**
  * Hazard statements of liquids as a bottle's label carries them.
  * Source: United Nations, Globally Harmonized System of Classification and Labelling of Chemicals, Rev. 10 (2023),
- * annex 3, section 1 (codes and texts). The classes are the usual short forms; where a statement serves two categories both are named.
+ * annex 3, section 1 (codes and texts; written from memory, not checked against a copy). The classes are the usual short forms; where a statement serves two categories both are named.
  */
 export type HazardStatement = { hazardClass: string; text: string };
 
