@@ -8,14 +8,14 @@ export default defineConfig({
   resolve: { alias },
   test: {
     projects: [
-      { resolve: { alias }, test: { name: "numerics", include: ["tests/numerics/**/*.test.ts", "tests/scripts/**/*.test.ts", "tests/*.test.ts"] } },
+      { resolve: { alias }, test: { name: "numerics", include: ["tests/numerics/**/*.test.ts", "tests/scripts/**/*.test.ts", "tests/*.test.ts"], setupFiles: "tests/setup/fast-check.ts" } },
       {
         resolve: { alias },
         test: {
           name: "database",
           include: ["tests/database/**/*.test.ts", "tests/jobs/**/*.test.ts"],
           globalSetup: "tests/setup/postgres.ts",
-          setupFiles: "tests/setup/database.ts",
+          setupFiles: ["tests/setup/fast-check.ts", "tests/setup/database.ts"],
           testTimeout: 30_000,
           hookTimeout: 60_000,
           maxWorkers: 2,
