@@ -77,6 +77,7 @@ function describe(path: string, method: Method, operation: Operation, components
     : content({}, operation.produces ?? ["application/json"]);
   const extra = operation.answer && operation.produces ? content({ type: "string" }, operation.produces) : {};
   const empty = !operation.answer && !operation.produces;
+  const mayBeEmpty = operation.answer?.safeParse(undefined).success;
 
   return {
     operationId: id,
@@ -94,6 +95,7 @@ function describe(path: string, method: Method, operation: Operation, components
     }),
     responses: {
       [empty && status === 200 ? "204" : String(status)]: { description: summary, ...(!empty && { content: { ...answer, ...extra } }) },
+      ...(mayBeEmpty && { 204: { description: "Nothing is in it" } }),
       default: { description: "A problem, see its type", content: { "application/problem+json": { schema: { $ref: "#/components/schemas/Problem" } } } },
     },
   };

@@ -25,7 +25,7 @@ export const LABORATORY_EXAMPLES = {
   "POST /api/sensors": { "A vibrating wire": { serial: "WR-2204", kind: "wire", nominalF0Hz: 2400, nominalQ: 1800, radiusM: 0.00005 } },
   "PATCH /api/sensors/{id}": { "A note": { note: "Rewound in March" } },
   "POST /api/sensors/{id}/mounts": { Now: { rigId: "1" }, "As it was": { rigId: "1", position: 2, mountedAt: "2026-05-12T09:30:00Z", note: "New clamp" } },
-  "POST /api/mounts/{id}/end": { Now: {}, "As it was": { endedAt: "2026-05-14T16:00:00Z", note: "For a look under the microscope" } },
+  "POST /api/mounts/{id}/end": { Now: {}, "As it was": { endedAt: "2026-05-14T11:30:00Z", note: "For a look under the microscope" } },
   "POST /api/liquids": {
     Water: { name: "Water, degassed", model: "water" },
     "A flammable mixture": {
