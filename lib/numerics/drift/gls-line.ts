@@ -1,15 +1,7 @@
 import { blockMeans } from "@/lib/numerics/drift/block-means";
-import { choleskyInPlace, solveLowerInPlace } from "@/lib/numerics/drift/cholesky";
-import {
-  differenceCovariance,
-  differencedSeries,
-  noiseExponents,
-  type DifferencedSeries,
-} from "@/lib/numerics/drift/differenced-series";
+import { glsFit } from "@/lib/numerics/drift/gls-fit";
+import { differencesWithin, longestWhitened, whiteners } from "@/lib/numerics/drift/whiteners";
 import { studentTQuantile } from "@/lib/numerics/statistics/distributions";
-
-/** Values up to which the full covariance is used; its cost grows with the cube. */
-const mostValues = 300;
 
 export type GlsLine = {
   slope: number;
@@ -62,11 +54,15 @@ export function glsLine({
   if (!x.every(Number.isFinite) || !y.every(Number.isFinite)) throw new RangeError("a value is not finite");
   if (x.length < 3) return undefined;
 
-  const blocks = blockMeans({ x, y }, mostValues);
+  const blocks = blockMeans({ x, y }, longestWhitened);
   const n = blocks.x.length;
-  const series = differencedSeries(blocks);
-  const fits = noiseExponents.map((alpha) => slopeUnder(alpha, series));
-  const { slope, u, alpha } = averageFits(fits);
+  const { coefficients, covariance, alpha } = glsFit({
+    noise: whiteners([blocks.x]),
+    values: differencesWithin([blocks.y]),
+    columns: [differencesWithin([blocks.x])],
+  });
+  const [slope] = coefficients;
+  const u = Math.sqrt(covariance[0]);
   const t = studentTQuantile((1 + confidence) / 2, n - 2);
   return {
     slope,
@@ -80,44 +76,6 @@ export function glsLine({
   };
 }
 
-type Fit = { alpha: number; slope: number; variance: number; logLikelihood: number };
-
-function slopeUnder(alpha: number, { dx, dy, grid }: DifferencedSeries): Fit {
-  const size = dx.length;
-  const covariance = differenceCovariance(alpha, grid);
-  const logDeterminant = choleskyInPlace(covariance, size);
-  const line = solveLowerInPlace(covariance, dx.slice());
-  const values = solveLowerInPlace(covariance, dy.slice());
-
-  const information = dot(line, line);
-  const slope = dot(line, values) / information;
-  let squares = 0;
-  for (let i = 0; i < size; i++) squares += (values[i] - slope * line[i]) ** 2;
-  const dof = size - 1;
-  const logLikelihood = -(dof * Math.log(squares / dof) + logDeterminant + Math.log(information)) / 2;
-  return { alpha, slope, variance: squares / dof / information, logLikelihood };
-}
-
-function averageFits(fits: readonly Fit[]): { slope: number; u: number; alpha: number } {
-  const exact = fits.find(({ variance }) => variance === 0);
-  if (exact) return { slope: exact.slope, u: 0, alpha: exact.alpha };
-
-  const best = Math.max(...fits.map(({ logLikelihood }) => logLikelihood));
-  const weights = fits.map(({ logLikelihood }) => Math.exp(logLikelihood - best));
-  const total = weights.reduce((sum, weight) => sum + weight, 0);
-  const average = (of: (fit: Fit) => number) => fits.reduce((sum, fit, i) => sum + (weights[i] / total) * of(fit), 0);
-
-  const slope = average((fit) => fit.slope);
-  const variance = average((fit) => fit.variance + (fit.slope - slope) ** 2);
-  return { slope, u: Math.sqrt(variance), alpha: average((fit) => fit.alpha) };
-}
-
 function mean(values: Float64Array): number {
   return values[0] + values.reduce((sum, value) => sum + (value - values[0]), 0) / values.length;
-}
-
-function dot(a: Float64Array, b: Float64Array): number {
-  let sum = 0;
-  for (let i = 0; i < a.length; i++) sum += a[i] * b[i];
-  return sum;
 }

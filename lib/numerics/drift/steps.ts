@@ -1,6 +1,8 @@
 import { blockMeans } from "@/lib/numerics/drift/block-means";
 import { differencedSeries, noiseExponents } from "@/lib/numerics/drift/differenced-series";
-import { addColumn, jointFit, whitenedSeries, type WhitenedSeries } from "@/lib/numerics/drift/whitened-series";
+import { glsFit } from "@/lib/numerics/drift/gls-fit";
+import { addColumn, whitenedSeries, type WhitenedSeries } from "@/lib/numerics/drift/whitened-series";
+import { longestWhitened, whiteners } from "@/lib/numerics/drift/whiteners";
 
 export type Step = {
   /** Position and time of the first value (or block) after the step. */
@@ -17,9 +19,6 @@ const shortestLevel = 3;
 const penaltyFactor = 3;
 
 const mostSteps = 20;
-
-/** Values up to which the full covariance is used; its cost grows with the cube. */
-const mostValues = 300;
 
 /**
  * Steps in a drifting series, by penalised generalised least squares: one slope, a level that jumps, and power-law noise
@@ -43,7 +42,7 @@ export function findSteps({ x, y }: { x: Float64Array; y: Float64Array }): Step[
   if (!x.every(Number.isFinite) || !y.every(Number.isFinite)) throw new RangeError("a value is not finite");
   if (x.length < 8) return [];
 
-  const blocks = blockMeans({ x, y }, mostValues);
+  const blocks = blockMeans({ x, y }, longestWhitened);
   const series = differencedSeries(blocks);
   const models = noiseExponents.map((alpha) => whitenedSeries(alpha, series));
   const found: number[] = [];
@@ -59,12 +58,12 @@ export function findSteps({ x, y }: { x: Float64Array; y: Float64Array }): Step[
 
   found.sort((a, b) => a - b);
   const columns = [series.dx, ...found.map((place) => unit(place, series.dx.length))];
-  const { coefficients, variances } = jointFit(models, columns);
+  const { coefficients, covariance } = glsFit({ noise: whiteners([blocks.x]), values: series.dy, columns });
   return found.map((place, k) => ({
     index: place + 1,
     at: blocks.x[place + 1],
     size: coefficients[k + 1],
-    u: Math.sqrt(variances[k + 1]),
+    u: Math.sqrt(covariance[(k + 1) * (columns.length + 1)]),
   }));
 }
 

@@ -1,4 +1,3 @@
-import { determinant, inverse, Matrix } from "ml-matrix";
 import { choleskyInPlace, inverseFromCholesky } from "@/lib/numerics/drift/cholesky";
 import { differenceCovariance, type DifferencedSeries } from "@/lib/numerics/drift/differenced-series";
 
@@ -46,46 +45,6 @@ export function addColumn(model: WhitenedSeries, column: Float64Array): void {
   }
   model.squares = Math.max(model.squares - share ** 2, 0);
   model.directions.push(direction);
-}
-
-/**
- * Coefficients of all columns together, averaged over the models with restricted-likelihood weights; the variances hold
- * the spread between models. The models' own columns do not matter, only their values and covariance.
- */
-export function jointFit(
-  models: readonly WhitenedSeries[],
-  columns: readonly Float64Array[],
-): { coefficients: number[]; variances: number[] } {
-  const fits = models.map((model) => fitOf(model, columns));
-  const best = Math.max(...fits.map(({ logLikelihood }) => logLikelihood));
-  const weights = fits.map(({ logLikelihood }) => (logLikelihood === best ? 1 : Math.exp(logLikelihood - best)));
-  const total = weights.reduce((sum, weight) => sum + weight, 0);
-  const average = (of: (fit: (typeof fits)[number]) => number) =>
-    fits.reduce((sum, fit, i) => sum + (weights[i] / total) * of(fit), 0);
-
-  const coefficients = columns.map((_, j) => average((fit) => fit.coefficients[j]));
-  const variances = columns.map((_, j) =>
-    average((fit) => fit.variances[j] + (fit.coefficients[j] - coefficients[j]) ** 2),
-  );
-  return { coefficients, variances };
-}
-
-function fitOf(model: WhitenedSeries, columns: readonly Float64Array[]) {
-  const weighted = columns.map((column) => times(model.inverse, column));
-  const information = new Matrix(columns.map((column) => weighted.map((other) => dot(column, other))));
-  const covariance = inverse(information);
-  const projections = Matrix.columnVector(weighted.map((column) => dot(column, model.values)));
-  const coefficients = covariance.mmul(projections).to1DArray();
-
-  const residual = model.values.map((value, i) => columns.reduce((left, column, j) => left - coefficients[j] * column[i], value));
-  const dof = residual.length - columns.length;
-  const variance = dot(residual, times(model.inverse, residual)) / dof;
-  const logInformation = Math.log(determinant(information));
-  return {
-    coefficients,
-    variances: covariance.diagonal().map((value) => value * variance),
-    logLikelihood: -(dof * Math.log(variance) + model.logDeterminant + logInformation) / 2,
-  };
 }
 
 function times(matrix: Float64Array, vector: Float64Array): Float64Array {

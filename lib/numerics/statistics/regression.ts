@@ -3,6 +3,10 @@ import { Matrix, QrDecomposition, inverse } from "ml-matrix";
 export type Regression = {
   coefficients: Float64Array;
   standardErrors: Float64Array;
+  /** Of the coefficients, rows one after another; scaled by the residual variance. */
+  covariance: Float64Array;
+  /** Natural logarithm of the determinant of XᵀX. */
+  logInformation: number;
   /** Sum of squared residuals, in the unit of y squared. */
   residualSumOfSquares: number;
   residualSd: number;
@@ -31,7 +35,7 @@ export function regression({ columns, y }: { columns: readonly Float64Array[]; y
   columns.forEach((column, j) => column.forEach((value, i) => design.set(i, j, value / scales[j])));
   const qr = new QrDecomposition(design);
   const r = qr.upperTriangularMatrix;
-  if (r.diagonal().some((value) => Math.abs(value) <= y.length * Number.EPSILON)) {
+  if (r.diagonal().some((value) => !(Math.abs(value) > y.length * Number.EPSILON))) {
     throw new RangeError("the columns depend on each other");
   }
 
@@ -43,10 +47,18 @@ export function regression({ columns, y }: { columns: readonly Float64Array[]; y
   const residualSumOfSquares = left.reduce((sum, residual) => sum + residual ** 2, 0);
   const residualSd = Math.sqrt(residualSumOfSquares / dof);
 
+  const size = columns.length;
   const rInverse = inverse(r);
+  const cofactors = rInverse.mmul(rInverse.transpose());
+  const covariance = new Float64Array(size * size);
+  for (let i = 0; i < size; i++) {
+    for (let j = 0; j < size; j++) covariance[i * size + j] = (cofactors.get(i, j) * residualSd ** 2) / (scales[i] * scales[j]);
+  }
   return {
     coefficients: Float64Array.from(scales, (scale, j) => scaled.get(j, 0) / scale),
     standardErrors: Float64Array.from(scales, (scale, j) => (residualSd * Math.hypot(...rInverse.getRow(j))) / scale),
+    covariance,
+    logInformation: scales.reduce((sum, scale, j) => sum + 2 * Math.log(Math.abs(r.get(j, j)) * scale), 0),
     residualSumOfSquares,
     residualSd,
     dof,

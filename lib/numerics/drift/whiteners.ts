@@ -1,0 +1,49 @@
+import { choleskyInPlace, solveLowerInPlace } from "@/lib/numerics/drift/cholesky";
+import { differenceCovariance, differencedSeries, noiseExponents } from "@/lib/numerics/drift/differenced-series";
+
+/** Values up to which the full covariance of a stretch is used; its cost grows with the cube. */
+export const longestWhitened = 300;
+
+/** Power-law noise of one exponent over stretches whose levels are free and whose noise is taken as independent. */
+export type Whitener = {
+  alpha: number;
+  /** Natural logarithm of the determinant of the covariance, in units of the variance over one grid step. */
+  logDeterminant: number;
+  /** Differences of adjacent values, stretch after stretch, made independent with equal variance. */
+  whiten: (differences: Float64Array) => Float64Array;
+};
+
+/** Differences of adjacent values inside each stretch, one stretch after the other. */
+export function differencesWithin(stretches: readonly Float64Array[]): Float64Array {
+  return Float64Array.from(stretches.flatMap((values) => [...values.subarray(1).map((value, i) => value - values[i])]));
+}
+
+/**
+ * Whiteners of a series for every exponent from 0 to −2 in quarters.
+ *
+ * @param times Of each stretch, rising; stretches of one value carry nothing and are passed over by the differences.
+ *   Each is at most 300 long for a tolerable cost, which grows with its cube.
+ * @throws RangeError if times do not rise, or a stretch is longer than 10⁷ of its median spacings.
+ */
+export function whiteners(times: readonly Float64Array[]): Whitener[] {
+  const grids = times.filter(({ length }) => length > 1).map((x) => differencedSeries({ x, y: x }).grid);
+  return noiseExponents.map((alpha) => {
+    let logDeterminant = 0;
+    const factors = grids.map((grid) => {
+      const covariance = differenceCovariance(alpha, grid);
+      logDeterminant += choleskyInPlace(covariance, grid.length - 1);
+      return covariance;
+    });
+    const whiten = (differences: Float64Array): Float64Array => {
+      const whitened = differences.slice();
+      let start = 0;
+      factors.forEach((factor, k) => {
+        const size = grids[k].length - 1;
+        solveLowerInPlace(factor, whitened.subarray(start, start + size));
+        start += size;
+      });
+      return whitened;
+    };
+    return { alpha, logDeterminant, whiten };
+  });
+}
