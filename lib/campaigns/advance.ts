@@ -1,6 +1,6 @@
 import type { Transaction } from "sequelize";
-import { lockCampaign, type CampaignRow } from "@/lib/campaigns/campaign-row";
-import { closeStep, lastClosed, openStep, skipStep } from "@/lib/campaigns/steps-of-campaign";
+import { lockCampaign, readLocked, type CampaignRow } from "@/lib/campaigns/campaign-row";
+import { closeStep, openAndLast, skipStep } from "@/lib/campaigns/steps-of-campaign";
 import { checkMount } from "@/lib/campaigns/check-mount";
 import { gatherFacts } from "@/lib/campaigns/facts";
 import { freeRig } from "@/lib/campaigns/free-rig";
@@ -50,7 +50,7 @@ async function goOn(transaction: Transaction, locked: CampaignRow, now: Date): P
       continue;
     }
     const parks = campaign.parking === "wanted" || campaign.parking === "running";
-    const open = await openStep(transaction, campaign.id);
+    const { open, last } = await openAndLast(transaction, campaign.id);
     if (open) {
       const due = open.kind === "wait" && open.dueAt && campaign.clock && open.dueAt <= campaign.clock;
       if (due && (campaign.state === "running" || open.detour === "park")) {
@@ -68,7 +68,6 @@ async function goOn(transaction: Transaction, locked: CampaignRow, now: Date): P
       continue;
     }
 
-    const last = await lastClosed(transaction, campaign.id);
     if (last?.state === "failed" && (await nothingToPark(transaction, campaign, last))) return;
     if (last && (await settlePhase(transaction, { campaign, step: last, now }))) {
       campaign = await again(transaction, campaign, now);
@@ -100,7 +99,7 @@ async function goOn(transaction: Transaction, locked: CampaignRow, now: Date): P
 }
 
 async function again(transaction: Transaction, { id }: CampaignRow, now: Date): Promise<CampaignRow> {
-  const campaign = await lockCampaign(transaction, { campaignId: id, now });
+  const campaign = await readLocked(transaction, { campaignId: id, now });
   if (!campaign) throw new Error(`campaign ${id} is gone`);
   return campaign;
 }

@@ -2,7 +2,7 @@ import type { Transaction } from "sequelize";
 import type { CampaignRow } from "@/lib/campaigns/campaign-row";
 import { openHold } from "@/lib/campaigns/open-hold";
 import { openStep, skipStep } from "@/lib/campaigns/steps-of-campaign";
-import { change, row } from "@/lib/db";
+import { change } from "@/lib/db";
 import { redirect } from "@/lib/protocol/interpreter";
 import { openTask } from "@/lib/tasks/open-task";
 
@@ -11,24 +11,20 @@ import { openTask } from "@/lib/tasks/open-task";
  * with a reference at the present set-point. Returns whether anything changed.
  */
 export async function checkMount(transaction: Transaction, { campaign, now }: { campaign: CampaignRow; now: Date }): Promise<boolean> {
-  const mount = await row<{ id: string }>(
-    `select id from mount where sensor_id = $1 and rig_id = $2 and upper_inf(period) and lower(period) <= greatest($3::timestamptz, $4::timestamptz)`,
-    [campaign.sensorId, campaign.rigId, now, campaign.clock],
-    transaction,
-  );
-  if (mount?.id === campaign.mountId && mount) return false;
+  const { mountId, presentMountId } = campaign;
+  if (presentMountId !== null && presentMountId === mountId) return false;
   const open = await openStep(transaction, campaign.id);
   if (open?.state === "out") return false;
-  if (!mount) {
+  if (presentMountId === null) {
     await askForMount(transaction, campaign, now);
     return true;
   }
-  const first = campaign.mountId === null || !campaign.cursor;
+  const first = mountId === null || !campaign.cursor;
   if (open && !first) await skipStep(transaction, { stepId: open.id, now });
   const cursor = first || !campaign.cursor ? campaign.cursor : redirect(campaign.definition, campaign.cursor, { kind: "reference", from: "phase" });
   await change(
     `update campaign set mount_id = $2, cursor = coalesce($3, cursor) where id = $1`,
-    [campaign.id, mount.id, cursor && !("impossible" in cursor) ? JSON.stringify(cursor) : null],
+    [campaign.id, presentMountId, cursor && !("impossible" in cursor) ? JSON.stringify(cursor) : null],
     transaction,
   );
   return true;

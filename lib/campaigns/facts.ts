@@ -7,19 +7,18 @@ import { trackKey, type Facts, type PhaseFacts } from "@/lib/protocol/types";
 
 type Gather = { campaign: CampaignRow; last: StepState | undefined; now: Date };
 
-/** What the interpreter needs to know of the world, in four short queries. */
+/** What the interpreter needs to know of the world, in three short queries. */
 export async function gatherFacts(transaction: Transaction, { campaign, last, now }: Gather): Promise<Facts> {
-  const { abilities, cursor, clock } = campaign;
+  const { abilities, cursor, clock, fitRunId } = campaign;
   if (!abilities || !cursor) throw new Error(`campaign ${campaign.id} has not started`);
-  const run = await row<{ id: string }>(`select id from fit_run where campaign_id = $1 and current`, [campaign.id], transaction);
   const baseline =
-    run && campaign.mountId
+    fitRunId && campaign.mountId
       ? await findBaseline(transaction, {
           campaignId: campaign.id,
           mountId: campaign.mountId,
           setPointC: cursor.setPointC,
           readout: campaign.definition.readout,
-          fitRunId: run.id,
+          fitRunId,
         })
       : undefined;
   return {

@@ -19,6 +19,7 @@ type Settle = { campaign: CampaignRow; step: StepState; now: Date };
  */
 export async function settlePhase(transaction: Transaction, { campaign, step, now }: Settle): Promise<boolean> {
   if (step.kind !== "measure" || step.state === "ready" || step.state === "out") return false;
+  if (step.settled && step.role !== "find") return false;
   await fitRest(transaction, step.id);
   await updateTrack(transaction, { stepId: step.id });
   if (step.settled || mayBeGivenOutAgain(campaign, step)) return false;

@@ -7,10 +7,14 @@ import { notify } from "@/lib/notify";
 import { start } from "@/lib/protocol/interpreter";
 import { FIT_CODE_VERSION } from "@/lib/readings/fit-code-version";
 
-/** Whether a rig has no campaign on it and is not blocked, and which queued one would be next: highest priority, then longest in line, of those whose time has come. */
+/**
+ * Whether a rig has no campaign on it and is not blocked, and which queued one would be next: highest priority, then longest in line, of those
+ * whose time has come. A simulated rig that has not told its clock has no time yet.
+ */
 const NEXT_IN_LINE = `
   select c.id from campaign c join rig on rig.id = c.rig_id
    where c.rig_id = $1 and c.state = 'queued' and rig.retired_at is null and rig.abilities is not null
+     and (rig.clock = 'real' or rig.reported_clock is not null)
      and (c.start_at is null or c.start_at <= case when rig.clock = 'real' then $2::timestamptz else rig.reported_clock end)
      and not exists (select 1 from maintenance_window w where w.rig_id = c.rig_id and w.withdrawn_at is null
                       and w.period @> case when rig.clock = 'real' then $2::timestamptz else rig.reported_clock end)

@@ -1,5 +1,5 @@
 import type { Transaction } from "sequelize";
-import { change, row } from "@/lib/db";
+import { change, row, rows } from "@/lib/db";
 
 export type StepState = {
   id: string;
@@ -34,6 +34,18 @@ export const lastClosed = (transaction: Transaction, campaignId: string) =>
     [campaignId],
     transaction,
   );
+
+/** Both in one look. A step given out again after a detour stands before the last. */
+export async function openAndLast(transaction: Transaction, campaignId: string): Promise<{ open?: StepState; last?: StepState }> {
+  const found = await rows<StepState>(
+    `select ${COLUMNS} from step s left join phase p on p.step_id = s.id
+      where s.campaign_id = $1 and (s.state in ('ready', 'out') or s.sequence = (select max(sequence) from step where campaign_id = $1))
+      order by s.sequence desc`,
+    [campaignId],
+    transaction,
+  );
+  return { open: found.find(({ state }) => state === "ready" || state === "out"), last: found[0] };
+}
 
 export async function closeStep(transaction: Transaction, { stepId, clock, now }: { stepId: string; clock: Date; now: Date }): Promise<void> {
   await change(

@@ -12,7 +12,7 @@ export async function findCampaignsToAdvance({ now }: { now: Date }): Promise<st
          from campaign c join rig on rig.id = c.rig_id join protocol_version v on v.id = c.protocol_version_id
         where c.state in ('queued', 'running', 'held') or c.parking in ('wanted', 'running')),
      due as (
-       select id, false as park from clocked where state = 'queued' and (start_at is null or start_at <= clock)
+       select id, false as park from clocked where state = 'queued' and clock is not null and (start_at is null or start_at <= clock)
        union
        select clocked.id, false from clocked join step s on s.campaign_id = clocked.id and s.kind = 'wait' and s.state = 'ready' and s.due_at <= clock
         where clocked.state = 'running' or parking = 'running'

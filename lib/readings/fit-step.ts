@@ -1,5 +1,5 @@
 import type { Transaction } from "sequelize";
-import { change, inTransaction, row, rows } from "@/lib/db";
+import { change, inTransaction, rows } from "@/lib/db";
 import { flagBits } from "@/lib/numerics/resonance/flags";
 import type { Readout } from "@/lib/numerics/resonance/types";
 import { refreshPhase } from "@/lib/phases/close-phase";
@@ -32,7 +32,7 @@ export async function fitStep(asked: { stepId: string; now: Date }): Promise<num
 async function fitAll({ stepId, now }: { stepId: string; now: Date }): Promise<number> {
   let fitted = 0;
   for (;;) {
-    const n = await inTransaction((transaction) => fitBatch(transaction, stepId));
+    const n = await fitBatch(stepId);
     fitted += n;
     if (n < BATCH) break;
   }
@@ -42,29 +42,26 @@ async function fitAll({ stepId, now }: { stepId: string; now: Date }): Promise<n
 
 /** The same within a transaction, for whoever decides on the fits: what came after the last look is in them too. */
 export async function fitRest(transaction: Transaction, stepId: string): Promise<void> {
-  while ((await fitBatch(transaction, stepId)) === BATCH);
+  while ((await fitBatch(stepId, transaction)) === BATCH);
 }
 
-async function fitBatch(transaction: Transaction, stepId: string): Promise<number> {
-  const context = await row<FitContext>(
-    `select r.id as "fitRunId", r.settings, v.definition->>'readout' as readout, (s.params->'sweep'->>'dwellS')::float8 as "dwellS"
-       from step s join fit_run r on r.campaign_id = s.campaign_id and r.current join protocol_version v on v.id = s.protocol_version_id
-      where s.id = $1`,
-    [stepId],
-    transaction,
-  );
-  if (!context) return 0;
-  const waiting = await rows<{ idx: number; kind: number; flags: number; startHz: number | null; stopHz: number | null; points: number; data: Buffer }>(
-    // One look-up a reading, by the whole key: PostgreSQL takes a new step for one row and would go through it once for each.
-    `select r.idx, r.kind, r.flags, w.start_hz as "startHz", w.stop_hz as "stopHz", w.points, w.data
-       from (select idx from reading where step_id = $1 except select idx from fit where fit_run_id = $2 and step_id = $1 order by idx limit ${BATCH}) left_over
-       cross join lateral (select * from reading where step_id = $1 and idx = left_over.idx offset 0) r
-       cross join lateral (select * from sweep where step_id = $1 and idx = left_over.idx offset 0) w
-      order by r.idx`,
-    [stepId, context.fitRunId],
-    transaction,
-  );
+type Waiting = FitContext & { idx: number; kind: number; flags: number; startHz: number | null; stopHz: number | null; points: number; data: Buffer };
+
+// One look-up a reading, by the whole key: PostgreSQL takes a new step for one row and would go through it once for each.
+const WAITING = `
+  select run.id as "fitRunId", run.settings, v.definition->>'readout' as readout, (s.params->'sweep'->>'dwellS')::float8 as "dwellS",
+         r.idx, r.kind, r.flags, w.start_hz as "startHz", w.stop_hz as "stopHz", w.points, w.data
+    from step s join fit_run run on run.campaign_id = s.campaign_id and run.current join protocol_version v on v.id = s.protocol_version_id
+   cross join lateral (select idx from reading where step_id = $1 except select idx from fit where fit_run_id = run.id and step_id = $1 order by idx limit ${BATCH}) left_over
+   cross join lateral (select * from reading where step_id = $1 and idx = left_over.idx offset 0) r
+   cross join lateral (select * from sweep where step_id = $1 and idx = left_over.idx offset 0) w
+   where s.id = $1
+   order by r.idx`;
+
+async function fitBatch(stepId: string, transaction?: Transaction): Promise<number> {
+  const waiting = await rows<Waiting>(WAITING, [stepId], transaction);
   if (waiting.length === 0) return 0;
+  const [context] = waiting;
   const fits = waiting.map((stored) => ({ stored, fit: fitRecord(stored, context) }));
   const column = (pick: (one: (typeof fits)[number]) => number) => fits.map((one) => finiteOrNull(pick(one)));
   await change(

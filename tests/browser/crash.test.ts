@@ -74,10 +74,14 @@ async function prepare(name: string): Promise<Run> {
   return { campaignId: campaign.id, token, stateFolder: path.join(folder, name) };
 }
 
+const logOf = (stateFolder: string): string => `${stateFolder}.log`;
+
 /** The simulator in a process of its own, as a laboratory runs it. */
 function simulate({ token, stateFolder }: Run): ChildProcess {
   const options = ["--url", appUrl, "--token", token, "--scenario", scenarioFile, "--seed", "5", "--speed", "fast", "--clock-start", "2026-01-05T03:00:00Z", "--state", stateFolder];
-  const simulator = spawn(process.execPath, ["--import", "tsx", "rig-simulator/cli.ts", "run", ...options], { cwd: root, stdio: "ignore" });
+  const log = fs.openSync(logOf(stateFolder), "a");
+  const simulator = spawn(process.execPath, ["--import", "tsx", "rig-simulator/cli.ts", "run", ...options], { cwd: root, stdio: ["ignore", log, log] });
+  fs.closeSync(log);
   simulators.add(simulator);
   return simulator;
 }
@@ -108,9 +112,14 @@ async function stored({ campaignId }: Run): Promise<number> {
 
 const reaches = (run: Run, repeats: number) => expect.poll(() => stored(run), { timeout: 60_000, interval: 20 }).toBeGreaterThanOrEqual(repeats);
 
-async function finishes({ campaignId }: Run): Promise<void> {
+async function finishes({ campaignId, stateFolder }: Run): Promise<void> {
   const state = async () => (await row<{ state: string }>(`select state from campaign where id = $1`, [campaignId]))?.state;
-  await expect.poll(state, { timeout: 120_000, interval: 100 }).toBe("finished");
+  try {
+    await expect.poll(state, { timeout: 120_000, interval: 100 }).toBe("finished");
+  } catch (error) {
+    console.error(fs.readFileSync(logOf(stateFolder), "utf8").slice(-4000));
+    throw error;
+  }
 }
 
 /** Everything that was measured, and what was made of it: by (sequence, index), and by phase. */
@@ -129,7 +138,7 @@ async function outcome({ campaignId }: Run) {
   return { readings, phases };
 }
 
-it("web, worker and simulator killed in mid-campaign and started again: it finishes with every repeat exactly once, as if undisturbed", { timeout: 300_000, retry: 2 }, async () => {
+it("web, worker and simulator killed in mid-campaign and started again: it finishes with every repeat exactly once, as if undisturbed", { timeout: 300_000 }, async () => {
   const calm = await prepare("calm");
   const undisturbed = simulate(calm);
   await finishes(calm);
