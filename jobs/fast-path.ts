@@ -29,9 +29,9 @@ export async function startFastPath({ onError, onMail, onAdvanced }: Options): P
     });
 
   const unsubscribe = await listener().subscribe((topic) => {
-    const [what, key] = topic.split(":", 2);
+    const [what, key, from] = topic.split(":", 3);
     if (what === "campaign") advance(key);
-    else if (what === "fit") queue.run(topic, () => fitStep({ stepId: key, now: new Date() }));
+    else if (what === "fit") queue.run(topic, () => fitStep({ stepId: key, from: Number(from), now: new Date() }));
     else if (what === "mail") queue.run("mail", onMail);
     else if (what === "*") {
       catchUp();

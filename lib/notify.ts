@@ -5,10 +5,10 @@ import { sequelize } from "@/lib/db";
 export const CHANNEL = "longreed";
 
 /**
- * `rig:<id>` a step may be had; `campaign:<id>` something to decide; `fit:<step id>` readings to fit;
+ * `rig:<id>` a step may be had; `campaign:<id>` something to decide; `fit:<step id>:<index>` readings to fit, from that index on;
  * `mail` notifications wait; `changed:<what>` for pages that follow.
  */
-export type Topic = `rig:${string}` | `campaign:${string}` | `fit:${string}` | "mail" | `changed:${string}`;
+export type Topic = `rig:${string}` | `campaign:${string}` | `fit:${string}:${number}` | "mail" | `changed:${string}`;
 
 /** Leaves at COMMIT, so that whoever wakes finds the change. */
 export async function notify(topic: Topic, transaction?: Transaction): Promise<void> {

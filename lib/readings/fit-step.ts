@@ -10,15 +10,18 @@ const BATCH = 200;
 
 type FitContext = { fitRunId: string; settings: FitSettings; readout: Readout; dwellS: number | undefined };
 
+type Asked = { stepId: string; from?: number; now: Date };
+
 /** Steps that this process is fitting: who asks again waits, then finds what is left, instead of fitting the same once more. */
 const inHand = new Map<string, Promise<unknown>>();
 
 /**
  * Fits what of a step has no fit yet in the campaign's current run. Any number of processes may do it at once:
  * the first result of a reading stays, and equal input gives an equal result. What came too late for its phase is shown with
- * it all the same. Returns how many were fitted.
+ * it all the same. Whoever knows which readings are new looks from the first of them on: a long step is not gone through each
+ * time. Returns how many were fitted.
  */
-export async function fitStep(asked: { stepId: string; now: Date }): Promise<number> {
+export async function fitStep(asked: Asked): Promise<number> {
   const before = inHand.get(asked.stepId) ?? Promise.resolve();
   const work = before.catch(() => undefined).then(() => fitAll(asked));
   inHand.set(asked.stepId, work);
@@ -29,10 +32,10 @@ export async function fitStep(asked: { stepId: string; now: Date }): Promise<num
   }
 }
 
-async function fitAll({ stepId, now }: { stepId: string; now: Date }): Promise<number> {
+async function fitAll({ stepId, from = 0, now }: Asked): Promise<number> {
   let fitted = 0;
   for (;;) {
-    const n = await fitBatch(stepId);
+    const n = await fitBatch({ stepId, from });
     fitted += n;
     if (n < BATCH) break;
   }
@@ -42,7 +45,7 @@ async function fitAll({ stepId, now }: { stepId: string; now: Date }): Promise<n
 
 /** The same within a transaction, for whoever decides on the fits: what came after the last look is in them too. */
 export async function fitRest(transaction: Transaction, stepId: string): Promise<void> {
-  while ((await fitBatch(stepId, transaction)) === BATCH);
+  while ((await fitBatch({ stepId, from: 0 }, transaction)) === BATCH);
 }
 
 type Waiting = FitContext & { idx: number; kind: number; flags: number; startHz: number | null; stopHz: number | null; points: number; data: Buffer };
@@ -52,14 +55,15 @@ const WAITING = `
   select run.id as "fitRunId", run.settings, v.definition->>'readout' as readout, (s.params->'sweep'->>'dwellS')::float8 as "dwellS",
          r.idx, r.kind, r.flags, w.start_hz as "startHz", w.stop_hz as "stopHz", w.points, w.data
     from step s join fit_run run on run.campaign_id = s.campaign_id and run.current join protocol_version v on v.id = s.protocol_version_id
-   cross join lateral (select idx from reading where step_id = $1 except select idx from fit where fit_run_id = run.id and step_id = $1 order by idx limit ${BATCH}) left_over
+   cross join lateral (select idx from reading where step_id = $1 and idx >= $2
+                         except select idx from fit where fit_run_id = run.id and step_id = $1 and idx >= $2 order by idx limit ${BATCH}) left_over
    cross join lateral (select * from reading where step_id = $1 and idx = left_over.idx offset 0) r
    cross join lateral (select * from sweep where step_id = $1 and idx = left_over.idx offset 0) w
    where s.id = $1
    order by r.idx`;
 
-async function fitBatch(stepId: string, transaction?: Transaction): Promise<number> {
-  const waiting = await rows<Waiting>(WAITING, [stepId], transaction);
+async function fitBatch({ stepId, from }: { stepId: string; from: number }, transaction?: Transaction): Promise<number> {
+  const waiting = await rows<Waiting>(WAITING, [stepId, from], transaction);
   if (waiting.length === 0) return 0;
   const [context] = waiting;
   const fits = waiting.map((stored) => ({ stored, fit: fitRecord(stored, context) }));

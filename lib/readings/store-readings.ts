@@ -62,7 +62,7 @@ export function storeReadings({ agent, session, stepId, body, now }: StoreReadin
       [stepId, stored.size, current, leaseExpiresAt],
       transaction,
     );
-    if (stored.size > 0) await notify(`fit:${stepId}`, transaction);
+    if (stored.size > 0) await notify(`fit:${stepId}:${Math.min(...stored)}`, transaction);
     return {
       stored: [...stored].sort((a, b) => a - b),
       alreadyStored,
