@@ -3,6 +3,7 @@ import { z } from "zod";
 import { change, row } from "@/lib/db";
 import { env } from "@/lib/env";
 import { notAllowed, notSignedIn } from "@/lib/errors";
+import { idSchema } from "@/lib/http/ids";
 import { demandOwnOrigin } from "@/lib/http/origin";
 import type { Actor } from "@/lib/people/actor";
 import { sessionCookieName } from "@/lib/people/session-cookie";
@@ -10,7 +11,7 @@ import { hashToken } from "@/lib/tokens";
 
 export type Authenticated = Actor & { tokenId?: string };
 
-const claims = z.object({ id: z.string(), sessionVersion: z.number() });
+const claims = z.object({ id: idSchema, sessionVersion: z.int() });
 const reading = new Set(["GET", "HEAD", "OPTIONS"]);
 
 /** @throws AppError 401 without a valid session or token, 403 for a mutation from elsewhere or with a reading token. */

@@ -1,6 +1,7 @@
 import type { Transaction } from "sequelize";
 import { z } from "zod";
 import { row, rows } from "@/lib/db";
+import { demandExists } from "@/lib/demand-exists";
 import { notFound } from "@/lib/errors";
 import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page } from "@/lib/http/paging";
@@ -27,7 +28,7 @@ export async function getLot(lotId: string, transaction?: Transaction): Promise<
   return present(found);
 }
 
-/** Lots, of one liquid if asked, newest first. */
+/** Lots, of one liquid if asked, newest first. @throws AppError 404 when there is no such liquid. */
 export async function findLots({ limit, cursor, liquidId, search }: LotQuery): Promise<Page<LotAnswer>> {
   const [id] = readCursor(cursor, z.tuple([idSchema])) ?? [null];
   const found = await rows<LotRow>(
@@ -36,6 +37,7 @@ export async function findLots({ limit, cursor, liquidId, search }: LotQuery): P
      order by lot.id desc limit $4`,
     [liquidId ?? null, id, search?.trim() || null, limit + 1],
   );
+  if (liquidId && found.length === 0) await demandExists("liquid", liquidId);
   const { items, nextCursor } = cutPage(found, limit, (lot) => [lot.id]);
   return { items: items.map(present), nextCursor };
 }

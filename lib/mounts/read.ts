@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { row, rows } from "@/lib/db";
+import { demandExists } from "@/lib/demand-exists";
 import { notFound } from "@/lib/errors";
 import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page } from "@/lib/http/paging";
@@ -20,7 +21,7 @@ export async function getMount(mountId: string): Promise<MountAnswer> {
   return present(found);
 }
 
-/** Mounts of a sensor or of a rig, or all, newest first. */
+/** Mounts of a sensor or of a rig, or all, newest first. @throws AppError 404 when there is no such sensor. */
 export async function findMounts({ sensorId, rigId, limit, cursor, open }: MountQuery & { sensorId?: string; rigId?: string }): Promise<Page<MountAnswer>> {
   const [id] = readCursor(cursor, z.tuple([idSchema])) ?? [null];
   const found = await rows<MountRow>(
@@ -29,6 +30,7 @@ export async function findMounts({ sensorId, rigId, limit, cursor, open }: Mount
      order by m.id desc limit $5`,
     [sensorId ?? null, rigId ?? null, open === undefined ? null : open === "true", id, limit + 1],
   );
+  if (sensorId && found.length === 0) await demandExists("sensor", sensorId);
   const { items, nextCursor } = cutPage(found, limit, (mount) => [mount.id]);
   return { items: items.map(present), nextCursor };
 }

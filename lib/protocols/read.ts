@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { row, rows } from "@/lib/db";
+import { demandExists } from "@/lib/demand-exists";
 import { notFound } from "@/lib/errors";
 import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page, type PageQuery } from "@/lib/http/paging";
@@ -87,7 +88,7 @@ export async function getProtocol(protocolId: string): Promise<ProtocolAnswer> {
 
 const VERSION = `v.id, v.version, v.note, v.created_at as "savedAt", w.name as "savedBy", (${CAMPAIGNS("c.protocol_version_id = v.id")}) as campaigns`;
 
-/** Versions of a protocol, newest first; none for a protocol that does not exist. */
+/** Versions of a protocol, newest first. @throws AppError 404 when there is no such protocol. */
 export async function findVersions({ protocolId, limit, cursor }: PageQuery & { protocolId: string }): Promise<Page<VersionItem>> {
   const [before] = readCursor(cursor, z.tuple([z.int()])) ?? [null];
   const found = await rows<VersionRow>(
@@ -95,6 +96,7 @@ export async function findVersions({ protocolId, limit, cursor }: PageQuery & { 
       where v.protocol_id = $1 and ($2::integer is null or v.version < $2) order by v.version desc limit $3`,
     [protocolId, before, limit + 1],
   );
+  if (found.length === 0) await demandExists("protocol", protocolId);
   const { items, nextCursor } = cutPage(found, limit, ({ version }) => [version]);
   return { items: items.map(presentVersion), nextCursor };
 }

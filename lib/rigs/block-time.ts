@@ -2,6 +2,7 @@ import { z } from "zod";
 import { audit } from "@/lib/audit/record";
 import { constraintOf } from "@/lib/conflicts";
 import { change, inTransaction, row, rows } from "@/lib/db";
+import { demandExists } from "@/lib/demand-exists";
 import { conflict, impossible, notFound } from "@/lib/errors";
 import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page } from "@/lib/http/paging";
@@ -51,7 +52,7 @@ export async function unblockTime({ by, now, windowId }: { by: Actor; now: Date;
 type BlockQuery = { rigId: string; now: Date; limit: number; cursor?: string };
 type BlockRow = { id: string; from: Date; to: Date; why: string; createdBy: string };
 
-/** Blocked times of a rig that have not passed, soonest first. */
+/** Blocked times of a rig that have not passed, soonest first. @throws AppError 404 when there is no such rig. */
 export async function findBlockedTimes({ rigId, now, limit, cursor }: BlockQuery): Promise<Page<BlockedTimeAnswer>> {
   const [from, id] = readCursor(cursor, z.tuple([time, idSchema])) ?? [null, null];
   const found = await rows<BlockRow>(
@@ -62,6 +63,7 @@ export async function findBlockedTimes({ rigId, now, limit, cursor }: BlockQuery
       order by lower(w.period), w.id limit $5`,
     [rigId, now, from, id, limit + 1],
   );
+  if (found.length === 0) await demandExists("rig", rigId);
   const { items, nextCursor } = cutPage(found, limit, (window) => [window.from.toISOString(), window.id]);
   return { items: items.map((window) => ({ ...window, from: window.from.toISOString(), to: window.to.toISOString() })), nextCursor };
 }

@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { row, rows } from "@/lib/db";
+import { demandExists } from "@/lib/demand-exists";
 import { notFound } from "@/lib/errors";
 import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page } from "@/lib/http/paging";
@@ -20,13 +21,14 @@ export async function getLoad(loadId: string): Promise<LoadAnswer> {
   return present(found);
 }
 
-/** What was put on a rig's ports, newest first. */
+/** What was put on a rig's ports, newest first. @throws AppError 404 when there is no such rig. */
 export async function findLoads({ rigId, limit, cursor }: LoadQuery): Promise<Page<LoadAnswer>> {
   const [id] = readCursor(cursor, z.tuple([idSchema])) ?? [null];
   const found = await rows<LoadRow>(
     `${SELECT} where l.rig_id = $1 and ($2::bigint is null or l.id < $2) order by l.id desc limit $3`,
     [rigId, id, limit + 1],
   );
+  if (found.length === 0) await demandExists("rig", rigId);
   const { items, nextCursor } = cutPage(found, limit, (load) => [load.id]);
   return { items: items.map(present), nextCursor };
 }

@@ -1,6 +1,7 @@
 import { z } from "zod";
 import { audit } from "@/lib/audit/record";
 import { inTransaction, row, rows } from "@/lib/db";
+import { demandExists } from "@/lib/demand-exists";
 import { conflict, notFound } from "@/lib/errors";
 import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page } from "@/lib/http/paging";
@@ -49,11 +50,12 @@ const SELECT = `
   select t.id, t.name, t.last4, p.name as "createdBy", t.created_at as "createdAt", t.last_used_at as "lastUsedAt", t.revoked_at as "revokedAt"
     from agent_token t left join person p on p.id = t.created_by`;
 
-/** Tokens of a rig, the withdrawn ones too, newest first; of each only the last four signs. */
+/** Tokens of a rig, the withdrawn ones too, newest first; of each only the last four signs. @throws AppError 404 when there is no such rig. */
 export async function findAgentTokens({ by, rigId, limit, cursor }: TokenQuery): Promise<Page<TokenAnswer>> {
   demand(by, "agent tokens");
   const [id] = readCursor(cursor, z.tuple([idSchema])) ?? [null];
   const found = await rows<TokenRow>(`${SELECT} where t.rig_id = $1 and ($2::bigint is null or t.id < $2) order by t.id desc limit $3`, [rigId, id, limit + 1]);
+  if (found.length === 0) await demandExists("rig", rigId);
   const { items, nextCursor } = cutPage(found, limit, (token) => [token.id]);
   return { items: items.map(present), nextCursor };
 }

@@ -11,7 +11,8 @@ type Example = { call: ApiCall; example?: unknown };
 /** Makes what the example speaks of and puts the ids of this laboratory where the example has others. */
 export async function prepareCall({ call, example }: Example): Promise<PreparedCall> {
   const { params = {}, ids = {}, query = "", headers }: Prepared = await PREPARATIONS[call.name](example);
-  return { call, params, query, body: call.operation.body ? withIds(example ?? firstExample(call), ids) : undefined, headers: headers ?? { cookie: (await signedInAs("administrator")).cookie, origin: ORIGIN } };
+  const inAddress = Object.fromEntries(Object.entries(params).filter(([name]) => call.path.includes(`{${name}}`)));
+  return { call, params: inAddress, query, body: call.operation.body ? withIds(example ?? firstExample(call), ids) : undefined, headers: headers ?? { cookie: (await signedInAs("administrator")).cookie, origin: ORIGIN } };
 }
 
 export const firstExample = ({ name }: ApiCall): unknown => Object.values(EXAMPLES[name] ?? {})[0] ?? {};

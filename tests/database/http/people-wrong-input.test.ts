@@ -1,0 +1,166 @@
+import { gzipSync } from "node:zlib";
+import { afterAll, beforeAll, describe, expect, test, vi } from "vitest";
+import { sequelize } from "@/lib/db";
+import { listener } from "@/lib/listener";
+import { addressOf, API_CALLS, type ApiCall } from "../../factories/api-calls";
+import { databaseDigest, oneIdOfEach, partIds } from "../../factories/database-digest";
+import { hours, now } from "../../factories/now";
+import { buildPerson } from "../../factories/person";
+import { prepareCall, sendPrepared, type Otherwise, type PreparedCall } from "../../factories/prepared-call";
+import { agentToken, at, cookieOf, ORIGIN, signedInAs, tokenOf } from "../../factories/session";
+
+const MIB = 1024 * 1024;
+
+const forPeople = API_CALLS.filter(({ operation }) => operation.access !== "agent");
+const named = (calls: readonly ApiCall[]) => calls.map((call) => [call.name, call] as const);
+const withBody = forPeople.filter(({ operation }) => operation.body);
+const signedIn = forPeople.filter(({ operation }) => operation.access !== "public");
+const withId = signedIn.filter(({ path }) => path.includes("{"));
+/** A new password ends the very session that could repeat the call. */
+const idempotent = signedIn.filter(({ method, path }) => method === "POST" && path !== "/api/me/password");
+const listed = forPeople.filter(({ operation }) => operation.query);
+
+const prepared = new Map<string, PreparedCall>();
+
+beforeAll(async () => {
+  vi.useFakeTimers({ toFake: ["Date"], now: new Date("2026-05-14T12:00:00Z") });
+  await partIds();
+  for (const call of forPeople) prepared.set(call.name, await prepareCall({ call }));
+}, 120_000);
+afterAll(async () => {
+  vi.useRealTimers();
+  await listener().close();
+  await sequelize.close();
+});
+
+async function refuses({ name }: ApiCall, otherwise: Otherwise, statuses: number[], about: string): Promise<Record<string, unknown>> {
+  const answer = await sendPrepared(prepared.get(name) as PreparedCall, otherwise);
+  const text = await answer.text();
+  expect(statuses, `${about}: ${answer.status} ${text.slice(0, 300)}`).toContain(answer.status);
+  expect(answer.headers.get("content-type"), about).toBe("application/problem+json");
+  const problem = JSON.parse(text) as Record<string, unknown>;
+  expect(problem, about).toMatchObject({ type: expect.stringMatching(/^\/problems\/[a-z-]+$/), title: expect.any(String), status: answer.status, detail: expect.any(String) });
+  if (answer.status === 400) expect(problem.errors, about).toEqual(expect.arrayContaining([{ path: expect.any(String), message: expect.any(String) }]));
+  expect(text, about).not.toMatch(/\bat .*\.ts:|select |Sequelize/);
+  return problem;
+}
+
+async function changesNothing(work: () => Promise<void>): Promise<void> {
+  const before = await databaseDigest();
+  await work();
+  expect(await databaseDigest()).toBe(before);
+}
+
+describe.each(named(withBody))("bodies of %s", (_, call) => {
+  test("what is no JSON object is 400, what is too large 413, what is of another type 415; nothing changes", async () => {
+    const good = JSON.stringify(prepared.get(call.name)?.body);
+    await changesNothing(async () => {
+      for (const body of ["{", "nul", "[]", "null", "7", '"text"', "{}}", '{"a":1', "\u0000", "{'a':1}", "NaN", '{"a":NaN}', "[".repeat(100_000), `{"a":${"[".repeat(50_000)}${"]".repeat(50_000)}}`, '{"a\\u0000":1}', '{"\\ud800":1}', '{"nobodyKnowsThis":1}'])
+        await refuses(call, { body }, [400], body.slice(0, 12));
+      await refuses(call, { body: new Uint8Array([0x7b, 0x22, 0xff, 0xfe, 0x22, 0x7d]) }, [400], "not UTF-8");
+      await refuses(call, { body: "x".repeat(9 * MIB) }, [413], "9 MiB");
+      const gzip = { "content-encoding": "gzip" };
+      await refuses(call, { body: gzipSync("x".repeat(9 * MIB)), headers: gzip }, [413], "9 MiB inside gzip");
+      await refuses(call, { body: "no gzip", headers: gzip }, [400], "bad gzip");
+      await refuses(call, { body: gzipSync(good).subarray(0, 12), headers: gzip }, [400], "short gzip");
+      for (const type of ["text/plain", "application/x-www-form-urlencoded", "multipart/form-data; boundary=x", "application/json; charset=latin1", "nonsense"])
+        await refuses(call, { body: good, headers: { "content-type": type } }, [415], type);
+      for (const encoding of ["br", "deflate", "gzip, gzip"]) await refuses(call, { body: good, headers: { "content-encoding": encoding } }, [415], encoding);
+    });
+  });
+});
+
+describe("credentials", () => {
+  let wrong: Record<string, Record<string, string | undefined>>;
+  let readOnly: string;
+  let administrator: string;
+
+  beforeAll(async () => {
+    const person = await buildPerson({ role: "administrator" });
+    await person.reload();
+    const closed = await buildPerson({ role: "administrator", closedAt: now });
+    await closed.reload();
+    const bearer = (token: string) => ({ cookie: undefined, authorization: `Bearer ${token}` });
+    const cookie = await cookieOf(person);
+    wrong = {
+      none: { cookie: undefined },
+      "an empty cookie": { cookie: cookie.split("=")[0] + "=" },
+      "a forged cookie": { cookie: `${cookie.slice(0, -8)}AAAAAAAA` },
+      "a session of before a new password": { cookie: await cookieOf({ id: person.id, sessionVersion: person.sessionVersion - 1 }) },
+      "a session of nobody": { cookie: await cookieOf({ id: "999999999", sessionVersion: 1 }) },
+      "a session whose id is none": { cookie: await cookieOf({ id: "1 or 1=1", sessionVersion: 1 }) },
+      "a session whose id holds a NUL": { cookie: await cookieOf({ id: "1\u0000", sessionVersion: 1 }) },
+      "a session of a closed account": { cookie: await cookieOf(closed) },
+      "an agent's token": bearer((await agentToken()).token),
+      "a token that has run out": bearer(await tokenOf(person.id, { expiresAt: hours(-1) })),
+      "a withdrawn token": bearer(await tokenOf(person.id, { revokedAt: now })),
+      "a token of a closed account": bearer(await tokenOf(closed.id)),
+      "an unknown token": bearer(`lr_person_${"A".repeat(43)}`),
+      "a very long token": bearer("a".repeat(10_000)),
+      "SQL for a token": bearer("' or 1=1 --"),
+      "another scheme": { authorization: `Basic ${Buffer.from("a:b").toString("base64")}` },
+      "a bad token beside a good cookie": { cookie, authorization: "Bearer x" },
+    };
+    readOnly = await tokenOf(person.id, { scope: "read" });
+    administrator = cookie;
+  });
+
+  test.each(named(signedIn))("%s takes no wrong ones: 401; a token that may only read and a foreign page change nothing: 403", async (_, call) => {
+    await changesNothing(async () => {
+      for (const [about, headers] of Object.entries(wrong)) await refuses(call, { headers }, [401], about);
+      if (call.method === "GET") return;
+      await refuses(call, { headers: { cookie: undefined, authorization: `Bearer ${readOnly}` } }, [403], "read only");
+      for (const origin of [undefined, "null", "https://elsewhere.example", `${ORIGIN}.elsewhere.example`, "http://longreed.example"])
+        await refuses(call, { headers: { cookie: administrator, origin } }, [403], `origin ${origin}`);
+    });
+  });
+});
+
+describe.each(named(withId))("the address of %s", (_, call) => {
+  test("an id that is none, that nothing has or that another thing has is 404, and nothing changes", async () => {
+    const { params } = prepared.get(call.name) as PreparedCall;
+    const own = new Set(Object.values(params));
+    const ofOthers = [...(await oneIdOfEach()).values()].filter((id) => !own.has(id));
+    const table = tableOf(call.path);
+    const known = [...(await oneIdOfEach())].find(([name]) => name === table)?.[1];
+    const bad = ["0", "-1", "1.5", "NaN", "99999999999999999999", "9223372036854775807", "1e3", "0x1", " 1", "1;drop table step", "%00", "\u0000", "../1", "１", "C-1", "a".repeat(5000), "[object Object]", ""];
+    await changesNothing(async () => {
+      for (const name of Object.keys(params))
+        for (const id of [...bad, ...ofOthers]) {
+          if (name === "id" && id === known) continue;
+          await refuses(call, { params: { ...params, [name]: id } }, [404], `${name} ${id.slice(0, 20)}`);
+        }
+    });
+  });
+});
+
+/** The table that the `{id}` of an address is of. */
+const tableOf = (path: string): string =>
+  ({ alarms: "alarm", "blocked-times": "maintenance_window", campaigns: "campaign", invitations: "invitation", liquids: "liquid", loads: "load", lots: "lot", mounts: "mount", notifications: "notification", people: "person", protocols: "protocol", rigs: "rig", sensors: "sensor", tasks: "operator_task", tokens: "access_token" })[path.split("/")[2]] ?? "";
+
+
+const jsonOf = (text: string): unknown => (text === "" ? "" : JSON.parse(text));
+
+describe.each(named(idempotent))("Idempotency-Key of %s", (_, call) => {
+  test("once for a key; the same key with another body or at another address is 422, a key that is none 400", async () => {
+    const fresh = await prepareCall({ call });
+    const headers = { "idempotency-key": `key of ${call.name}` };
+    const first = await sendPrepared(fresh, { headers });
+    const answer = await first.text();
+    expect(first.status, answer).toBeLessThan(300);
+    prepared.set(call.name, fresh);
+
+    await changesNothing(async () => {
+      const again = await sendPrepared(fresh, { headers });
+      const repeated = await again.text();
+      if (again.status !== 409) expect([again.status, jsonOf(repeated)]).toEqual([first.status, jsonOf(answer)]);
+      else expect(JSON.parse(repeated)).toMatchObject({ type: "/problems/shown-once" });
+
+      const body = `${JSON.stringify(fresh.body ?? {})} `;
+      if (call.operation.body) await refuses(call, { headers, body }, [422], "another body");
+      if (call.path.includes("{")) await refuses(call, { headers, params: Object.fromEntries(Object.keys(fresh.params).map((name) => [name, "999999999"])) }, [422], "another address");
+      for (const key of ["", '""', "k".repeat(256)]) await refuses(call, { headers: { "idempotency-key": key } }, [400], `key ${key.slice(0, 5)}`);
+    });
+    prepared.set(call.name, await prepareCall({ call }));
+  });
+});
