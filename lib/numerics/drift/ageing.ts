@@ -1,9 +1,8 @@
+import { leastBetween } from "@/lib/numerics/statistics/least-between";
 import { regression } from "@/lib/numerics/statistics/regression";
 
 /** Fewest values with which AICc can tell three coefficients from two. */
 const fewestValues = 8;
-
-const gridPoints = 60;
 
 export type Ageing = {
   /** Value at the first time, and change per e-fold of 1 + t/τ, in the unit of y. */
@@ -46,7 +45,12 @@ export function ageing({ x, y }: { x: Float64Array; y: Float64Array }): Ageing |
     regression({ columns: [constant, t.map((time) => Math.log1p(time / Math.exp(logTau)))], y: offset });
 
   const span = t[n - 1];
-  const logTau = leastBetween(Math.log(span / (n - 1) / 10), Math.log(10 * span), (at) => law(at).residualSumOfSquares);
+  const logTau = leastBetween((at) => law(at).residualSumOfSquares, {
+    low: Math.log(span / (n - 1) / 10),
+    high: Math.log(10 * span),
+    gridPoints: 60,
+    width: 1e-7,
+  });
   const { coefficients, residualSumOfSquares } = law(logTau);
   if (residualSumOfSquares === 0 || line.residualSumOfSquares === 0) return undefined;
 
@@ -63,25 +67,4 @@ export function ageing({ x, y }: { x: Float64Array; y: Float64Array }): Ageing |
 
 function aiccPenalty(k: number, n: number): number {
   return 2 * k + (2 * k * (k + 1)) / (n - k - 1);
-}
-
-/** Where a function of one variable is least: the best of a grid, narrowed by golden section. */
-function leastBetween(low: number, high: number, of: (at: number) => number): number {
-  const step = (high - low) / gridPoints;
-  let best = low;
-  let least = Infinity;
-  for (let i = 0; i <= gridPoints; i++) {
-    const value = of(low + i * step);
-    if (value < least) [least, best] = [value, low + i * step];
-  }
-
-  const golden = (Math.sqrt(5) - 1) / 2;
-  let left = Math.max(low, best - step);
-  let right = Math.min(high, best + step);
-  while (right - left > 1e-7) {
-    const width = golden * (right - left);
-    if (of(right - width) < of(left + width)) right = left + width;
-    else left = right - width;
-  }
-  return (left + right) / 2;
 }

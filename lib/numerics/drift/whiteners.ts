@@ -29,10 +29,13 @@ export function whiteners(times: readonly Float64Array[]): Whitener[] {
   const grids = times.filter(({ length }) => length > 1).map((x) => differencedSeries({ x, y: x }).grid);
   return noiseExponents.map((alpha) => {
     let logDeterminant = 0;
+    const known = new Map<string, { factor: Float64Array; log: number }>(); // phases of one protocol have one grid
     const factors = grids.map((grid) => {
-      const covariance = differenceCovariance(alpha, grid);
-      logDeterminant += choleskyInPlace(covariance, grid.length - 1);
-      return covariance;
+      const key = grid.join();
+      const { factor, log } = known.get(key) ?? factorOf(alpha, grid);
+      known.set(key, { factor, log });
+      logDeterminant += log;
+      return factor;
     });
     const whiten = (differences: Float64Array): Float64Array => {
       const whitened = differences.slice();
@@ -46,4 +49,25 @@ export function whiteners(times: readonly Float64Array[]): Whitener[] {
     };
     return { alpha, logDeterminant, whiten };
   });
+}
+
+function factorOf(alpha: number, grid: Float64Array): { factor: Float64Array; log: number } {
+  const factor = differenceCovariance(alpha, grid);
+  const log = choleskyInPlace(factor, grid.length - 1);
+  return { factor, log };
+}
+
+/**
+ * Cuts a series into stretches of nearly equal length, none above 300.
+ *
+ * @returns Where each begins, and the series' length as the last.
+ */
+export function stretchBounds(length: number): number[] {
+  const count = Math.max(1, Math.ceil(length / longestWhitened));
+  return Array.from({ length: count + 1 }, (_, k) => Math.round((k * length) / count));
+}
+
+/** The values between each two bounds, sharing memory. */
+export function cutAt(bounds: readonly number[], values: Float64Array): Float64Array[] {
+  return bounds.slice(1).map((end, k) => values.subarray(bounds[k], end));
 }

@@ -1,4 +1,4 @@
-import { Matrix, QrDecomposition, inverse } from "ml-matrix";
+import { factorise, inverseOfTriangle, solve } from "@/lib/numerics/statistics/householder";
 
 export type Regression = {
   coefficients: Float64Array;
@@ -30,37 +30,49 @@ export function regression({ columns, y }: { columns: readonly Float64Array[]; y
   if (dof < 0) throw new RangeError("there are fewer values than coefficients");
   if (columns.some((column) => column.length !== y.length)) throw new RangeError("columns and values must be equally long");
 
+  const size = columns.length;
   const scales = columns.map((column) => Math.sqrt(column.reduce((sum, value) => sum + value ** 2, 0)));
-  const design = new Matrix(y.length, columns.length);
-  columns.forEach((column, j) => column.forEach((value, i) => design.set(i, j, value / scales[j])));
-  const qr = new QrDecomposition(design);
-  const r = qr.upperTriangularMatrix;
-  if (r.diagonal().some((value) => !(Math.abs(value) > y.length * Number.EPSILON))) {
+  const design = columns.map((column, j) => column.map((value) => value / scales[j]));
+  const factorisation = factorise(design);
+  const { r } = factorisation;
+  if (scales.some((_, j) => !(Math.abs(r[j * (size + 1)]) > y.length * Number.EPSILON))) {
     throw new RangeError("the columns depend on each other");
   }
 
-  const target = Matrix.columnVector(y);
-  const scaled = qr.solve(target);
-  const residuals = Matrix.sub(target, design.mmul(scaled));
-  scaled.add(qr.solve(residuals)); // one step of refinement
-  const left = Matrix.sub(target, design.mmul(scaled)).to1DArray();
-  const residualSumOfSquares = left.reduce((sum, residual) => sum + residual ** 2, 0);
+  const scaled = solve(factorisation, y);
+  const correction = solve(factorisation, residualsOf(design, scaled, y)); // one step of refinement
+  for (let j = 0; j < size; j++) scaled[j] += correction[j];
+  const residualSumOfSquares = residualsOf(design, scaled, y).reduce((sum, residual) => sum + residual ** 2, 0);
   const residualSd = Math.sqrt(residualSumOfSquares / dof);
 
-  const size = columns.length;
-  const rInverse = inverse(r);
-  const cofactors = rInverse.mmul(rInverse.transpose());
-  const covariance = new Float64Array(size * size);
-  for (let i = 0; i < size; i++) {
-    for (let j = 0; j < size; j++) covariance[i * size + j] = (cofactors.get(i, j) * residualSd ** 2) / (scales[i] * scales[j]);
-  }
+  const covariance = covarianceOf(r, scales, residualSd);
   return {
-    coefficients: Float64Array.from(scales, (scale, j) => scaled.get(j, 0) / scale),
-    standardErrors: Float64Array.from(scales, (scale, j) => (residualSd * Math.hypot(...rInverse.getRow(j))) / scale),
+    coefficients: scaled.map((value, j) => value / scales[j]),
+    standardErrors: Float64Array.from(scales, (_, j) => Math.sqrt(covariance[j * (size + 1)])),
     covariance,
-    logInformation: scales.reduce((sum, scale, j) => sum + 2 * Math.log(Math.abs(r.get(j, j)) * scale), 0),
+    logInformation: scales.reduce((sum, scale, j) => sum + 2 * Math.log(Math.abs(r[j * (size + 1)]) * scale), 0),
     residualSumOfSquares,
     residualSd,
     dof,
   };
+}
+
+function residualsOf(design: readonly Float64Array[], coefficients: Float64Array, y: Float64Array): Float64Array {
+  const left = y.slice();
+  design.forEach((column, j) => {
+    for (let i = 0; i < left.length; i++) left[i] -= coefficients[j] * column[i];
+  });
+  return left;
+}
+
+/** σ² (R⁻¹)(R⁻¹)ᵀ, freed of the columns' scales. */
+function covarianceOf(r: Float64Array, scales: readonly number[], residualSd: number): Float64Array {
+  const size = scales.length;
+  const inverse = inverseOfTriangle(r, size);
+  return new Float64Array(size * size).map((_, at) => {
+    const [i, j] = [Math.floor(at / size), at % size];
+    let sum = 0;
+    for (let k = Math.max(i, j); k < size; k++) sum += inverse[i * size + k] * inverse[j * size + k];
+    return (sum * residualSd ** 2) / (scales[i] * scales[j]);
+  });
 }
