@@ -1,6 +1,7 @@
 import type { Metadata } from "next";
 import Link from "next/link";
 import { PageTitle, Section } from "@/components/ui/page";
+import { WithCode } from "@/components/ui/with-code";
 import { PROBLEM_CODES, PROBLEM_TYPES } from "@/lib/problem-types";
 
 export const metadata: Metadata = { title: "Problem types" };
@@ -16,7 +17,7 @@ export default function ProblemsPage() {
             {PROBLEM_CODES.filter((code) => PROBLEM_TYPES[code].status === status).map((code) => (
               <div key={code}>
                 <dt className="font-semibold"><Link href={`/problems/${code}`}>{code}</Link></dt>
-                <dd className="text-ink2">{PROBLEM_TYPES[code].means}</dd>
+                <dd className="text-ink2"><WithCode>{PROBLEM_TYPES[code].means}</WithCode></dd>
               </div>
             ))}
           </dl>

@@ -1,5 +1,8 @@
 import { Op, type WhereOptions } from "sequelize";
 import { z } from "zod";
+import { detailLines, type NameOf } from "@/lib/audit/detail-lines";
+import { namesIn } from "@/lib/audit/names";
+import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page, type PageQuery } from "@/lib/http/paging";
 import { demand, type Actor } from "@/lib/people/actor";
 import type { AuditEventAnswer } from "@/lib/people/schema";
@@ -7,10 +10,10 @@ import { AuditEvent } from "@/models/audit-event";
 
 type Find = PageQuery & { by: Actor; personId?: string; entity?: string; entityId?: string; since?: string; until?: string };
 
-/** Newest first. */
+/** Newest first; names are those of today. */
 export async function findAuditEvents({ by, limit, cursor, personId, entity, entityId, since, until }: Find): Promise<Page<AuditEventAnswer>> {
   demand(by, "audit log");
-  const after = readCursor(cursor, z.tuple([z.iso.datetime(), z.string()]));
+  const after = readCursor(cursor, z.tuple([z.iso.datetime(), idSchema]));
   const where: WhereOptions[] = [];
   if (personId) where.push({ personId });
   if (entity) where.push({ entity });
@@ -22,10 +25,11 @@ export async function findAuditEvents({ by, limit, cursor, personId, entity, ent
     where.push({ [Op.or]: [{ at: { [Op.lt]: at } }, { at, id: { [Op.lt]: after[1] } }] });
   }
   const found = await AuditEvent.findAll({ where: { [Op.and]: where }, order: [["at", "desc"], ["id", "desc"]], limit: limit + 1 });
-  return cutPage(found.map(present), limit, ({ at, id }) => [at, id]);
+  const nameOf = await namesIn(found);
+  return cutPage(found.map((event) => present(event, nameOf)), limit, ({ at, id }) => [at, id]);
 }
 
-const present = ({ id, at, who, personId, rigId, action, entity, entityId, detail }: AuditEvent): AuditEventAnswer => ({
+const present = ({ id, at, who, personId, rigId, action, entity, entityId, detail }: AuditEvent, nameOf: NameOf): AuditEventAnswer => ({
   id,
   at: at.toISOString(),
   who,
@@ -35,4 +39,6 @@ const present = ({ id, at, who, personId, rigId, action, entity, entityId, detai
   entity,
   entityId,
   detail,
+  about: nameOf(entity, entityId) ?? null,
+  lines: detailLines(action, detail, nameOf),
 });

@@ -109,6 +109,8 @@ export const auditEventAnswer = z.object({
   entity: z.string(),
   entityId: z.string(),
   detail: z.record(z.string(), z.unknown()),
+  about: z.string().nullable().describe("Name of the thing; null when it has none or is no more"),
+  lines: z.array(z.object({ field: z.string(), from: z.string().optional(), to: z.string() })).describe("`detail` to be read: ids as names, `from` where a value was changed"),
 });
 export type AuditEventAnswer = z.output<typeof auditEventAnswer>;
 export const auditPage = pageOf(auditEventAnswer);

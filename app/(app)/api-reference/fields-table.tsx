@@ -1,3 +1,4 @@
+import { WithCode } from "@/components/ui/with-code";
 import type { SchemaField } from "@/lib/http/schema-fields";
 
 type FieldsTableProps = { label: string; fields: readonly (SchemaField & { where?: string })[]; /** Names that have a head of their own on the page. */ schemas: ReadonlySet<string> };
@@ -18,7 +19,7 @@ export function FieldsTable({ label, fields, schemas }: FieldsTableProps) {
               <tr key={i}>
                 <td className="slot-a" style={{ paddingLeft: depth * 18 }}><code>{name}</code>{where && where !== "query" && <span className="text-ink3"> {where}</span>}</td>
                 <td className="slot-c">{ref && schemas.has(ref) ? <a href={`#schema-${ref}`}>{type}</a> : type}</td>
-                <td className="slot-w">{[range, note].filter(Boolean).join(". ")}</td>
+                <td className="slot-w"><WithCode>{[range, note].filter(Boolean).join(". ")}</WithCode></td>
                 <td className="slot-b">{required ? "required" : ""}</td>
               </tr>
             ),

@@ -2,6 +2,7 @@ import type { Metadata } from "next";
 import Link from "next/link";
 import { openApi } from "@/app/api/openapi";
 import { PageRow, PageSentence, Section } from "@/components/ui/page";
+import { WithCode } from "@/components/ui/with-code";
 import { capitalised, inWords } from "@/lib/format";
 import { referenceOf } from "@/lib/http/reference";
 import { currentPerson } from "@/lib/people/current-person";
@@ -38,7 +39,7 @@ export default async function ApiReferencePage() {
             {own.map((call) => (
               <li key={call.id}>
                 <Link href={`/api-reference/${id}#${call.id}`}><CallName method={call.method} path={call.path} /></Link>
-                <span>{call.summary}</span>
+                <span><WithCode>{call.summary}</WithCode></span>
               </li>
             ))}
           </ul>

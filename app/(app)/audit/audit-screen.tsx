@@ -1,12 +1,14 @@
 "use client";
 
 import { useInfiniteQuery } from "@tanstack/react-query";
+import Link from "next/link";
 import { useRouter } from "next/navigation";
 import { useMemo } from "react";
 import { DataTable, type TableColumn } from "@/components/ui/data-table";
 import { More } from "@/components/ui/more";
 import { PageSentence, Section } from "@/components/ui/page";
 import { Empty, Problem } from "@/components/ui/states";
+import { entityInWords, pageOfEntity } from "@/lib/audit/about";
 import { capitalised } from "@/lib/format";
 import { formatRecent } from "@/lib/format-time";
 import { auditOptions, type AuditFilter } from "@/lib/people/client";
@@ -56,12 +58,30 @@ const columnsFor = (zone: string, now: string): readonly TableColumn<AuditEventA
   { id: "when", head: "When", slot: "b", cell: ({ at }) => <span className="num">{formatRecent(at, zone, now)}</span> },
   { id: "who", head: "Who", slot: "a", cell: ({ who }) => who },
   { id: "what", head: "What", slot: "c", cell: ({ action }) => capitalised(action) },
-  { id: "about", head: "About", slot: "d", cell: ({ entity, entityId }) => `${entity} ${entityId}` },
-  { id: "detail", head: "Detail", slot: "w", cell: ({ detail }) => <span className="text-ink2 [overflow-wrap:anywhere]">{inText(detail)}</span> },
+  { id: "about", head: "About", slot: "d", cell: (event) => <About event={event} /> },
+  { id: "detail", head: "Detail", slot: "w", cell: ({ lines }) => <Lines lines={lines} zone={zone} now={now} /> },
 ];
 
-const inText = (detail: Record<string, unknown>): string =>
-  Object.entries(detail)
-    .filter(([, value]) => value !== null && value !== undefined)
-    .map(([name, value]) => `${name} ${typeof value === "object" ? JSON.stringify(value) : String(value)}`)
-    .join(", ");
+function About({ event: { entity, entityId, about } }: { event: AuditEventAnswer }) {
+  const href = about ? pageOfEntity(entity, entityId) : undefined;
+  const name = about ?? entityId;
+  return <>{entityInWords(entity)} {href ? <Link href={href}>{name}</Link> : name}</>;
+}
+
+const INSTANT = /^\d{4}-\d{2}-\d{2}T[\d:.]+Z$/;
+
+/** A line a field: `name: North bench`, or `role: viewer → operator` where it was changed. */
+function Lines({ lines, zone, now }: { lines: AuditEventAnswer["lines"]; zone: string; now: string }) {
+  const said = (text: string) => (INSTANT.test(text) ? formatRecent(text, zone, now) : text);
+  return (
+    <ul className="text-ink2 [overflow-wrap:anywhere]">
+      {lines.map(({ field, from, to }, i) => (
+        <li key={i}>
+          {field && `${field}: `}
+          {from !== undefined && <>{said(from)} <span aria-label="became">→</span> </>}
+          <span className="text-ink">{said(to)}</span>
+        </li>
+      ))}
+    </ul>
+  );
+}

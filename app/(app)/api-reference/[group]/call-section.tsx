@@ -1,5 +1,6 @@
 import Link from "next/link";
 import { Section } from "@/components/ui/page";
+import { WithCode } from "@/components/ui/with-code";
 import type { ReferenceCall } from "@/lib/http/reference";
 import { PROBLEM_TYPES } from "@/lib/problem-types";
 import { CallName } from "../call-name";
@@ -8,20 +9,21 @@ import { FieldsTable } from "../fields-table";
 /** One call: who may, what goes in, what comes out, what can stand in the way, and how to try it. */
 export function CallSection({ call, schemas }: { call: ReferenceCall; schemas: ReadonlySet<string> }) {
   const { id, method, path, summary, description, who, parameters, body, answers, problems, curl } = call;
+  const plain = summary.replaceAll("`", "");
   return (
     <Section
       id={id}
       label={`${method} ${path}`}
-      head={summary}
+      head={<WithCode>{summary}</WithCode>}
       note={<>For {who}.</>}
       address={`#${id}`}
     >
       <h3 className="call-head"><a href={`#${id}`}><CallName method={method} path={path} /></a></h3>
-      {description && <p className="reference-text mt-2">{description}</p>}
-      {parameters.length > 0 && <Part title="Parameters"><FieldsTable label={`Parameters of ${summary}`} fields={parameters} schemas={schemas} /></Part>}
+      {description && <p className="reference-text mt-2"><WithCode>{description}</WithCode></p>}
+      {parameters.length > 0 && <Part title="Parameters"><FieldsTable label={`Parameters of ${plain}`} fields={parameters} schemas={schemas} /></Part>}
       {body && (
         <Part title="Body" remark={body.type}>
-          {body.fields.length > 0 && <FieldsTable label={`Body of ${summary}`} fields={body.fields} schemas={schemas} />}
+          {body.fields.length > 0 && <FieldsTable label={`Body of ${plain}`} fields={body.fields} schemas={schemas} />}
           {body.whole && <p className="text-ink2">{body.whole}</p>}
           {body.examples.map(({ summary: what, json }) => (
             <details key={what}>
@@ -36,7 +38,7 @@ export function CallSection({ call, schemas }: { call: ReferenceCall; schemas: R
           {fields.length > 0 && (
             <details open={fields.length <= 8}>
               <summary>{fields.length <= 8 ? "Fields" : `${fields.length} fields`}</summary>
-              <FieldsTable label={`Answer of ${summary}`} fields={fields} schemas={schemas} />
+              <FieldsTable label={`Answer of ${plain}`} fields={fields} schemas={schemas} />
             </details>
           )}
           {fields.length === 0 && <p className="text-ink2">{types.length === 0 ? "Nothing is in it." : whole}</p>}
