@@ -1,15 +1,17 @@
 import { UniqueConstraintError } from "sequelize";
 import { conflict } from "@/lib/errors";
 
+type Double = { constraint: string; /** Of the body, the one that holds what is taken. */ field?: string; message: string };
+
 /**
  * Runs a write and turns what the database refuses as a double into a conflict in our words.
- * Only the named constraint is meant; anything else stays the error it was.
+ * Only the named constraint is meant; anything else stays the error it was. The conflict names the field, if it was given.
  */
-export async function refuseDouble<T>(constraint: string, message: string, write: () => Promise<T>): Promise<T> {
+export async function refuseDouble<T>({ constraint, field, message }: Double, write: () => Promise<T>): Promise<T> {
   try {
     return await write();
   } catch (error) {
-    if (constraintOf(error) === constraint) throw conflict(message, "already-there");
+    if (constraintOf(error) === constraint) throw conflict(message, "already-there", field ? { errors: [{ path: field, message: "is taken already" }] } : {});
     throw error;
   }
 }

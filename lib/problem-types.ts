@@ -118,7 +118,7 @@ export const PROBLEM_TYPES = {
     remedy: "Talk to that person; a new task is opened if something is still to be done.",
     calls: ["POST /api/tasks/{id}/answer"],
   },
-  retired: { status: 409, means: "It is retired and cannot be changed. Nothing was changed.", remedy: "Bring it back first." },
+  retired: { status: 409, means: "It is retired, so that it cannot be changed or chosen. Nothing was changed.", remedy: "Bring it back first, or choose another." },
   needed: { status: 409, means: "A campaign that is not over still needs it, so it cannot be retired yet.", remedy: "Retire it when the campaign that `detail` names has ended." },
   "newer-version": {
     status: 409,

@@ -36,10 +36,10 @@ export type BoundSlot = {
 
 type Choice = { protocolVersionId: string; sensorId: string; rigId: string; now: Date };
 
-/** The protocol version, sensor and rig of a campaign to be. @throws AppError 422 naming each that does not exist, 409 for a retired one. */
+/** The protocol version, sensor and rig of a campaign to be. @throws AppError 422 naming each that does not exist, 409 naming each that is retired. */
 export async function readChosen({ protocolVersionId, sensorId, rigId, now }: Choice, transaction?: Transaction): Promise<Chosen> {
-  const version = await row<Pick<Chosen, "protocolName" | "version" | "definition">>(
-    `select p.name as "protocolName", v.version, v.definition from protocol_version v join protocol p on p.id = v.protocol_id where v.id = $1`,
+  const version = await row<Pick<Chosen, "protocolName" | "version" | "definition"> & { retired: boolean }>(
+    `select p.name as "protocolName", v.version, v.definition, p.retired_at is not null as retired from protocol_version v join protocol p on p.id = v.protocol_id where v.id = $1`,
     [protocolVersionId],
     transaction,
   );
@@ -61,9 +61,13 @@ export async function readChosen({ protocolVersionId, sensorId, rigId, now }: Ch
   if (!sensor) missing.push({ path: "sensorId", message: "There is no such sensor" });
   if (!rig) missing.push({ path: "rigId", message: "There is no such rig" });
   if (!version || !sensor || !rig) throw refused(missing);
-  if (sensor.retired) throw conflict(`${sensor.serial} is retired`);
-  if (rig.retired) throw conflict(`${rig.name} is retired`);
-  return { ...version, sensor, rig };
+  const { retired: protocolRetired, ...chosen } = version;
+  const retired: FieldError[] = [];
+  if (protocolRetired) retired.push({ path: "protocolVersionId", message: `The protocol ${version.protocolName} is retired; bring it back or choose another` });
+  if (sensor.retired) retired.push({ path: "sensorId", message: `${sensor.serial} is retired` });
+  if (rig.retired) retired.push({ path: "rigId", message: `${rig.name} is retired` });
+  if (retired.length > 0) throw conflict(retired.map(({ message }) => message).join(". "), "retired", { errors: retired });
+  return { ...chosen, sensor, rig };
 }
 
 /** Every slot of the protocol with its port and lot. @throws AppError 422 naming each that is missing, doubled or not there. */

@@ -29,11 +29,11 @@ export async function createLiquid({ by, now, name, letter, model, massFraction,
     await change("lock table liquid in share row exclusive mode", [], transaction);
     const taken = await rows<{ name: string; letter: string }>("select name, letter from liquid", [], transaction);
     const owner = taken.find((liquid) => liquid.letter === letter);
-    if (owner) throw conflict(`The letter ${letter} is taken by ${owner.name}`, "letter-taken");
+    if (owner) throw conflict(`The letter ${letter} is taken by ${owner.name}`, "letter-taken", { errors: [{ path: "letter", message: `is taken by ${owner.name}` }] });
     const chosen = letter ?? chooseLetter(name, new Set(taken.map((liquid) => liquid.letter)));
     if (!chosen) throw conflict("All letters are taken; retire a liquid and give its letter away first", "letter-taken");
 
-    const { id } = await refuseDouble("liquid_name_key", `There is already a liquid called ${name}`, () =>
+    const { id } = await refuseDouble({ constraint: "liquid_name_key", field: "name", message: `There is already a liquid called ${name}` }, () =>
       Liquid.create(
         {
           name,

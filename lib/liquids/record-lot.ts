@@ -20,7 +20,7 @@ export async function recordLot({ by, now, liquidId, code, receivedAt, expiresAt
     const liquid = await Liquid.findByPk(liquidId, { transaction, lock: transaction.LOCK.SHARE });
     if (!liquid) throw notFound("liquid");
     if (liquid.retiredAt) throw conflict(`${liquid.name} is retired; it gets no new lots`);
-    const { id } = await refuseDouble("lot_liquid_id_code_key", `There is already a lot ${code} of ${liquid.name}`, () =>
+    const { id } = await refuseDouble({ constraint: "lot_liquid_id_code_key", field: "code", message: `There is already a lot ${code} of ${liquid.name}` }, () =>
       Lot.create({ liquidId, code, receivedAt: receivedAt ?? null, expiresAt: expiresAt ?? null, certificate, createdAt: now }, { transaction }),
     );
     await audit(transaction, { by, now, action: "create", entity: "lot", entityId: id, detail: { liquidId, code, receivedAt, expiresAt, certificate } });

@@ -34,7 +34,7 @@ export async function addVersion({ by, now, protocolId, definition: given, note,
     protocol.name = definition.name;
     protocol.draft = null;
     protocol.draftSavedAt = null;
-    await refuseDoubleName(definition.name, () => protocol.save({ transaction }));
+    await refuseDoubleName({ name: definition.name, field: "definition.name" }, () => protocol.save({ transaction }));
     await audit(transaction, { by, now, action: "add version", entity: "protocol", entityId: protocolId, detail: { name: definition.name, version, versionId: saved.id, note } });
     await tellOfProtocol(protocolId, transaction);
     return { id: protocolId, versionId: saved.id, version };

@@ -17,7 +17,7 @@ export async function createProtocol({ by, now, definition: given }: { by: Actor
   const definition = checkedDefinition(given);
   return inTransaction(async (transaction) => {
     const { name } = definition;
-    const { id } = await refuseDoubleName(name, () => Protocol.create({ name, createdBy: by.id, createdAt: now }, { transaction }));
+    const { id } = await refuseDoubleName({ name, field: "definition.name" }, () => Protocol.create({ name, createdBy: by.id, createdAt: now }, { transaction }));
     const saved = await ProtocolVersion.create({ protocolId: id, version: 1, definition, createdBy: by.id, createdAt: now }, { transaction });
     await audit(transaction, { by, now, action: "create", entity: "protocol", entityId: id, detail: { name, versionId: saved.id } });
     await tellOfProtocol(id, transaction);
@@ -25,7 +25,7 @@ export async function createProtocol({ by, now, definition: given }: { by: Actor
   });
 }
 
-export const refuseDoubleName = <T>(name: string, write: () => Promise<T>): Promise<T> =>
-  refuseDouble("protocol_name", `There is already a protocol called ${name}`, write);
+export const refuseDoubleName = <T>({ name, field }: { name: string; field?: string }, write: () => Promise<T>): Promise<T> =>
+  refuseDouble({ constraint: "protocol_name", field, message: `There is already a protocol called ${name}` }, write);
 
 export const tellOfProtocol = (protocolId: string, transaction: Transaction): Promise<void> => notify(`changed:protocol:${protocolId}`, transaction);

@@ -32,7 +32,7 @@ export async function bringBackProtocol({ by, now, protocolId }: Retirement): Pr
   await inTransaction(async (transaction) => {
     const protocol = await lockedProtocol(protocolId, transaction);
     if (!protocol.retiredAt) return;
-    await refuseDoubleName(protocol.name, () => protocol.update({ retiredAt: null }, { transaction }));
+    await refuseDoubleName({ name: protocol.name }, () => protocol.update({ retiredAt: null }, { transaction }));
     await audit(transaction, { by, now, action: "bring back", entity: "protocol", entityId: protocolId, detail: { name: protocol.name } });
     await tellOfProtocol(protocolId, transaction);
   });

@@ -15,7 +15,7 @@ export async function beginDraft({ by, now, draft }: { by: Actor; now: Date; dra
   demand(by, "edit protocols");
   return inTransaction(async (transaction) => {
     const name = await freeName(draft, null, transaction);
-    const protocol = await refuseDoubleName(name, () => Protocol.create({ name, draft, draftSavedAt: now, createdBy: by.id, createdAt: now }, { transaction }));
+    const protocol = await refuseDoubleName({ name, field: "draft.name" }, () => Protocol.create({ name, draft, draftSavedAt: now, createdBy: by.id, createdAt: now }, { transaction }));
     await audit(transaction, { by, now, action: "begin draft", entity: "protocol", entityId: protocol.id, detail: { name } });
     await tellOfProtocol(protocol.id, transaction);
     return saved(protocol);
@@ -58,7 +58,7 @@ export async function changeProtocol({ by, now, protocolId, name, draft, draftBa
       protocol.draftSavedAt = draft === null ? null : now;
     }
     if (name !== undefined && name !== before) await record("rename", { before, after: name });
-    await refuseDoubleName(protocol.name, () => protocol.save({ transaction }));
+    await refuseDoubleName({ name: protocol.name, field: name === undefined ? "draft.name" : "name" }, () => protocol.save({ transaction }));
     await tellOfProtocol(protocolId, transaction);
     return saved(protocol);
   });

@@ -20,7 +20,7 @@ type NewRig = {
 export async function createRig({ by, now, ports, clock = "real", ...given }: NewRig): Promise<{ id: string }> {
   demand(by, "edit rigs");
   return inTransaction(async (transaction) => {
-    const rig = await refuseDouble("rig_name_key", `There is already a rig called ${given.name}; choose another name`, () =>
+    const rig = await refuseDouble({ constraint: "rig_name_key", field: "name", message: `There is already a rig called ${given.name}; choose another name` }, () =>
       Rig.create({ ...given, ports, clock, createdAt: now }, { transaction }),
     );
     await Port.bulkCreate(

@@ -35,7 +35,7 @@ export async function updateRig({ by, now, rigId, retired, ...wanted }: RigChang
     const retiredAt = retired === undefined ? undefined : retired ? (rig.retiredAt ?? now) : null;
     const changes = setGiven(rig, { ...wanted, retiredAt });
     if (changes) {
-      await refuseDouble("rig_name_key", `There is already a rig called ${wanted.name}; choose another name`, () => rig.save({ transaction }));
+      await refuseDouble({ constraint: "rig_name_key", field: "name", message: `There is already a rig called ${wanted.name}; choose another name` }, () => rig.save({ transaction }));
       await audit(transaction, { by, now, action: "update", entity: "rig", entityId: rigId, detail: changes });
       await notify("changed:rigs", transaction);
     }

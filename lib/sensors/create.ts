@@ -20,7 +20,7 @@ type NewSensor = {
 export async function createSensor({ by, now, ...given }: NewSensor): Promise<{ id: string }> {
   demand(by, "edit sensors");
   return inTransaction(async (transaction) => {
-    const { id } = await refuseDouble("sensor_serial_key", `There is already a sensor ${given.serial}`, () =>
+    const { id } = await refuseDouble({ constraint: "sensor_serial_key", field: "serial", message: `There is already a sensor ${given.serial}` }, () =>
       Sensor.create({ ...given, createdAt: now }, { transaction }),
     );
     await audit(transaction, { by, now, action: "create", entity: "sensor", entityId: id, detail: { ...given } });

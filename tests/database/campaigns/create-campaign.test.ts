@@ -1,5 +1,6 @@
 import { afterAll, describe, expect, test } from "vitest";
 import { changeCampaign, deleteDraft } from "@/lib/campaigns/change-draft";
+import { checkCampaign } from "@/lib/campaigns/check";
 import { createCampaign } from "@/lib/campaigns/create";
 import { change, sequelize } from "@/lib/db";
 import { CampaignSlot } from "@/models/campaign-slot";
@@ -9,7 +10,7 @@ import { buildCampaign } from "../../factories/campaign";
 import { buildLot } from "../../factories/lot";
 import { hours, now } from "../../factories/now";
 import { actor } from "../../factories/person";
-import { buildProtocolVersion } from "../../factories/protocol";
+import { buildProtocol, buildProtocolVersion } from "../../factories/protocol";
 import { buildRig } from "../../factories/rig";
 import { buildSensor } from "../../factories/sensor";
 
@@ -56,10 +57,22 @@ describe("createCampaign", () => {
     await expect(attempt).rejects.toMatchObject({ status: 422 });
   });
 
-  test("a retired sensor is a conflict", async () => {
-    const sensor = await buildSensor({ retiredAt: now });
-    await expect(createCampaign({ by: await actor("researcher"), now, ...(await given()), sensorId: sensor.id })).rejects.toMatchObject({ status: 409 });
+  test("a version of a retired protocol, a retired sensor and a retired rig are conflicts that name their fields", async () => {
+    const by = await actor("researcher");
+    const fine = await given();
+    const retired = {
+      protocolVersionId: (await buildProtocolVersion({ protocolId: (await buildProtocol({ retiredAt: now })).id })).id,
+      sensorId: (await buildSensor({ retiredAt: now })).id,
+      rigId: (await buildRig({ retiredAt: now })).id,
+    };
+    for (const [path, id] of Object.entries(retired))
+      await expect(createCampaign({ by, now, ...fine, [path]: id }), path).rejects.toMatchObject({ status: 409, code: "retired", members: { errors: [{ path, message: expect.stringContaining("is retired") }] } });
+    await expect(createCampaign({ by, now, ...fine, ...retired })).rejects.toMatchObject({ members: { errors: Object.keys(retired).map((path) => expect.objectContaining({ path })) } });
+    const draft = await buildCampaign();
+    await expect(changeCampaign({ by, now, campaignId: draft.id, protocolVersionId: retired.protocolVersionId })).rejects.toMatchObject({ code: "retired" });
+    await expect(checkCampaign({ by, now, ...fine, protocolVersionId: retired.protocolVersionId, priority: 0 })).rejects.toMatchObject({ code: "retired" });
   });
+
 });
 
 describe("changeCampaign", () => {
