@@ -1,8 +1,15 @@
 /** Pieces that many schemas share; ids and pages are in `lib/http`. */
 import { z } from "zod";
 
+/** RFC 3339 has four digits for a year; an offset can lead beyond them. */
+const FIRST = new Date("0001-01-01T00:00:00Z");
+const LAST = new Date("9999-12-31T23:59:59.999Z");
+
 /** RFC 3339 with an offset; kept in UTC. */
-export const instant = z.iso.datetime({ offset: true }).transform((value) => new Date(value)).pipe(z.date());
+export const instant = z.iso
+  .datetime({ offset: true })
+  .transform((value) => new Date(value))
+  .pipe(z.date().min(FIRST, "lies before the year 1").max(LAST, "lies after the year 9999"));
 
 /** A time in an answer. */
 export const time = z.iso.datetime();

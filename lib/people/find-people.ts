@@ -1,6 +1,7 @@
 import { Op, type WhereOptions } from "sequelize";
 import { z } from "zod";
 import { notFound } from "@/lib/errors";
+import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page, type PageQuery } from "@/lib/http/paging";
 import { demand, type Actor } from "@/lib/people/actor";
 import { presentPerson } from "@/lib/people/present";
@@ -12,7 +13,7 @@ type Find = PageQuery & { by: Actor; state: "open" | "closed" | "all"; search?: 
 /** By name. */
 export async function findPeople({ by, limit, cursor, state, search }: Find): Promise<Page<PersonAnswer>> {
   demand(by, "people");
-  const after = readCursor(cursor, z.tuple([z.string(), z.string()]));
+  const after = readCursor(cursor, z.tuple([z.string(), idSchema]));
   const where: WhereOptions[] = [];
   if (state !== "all") where.push({ closedAt: state === "open" ? null : { [Op.ne]: null } });
   if (search) {

@@ -4,6 +4,7 @@ import { audit } from "@/lib/audit/record";
 import { inTransaction } from "@/lib/db";
 import { env } from "@/lib/env";
 import { conflict, gone, notFound } from "@/lib/errors";
+import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page, type PageQuery } from "@/lib/http/paging";
 import { demand, type Actor } from "@/lib/people/actor";
 import { writeLetter } from "@/lib/people/letter";
@@ -48,7 +49,7 @@ export async function invite({ by, now, email, name, role }: Invite): Promise<{ 
 /** Newest first. */
 export async function findInvitations({ by, now, limit, cursor }: PageQuery & { by: Actor; now: Date }): Promise<Page<InvitationAnswer>> {
   demand(by, "people");
-  const after = readCursor(cursor, z.tuple([z.string()]));
+  const after = readCursor(cursor, z.tuple([idSchema]));
   const found = await Invitation.findAll({ where: after ? { id: { [Op.lt]: after[0] } } : {}, order: [["id", "desc"]], limit: limit + 1 });
   const inviters = await Person.findAll({ attributes: ["id", "name"], where: { id: found.map(({ invitedBy }) => invitedBy) } });
   const nameOf = new Map(inviters.map(({ id, name }) => [id, name]));

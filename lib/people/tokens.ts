@@ -3,6 +3,7 @@ import { z } from "zod";
 import { audit } from "@/lib/audit/record";
 import { inTransaction } from "@/lib/db";
 import { invalid, notFound } from "@/lib/errors";
+import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page, type PageQuery } from "@/lib/http/paging";
 import type { Actor } from "@/lib/people/actor";
 import type { TokenAnswer } from "@/lib/people/schema";
@@ -28,7 +29,7 @@ export async function createToken({ by, now, name, scope, expiresAt }: Create): 
 
 /** One's own, newest first; withdrawn ones stay in the list. */
 export async function findTokens({ by, limit, cursor }: PageQuery & { by: Actor }): Promise<Page<TokenAnswer>> {
-  const after = readCursor(cursor, z.tuple([z.string()]));
+  const after = readCursor(cursor, z.tuple([idSchema]));
   const found = await AccessToken.findAll({
     where: { personId: by.id, ...(after && { id: { [Op.lt]: after[0] } }) },
     order: [["id", "desc"]],

@@ -4,9 +4,11 @@ import { next, now } from "./now";
 
 const LETTERS = "ABCDEFGHIJKLMNOPQRSTUVWXYZ";
 
+let liquids = 0;
+
 /** Water, harmless, under a name and a letter of its own. */
 export function buildLiquid(given: Partial<CreationAttributes<Liquid>> = {}): Promise<Liquid> {
-  const n = next();
+  const n = liquids++;
   const letter = `${LETTERS[n % 26]}${LETTERS[Math.floor(n / 26) % 26]}`;
-  return Liquid.create({ name: `Liquid ${n}`, letter, model: "water", createdAt: now, ...given });
+  return Liquid.create({ name: `Liquid ${next()}`, letter, model: "water", createdAt: now, ...given });
 }

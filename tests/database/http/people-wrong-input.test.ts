@@ -2,12 +2,12 @@ import { gzipSync } from "node:zlib";
 import { afterAll, beforeAll, describe, expect, test, vi } from "vitest";
 import { sequelize } from "@/lib/db";
 import { listener } from "@/lib/listener";
-import { addressOf, API_CALLS, type ApiCall } from "../../factories/api-calls";
+import { API_CALLS, type ApiCall } from "../../factories/api-calls";
 import { databaseDigest, oneIdOfEach, partIds } from "../../factories/database-digest";
 import { hours, now } from "../../factories/now";
 import { buildPerson } from "../../factories/person";
 import { prepareCall, sendPrepared, type Otherwise, type PreparedCall } from "../../factories/prepared-call";
-import { agentToken, at, cookieOf, ORIGIN, signedInAs, tokenOf } from "../../factories/session";
+import { agentToken, cookieOf, ORIGIN, tokenOf } from "../../factories/session";
 
 const MIB = 1024 * 1024;
 
@@ -18,7 +18,6 @@ const signedIn = forPeople.filter(({ operation }) => operation.access !== "publi
 const withId = signedIn.filter(({ path }) => path.includes("{"));
 /** A new password ends the very session that could repeat the call. */
 const idempotent = signedIn.filter(({ method, path }) => method === "POST" && path !== "/api/me/password");
-const listed = forPeople.filter(({ operation }) => operation.query);
 
 const prepared = new Map<string, PreparedCall>();
 
