@@ -1,5 +1,6 @@
 import type { Transaction } from "sequelize";
 import { rows } from "@/lib/db";
+import { CHANNEL } from "@/lib/notify";
 import type { ReadingInput } from "@/lib/readings/reading";
 
 type Insert = {
@@ -8,11 +9,16 @@ type Insert = {
   times: readonly Date[];
   flags: readonly number[];
   hashes: readonly Buffer[];
+  /** The lease under which they came is the present one: it counts anew until then. */
+  leaseExpiresAt?: Date;
   now: Date;
 };
 
-/** Readings and sweeps in one statement; all sweeps travel as one binary value that the server cuts. */
-export async function insertReadings(transaction: Transaction, { stepId, readings, times, flags, hashes, now }: Insert): Promise<Set<number>> {
+/**
+ * Readings and sweeps, their number at the step and the word to whoever fits them in one statement; all sweeps travel as one binary value that
+ * the server cuts, and times as milliseconds. Returns the indices that are new.
+ */
+export async function insertReadings(transaction: Transaction, { stepId, readings, times, flags, hashes, leaseExpiresAt, now }: Insert): Promise<Set<number>> {
   const column = <T>(pick: (reading: ReadingInput) => T) => readings.map(pick);
   const bytes = column(({ record }) => new Uint8Array(record.data.buffer, record.data.byteOffset, record.data.byteLength));
   const offsets: number[] = [];
@@ -23,24 +29,28 @@ export async function insertReadings(transaction: Transaction, { stepId, reading
   }
   const inserted = await rows<{ idx: number }>(
     `with input as (
-       select * from unnest($2::int[], $3::timestamptz[], $4::timestamptz[], $5::float8[], $6::float8[], $7::float8[], $8::float8[], $9::smallint[],
+       select * from unnest($2::int[], $3::float8[], $4::float8[], $5::float8[], $6::float8[], $7::float8[], $8::float8[], $9::smallint[],
                             $10::smallint[], $11::int[], $12::float8[], $13::float8[], $14::int[], $15::int[], $16::int[])
-         as t (idx, taken_at, at, duration_s, temperature_c, pressure_pa, humidity_percent, kind, flags, ordinal, start_hz, stop_hz, points, byte_from, byte_length)),
+         as t (idx, taken_ms, at_ms, duration_s, temperature_c, pressure_pa, humidity_percent, kind, flags, ordinal, start_hz, stop_hz, points, byte_from, byte_length)),
      kept as (
        insert into reading (step_id, idx, taken_at, at, received_at, duration_s, temperature_c, pressure_pa, humidity_percent, kind, flags, content_hash)
-       select $1, idx, taken_at, at, $17, duration_s, temperature_c, pressure_pa, humidity_percent, kind, flags, substring($18::bytea from ordinal * 16 + 1 for 16)
+       select $1, idx, to_timestamp(taken_ms / 1000), to_timestamp(at_ms / 1000), $17, duration_s, temperature_c, pressure_pa, humidity_percent, kind, flags, substring($18::bytea from ordinal * 16 + 1 for 16)
          from input
        on conflict do nothing
-       returning idx)
-     insert into sweep (step_id, idx, start_hz, stop_hz, points, data)
-     select $1, idx, start_hz, stop_hz, points, substring($19::bytea from byte_from for byte_length)
-       from input join kept using (idx)
-     returning idx`,
+       returning idx),
+     cut as (
+       insert into sweep (step_id, idx, start_hz, stop_hz, points, data)
+       select $1, idx, start_hz, stop_hz, points, substring($19::bytea from byte_from for byte_length)
+         from input join kept using (idx)),
+     counted as (
+       update step set stored = stored + (select count(*) from kept), lease_expires_at = coalesce($20, lease_expires_at) where id = $1),
+     told as (select pg_notify($21, 'fit:' || $1::text || ':' || min(idx)) from kept having count(*) > 0)
+     select idx, (select count(*) from told) from kept`,
     [
       stepId,
       column(({ index }) => index),
-      column(({ takenAt }) => takenAt),
-      times,
+      column(({ takenAt }) => takenAt.getTime()),
+      times.map((time) => time.getTime()),
       column(({ durationS }) => durationS ?? null),
       column(({ temperatureC }) => temperatureC ?? null),
       column(({ pressurePa }) => pressurePa ?? null),
@@ -56,6 +66,8 @@ export async function insertReadings(transaction: Transaction, { stepId, reading
       now,
       Buffer.concat(hashes),
       Buffer.concat(bytes),
+      leaseExpiresAt ?? null,
+      CHANNEL,
     ],
     transaction,
   );

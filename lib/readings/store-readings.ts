@@ -3,9 +3,8 @@ import { noteContact, type RigRow } from "@/lib/agents/contact";
 import { LEASE_S, type Agent } from "@/lib/agents/contract";
 import type { Wish } from "@/lib/agents/schema";
 import { wishFor } from "@/lib/agents/wish";
-import { change, inTransaction, row, rows } from "@/lib/db";
+import { inTransaction, row, rows } from "@/lib/db";
 import { conflict, impossible, notFound } from "@/lib/errors";
-import { notify } from "@/lib/notify";
 import { flagBits } from "@/lib/numerics/resonance/flags";
 import { rigTimes } from "@/lib/readings/clock-correction";
 import { contentHash } from "@/lib/readings/content-hash";
@@ -51,25 +50,17 @@ export function storeReadings({ agent, session, stepId, body, now }: StoreReadin
     const closed = step.state === "done" || step.state === "failed" || step.state === "skipped";
     const flags = body.readings.map((_, i) => flagBits([...(closed ? (["late"] as const) : []), ...(plausible(times[i], step, rig, now) ? [] : (["clock"] as const))]));
     const hashes = body.readings.map(contentHash);
-    const stored = await insertReadings(transaction, { stepId, readings: body.readings, times, flags, hashes, now });
+    const leaseExpiresAt = step.lease === body.lease && step.state === "out" ? new Date(now.getTime() + LEASE_S * 1000) : undefined;
+    const stored = await insertReadings(transaction, { stepId, readings: body.readings, times, flags, hashes, leaseExpiresAt, now });
     const repeated = body.readings.map(({ index }, i) => ({ index, hash: hashes[i] })).filter(({ index }) => !stored.has(index));
     const { alreadyStored, differs } = await compare(transaction, stepId, repeated);
-
-    const current = step.lease === body.lease && step.state === "out";
-    const leaseExpiresAt = new Date(now.getTime() + LEASE_S * 1000);
-    await change(
-      `update step set stored = stored + $2, lease_expires_at = case when $3 then $4 else lease_expires_at end where id = $1`,
-      [stepId, stored.size, current, leaseExpiresAt],
-      transaction,
-    );
-    if (stored.size > 0) await notify(`fit:${stepId}:${Math.min(...stored)}`, transaction);
     return {
       stored: [...stored].sort((a, b) => a - b),
       alreadyStored,
       differs,
-      lease: current ? "current" : "superseded",
+      lease: leaseExpiresAt ? "current" : "superseded",
       wish: wishFor({ state: step.campaignState, parking: step.parking, detour: step.detour }),
-      ...(current ? { leaseExpiresAt: leaseExpiresAt.toISOString() } : {}),
+      ...(leaseExpiresAt ? { leaseExpiresAt: leaseExpiresAt.toISOString() } : {}),
     };
   });
 }
