@@ -15,8 +15,8 @@ export type Step = {
 /** A step must last: fewer values at another level are taken as wild ones. */
 const shortestLevel = 3;
 
-/** Twice the log-likelihood that a step must add, in units of ln n; in white noise |size|/u of 3.7 at n = 100. */
-const penaltyFactor = 3;
+/** Twice the log-likelihood that a step must add, in units of ln n; in white noise |size|/u of 4.3 at n = 100. */
+const penaltyFactor = 4;
 
 const mostSteps = 20;
 
@@ -25,7 +25,7 @@ const mostSteps = 20;
  * of unknown exponent, so that neither a drift nor flicker nor random walk is cut into stairs.
  *
  * Steps are added one at a time where they add most to the likelihood, averaged over exponents from 0 to −2 in quarters,
- * as long as twice its logarithm rises by more than 3 ln n. Sizes come from the joint fit of slope and all steps,
+ * as long as twice its logarithm rises by more than 4 ln n. Sizes come from the joint fit of slope and all steps,
  * averaged over exponents by restricted likelihood; u holds the spread between exponents.
  *
  * @param x Times, rising, all finite.

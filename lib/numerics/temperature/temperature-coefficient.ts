@@ -53,8 +53,8 @@ export type TemperatureSeries = {
  * random walk noise.
  *
  * Errors of the thermometer. A common offset does not touch the coefficient. Scatter of its phase means makes b₁ too
- * small; the share, u² tr M / θᵀMθ with M the weights of the fit after drift and steps, is returned, and |b₁| times it
- * enters the uncertainty of b₁ as an uncorrected bias would.
+ * small; the share s = u² tr M / θᵀMθ, with M the weights of the fit after drift and steps, is returned, and b₁ s/(1 − s)
+ * enters the uncertainty of b₁ as a bias that is not corrected; with s near 1 nothing can be said.
  *
  * @param atDays Times of the phases in days, rising.
  * @param values Phase values, one per time.
@@ -136,7 +136,7 @@ function presented({
   const first = size - names.length;
   const covariance = Float64Array.from({ length: names.length ** 2 }, (_, at) => {
     const [i, j] = [Math.floor(at / names.length), at % names.length];
-    const bias = at === 0 && share > 0 ? fit.coefficients[first] * share : 0;
+    const bias = at === 0 && share > 0 ? (fit.coefficients[first] * share) / Math.max(0, 1 - share) : 0;
     return fit.covariance[(first + i) * size + first + j] + bias ** 2;
   });
   return {
