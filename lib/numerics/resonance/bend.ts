@@ -5,11 +5,11 @@ import type { Residuals } from "@/lib/numerics/resonance/residuals";
 import { inverseColumn, solveCholesky } from "@/lib/numerics/resonance/small-linear";
 import type { Readout } from "@/lib/numerics/resonance/types";
 
-const BENT_SIGMAS = 4;
-const BENT_HALF_WIDTHS = 0.1;
+export const BENT_SIGMAS = 4;
+export const BENT_HALF_WIDTHS = 0.1;
 /** One linearised step from the straight fit decides whether the full refit is worth its time. */
-const WORTH_SIGMAS = 2.5;
-const WORTH_HALF_WIDTHS = 0.03;
+export const WORTH_SIGMAS = 2.5;
+export const WORTH_HALF_WIDTHS = 0.03;
 const MOST_STEPS = 60;
 
 export type Bend = {

@@ -58,7 +58,7 @@ export function cramerRaoBound({ frequencyHz, readout, f0Hz, q, a, noise, offset
 }
 
 /** Resonance of unit height and its derivatives with respect to 2Q·ln f0 and ln Q. */
-function derivatives(f: number, readout: Readout, f0: number, q: number): [Complex, Complex, Complex] {
+export function derivatives(f: number, readout: Readout, f0: number, q: number): [Complex, Complex, Complex] {
   const x = (q * (f - f0) * (f + f0)) / (f * f0);
   const l = { re: 1 / (1 + x * x), im: -x / (1 + x * x) };
   const squared = multiply(l, l);
@@ -71,6 +71,6 @@ function derivatives(f: number, readout: Readout, f0: number, q: number): [Compl
   return [e, { re: own.re + e.re / (2 * q), im: own.im + e.im / (2 * q) }, multiply(m, stretch)];
 }
 
-function multiply(u: Complex, v: Complex): Complex {
+export function multiply(u: Complex, v: Complex): Complex {
   return { re: u.re * v.re - u.im * v.im, im: u.re * v.im + u.im * v.re };
 }

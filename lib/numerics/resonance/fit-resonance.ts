@@ -8,8 +8,8 @@ import type { FitOptions, ResonanceFit, Sweep } from "@/lib/numerics/resonance/t
  *   V(f) = a·m(f) / (1 + iQ(f/f0 − f0/f)) + b + c·(f − fm)/(f2 − f1)
  *
  * m is 1 for a velocity and f0/(if) for a displacement readout; a, b, c are complex: resonance, offset (ohmic or crosstalk),
- * its slope. Least squares with a, b, c eliminated, over ln f0 and ln Q; for a magnitude sweep over all seven parameters, the
- * modulus' bias by noise corrected where it falls below five noises.
+ * its slope. Least squares with a, b, c eliminated, over ln f0 and ln Q. Of a magnitude sweep |V|² is fitted, whose mean and
+ * variance are known for noise of any size; what it does not determine of a, b and c is said at fitMagnitudeSweep.
  *
  * @param sweep Frequencies in Hz, positive, in any order and spacing; at least 11 points.
  * @param options Readout; dwell per point in s for the flag `rushed`; whether the offset has a slope (default true); a guess, which
@@ -18,7 +18,7 @@ import type { FitOptions, ResonanceFit, Sweep } from "@/lib/numerics/resonance/t
  *   amplitude |a|, noise per quadrature, and the flags
  *   - `failed`: no convergence, or no resonance told from the noise; every number is then NaN
  *   - `edge`: f0 outside the middle 80 % of the sweep
- *   - `bent`: f0 + κ|x|² fits better at 4σ and shifts the peak by more than 0.1 half-width (complex sweeps)
+ *   - `bent`: f0 + κ|x|² fits better at 4σ and shifts the peak by more than 0.1 half-width
  *   - `narrow`: span below 2.5 half-widths f0/2Q
  *   - `sparse`: fewer than 3 points inside the half-power band
  *   - `noisy`: |a|/noise below 5
@@ -28,7 +28,7 @@ import type { FitOptions, ResonanceFit, Sweep } from "@/lib/numerics/resonance/t
  *   that is not positive, a guess that is not positive.
  *
  * Source: Golub & Pereyra, SIAM J. Numer. Anal. 10 (1973) 413; the flags are Longreed's own rules.
- * Cost: about 70 µs for 201 complex points without a guess.
+ * Cost: about 70 µs for 201 complex points without a guess, 200 µs for 201 magnitudes.
  */
 export function fitResonance(sweep: Sweep, options: FitOptions): ResonanceFit {
   const { guess } = options;

@@ -61,8 +61,13 @@ export function directionOf(f: Float64Array): -1 | 0 | 1 {
   return up ? 1 : down ? -1 : 0;
 }
 
+/** The places of the frequencies in rising order. */
+export function orderOf(f: Float64Array): Uint32Array {
+  return Uint32Array.from(f.keys()).sort((i, j) => f[i] - f[j]);
+}
+
 /** Copies `from` into `to` in the order of rising frequency. */
-function copyInOrder(to: Float64Array, from: Float64Array, direction: -1 | 0 | 1, order: Uint32Array | undefined): void {
+export function copyInOrder(to: Float64Array, from: Float64Array, direction: -1 | 0 | 1, order: Uint32Array | undefined): void {
   const n = from.length;
   if (direction === 1) to.set(from);
   else if (direction === -1) for (let i = 0; i < n; i++) to[i] = from[n - 1 - i];
@@ -94,7 +99,7 @@ export function prepareSweep(sweep: Extract<Sweep, { kind: "complex" }>, offsetS
   if (workspace.f.length < n) workspace = emptyWorkspace(2 * n);
   const p = workspace;
   const direction = directionOf(frequencyHz);
-  const order = direction === 0 ? Uint32Array.from(frequencyHz.keys()).sort((i, j) => frequencyHz[i] - frequencyHz[j]) : undefined;
+  const order = direction === 0 ? orderOf(frequencyHz) : undefined;
   copyInOrder(p.f, frequencyHz, direction, order);
   copyInOrder(p.re, sweep.re, direction, order);
   copyInOrder(p.im, sweep.im, direction, order);

@@ -1,27 +1,41 @@
+const FINEST = 0.02;
+const FARTHEST = 12;
+let table: Float64Array | undefined;
+
 /**
- * Mean of the modulus of a complex number with Gaussian noise (Rice's distribution).
+ * What one modulus |ν + noise| tells of ν² (Rice's distribution), against 1/4σ⁴.
  *
- *   E|ν + noise| = σ√(π/2)·e^(−q/2)·[(1 + q)·I0(q/2) + q·I1(q/2)],  q = ν²/2σ²
+ *   h(r) = (E[y²·(I1(ry)/I0(ry))²] − r²)/r²,   r = ν/σ,   y = |ν + noise|/σ
  *
- * @param nu True modulus, ≥ 0.
- * @param sigma Noise of each quadrature, in the same unit, ≥ 0; with 0 the mean is ν itself.
- * @returns Relative error below 1e-6.
+ * So the Fisher information of ν is h·ν²/σ⁴: 1/σ² far above the noise, where h → 1/r², and vanishing with ν, where h = 1.
  *
- * Source: Rice, Bell System Technical Journal 24 (1945) 46, §3.10; Bessel functions from Abramowitz & Stegun 9.8.1–9.8.4.
+ * @param r ν/σ, ≥ 0; finite.
+ * @returns Within 3e-4 of its value, interpolated from a table that the first call fills; beyond r = 12 from the expansion (1 − 1/2r²)/r².
+ *
+ * Source: Fisher information as the variance of the score, Kay, Estimation Theory (1993), §3.4, of the density of Rice, Bell System Technical
+ * Journal 24 (1945) 46, eq. 3.10-11; Bessel functions from Abramowitz & Stegun 9.8.1–9.8.4.
  */
-export function riceMean(nu: number, sigma: number): number {
-  if (sigma === 0) return nu;
-  const half = (nu * nu) / (4 * sigma * sigma);
-  if (half > 100) return nu + ((sigma * sigma) / (2 * nu)) * (1 + (sigma * sigma) / (4 * nu * nu));
-  return sigma * Math.sqrt(Math.PI / 2) * ((1 + 2 * half) * scaledI0(half) + 2 * half * scaledI1(half));
+export function riceInformation(r: number): number {
+  if (r >= FARTHEST) return (1 - 1 / (2 * r * r)) / (r * r);
+  table ??= Float64Array.from({ length: FARTHEST / FINEST + 2 }, (_, i) => (i === 0 ? 1 : integrated(i * FINEST)));
+  const place = r / FINEST;
+  const i = Math.floor(place);
+  return table[i] + (place - i) * (table[i + 1] - table[i]);
 }
 
-/** Derivative of riceMean with respect to ν: from 0 at ν = 0 to 1. */
-export function riceSlope(nu: number, sigma: number): number {
-  if (sigma === 0) return 1;
-  const half = (nu * nu) / (4 * sigma * sigma);
-  if (half > 100) return 1 - (sigma * sigma) / (2 * nu * nu);
-  return Math.sqrt(Math.PI / 8) * (nu / sigma) * (scaledI0(half) + scaledI1(half));
+/** By the trapezoidal rule, which for a smooth density over its whole width has no error to speak of. */
+function integrated(r: number): number {
+  const from = Math.max(0, r - 8);
+  const points = 400;
+  const step = (r + 8 - from) / points;
+  let sum = 0;
+  for (let i = 0; i <= points; i++) {
+    const y = from + i * step;
+    const even = scaledI0(r * y);
+    const density = y * Math.exp(-0.5 * (y - r) ** 2) * even;
+    sum += density * (y * (scaledI1(r * y) / even)) ** 2;
+  }
+  return (sum * step) / (r * r) - 1;
 }
 
 function polynomial(coefficients: readonly number[], t: number): number {

@@ -7,19 +7,13 @@
  */
 export function solveCholesky(a: Float64Array, b: Float64Array, n: number): boolean {
   if (!factorCholesky(a, n)) return false;
-  for (let i = 0; i < n; i++) {
-    for (let k = 0; k < i; k++) b[i] -= a[n * i + k] * b[k];
-    b[i] /= a[n * i + i];
-  }
-  for (let i = n - 1; i >= 0; i--) {
-    for (let k = i + 1; k < n; k++) b[i] -= a[n * k + i] * b[k];
-    b[i] /= a[n * i + i];
-  }
+  forwardSubstitute(a, b, n);
+  backSubstitute(a, b, n);
   return true;
 }
 
-/** Replaces the lower triangle of a symmetric matrix by its Cholesky factor; false when it has none. */
-function factorCholesky(a: Float64Array, n: number): boolean {
+/** Replaces the lower triangle of a symmetric matrix by its Cholesky factor L; false when it has none. */
+export function factorCholesky(a: Float64Array, n: number): boolean {
   for (let j = 0; j < n; j++) {
     const diagonal = a[n * j + j];
     let d = diagonal;
@@ -34,6 +28,24 @@ function factorCholesky(a: Float64Array, n: number): boolean {
     }
   }
   return Number.isFinite(a[n * n - 1]);
+}
+
+/** Replaces b by L⁻¹b, L a factor in the lower triangle of `a`; b begins at `offset`. */
+export function forwardSubstitute(a: Float64Array, b: Float64Array, n: number, offset = 0): void {
+  for (let i = 0; i < n; i++) {
+    let v = b[offset + i];
+    for (let k = 0; k < i; k++) v -= a[n * i + k] * b[offset + k];
+    b[offset + i] = v / a[n * i + i];
+  }
+}
+
+/** Replaces b by L⁻ᵀb, L a factor in the lower triangle of `a`. */
+export function backSubstitute(a: Float64Array, b: Float64Array, n: number): void {
+  for (let i = n - 1; i >= 0; i--) {
+    let v = b[i];
+    for (let k = i + 1; k < n; k++) v -= a[n * k + i] * b[k];
+    b[i] = v / a[n * i + i];
+  }
 }
 
 /**

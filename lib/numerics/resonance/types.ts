@@ -36,7 +36,7 @@ export type ResonanceFit = {
   f0StdHz: number;
   qStd: number;
   covariance: FitCovariance;
-  /** |a|: the resonance term at f0, in the unit of the sweep. */
+  /** |a|: the resonance term at f0, in the unit of the sweep. Of a magnitude sweep the least |a| that explains it. */
   amplitude: number;
   /** Standard deviation of the noise in each quadrature, in the unit of the sweep. */
   noise: number;

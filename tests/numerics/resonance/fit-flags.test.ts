@@ -5,8 +5,8 @@ import { prepareSweep } from "@/lib/numerics/resonance/prepare";
 import { emptyProjectedModel, projectedModel } from "@/lib/numerics/resonance/projected-model";
 import { residualsOf } from "@/lib/numerics/resonance/residuals";
 import { inverseColumn } from "@/lib/numerics/resonance/small-linear";
-import { linearGrid, type FitOptions } from "@/lib/numerics/resonance/types";
-import { Dice, noisySweep, type ComplexSweep } from "@/tests/numerics/resonance/sweeps";
+import { linearGrid, type FitOptions, type Readout } from "@/lib/numerics/resonance/types";
+import { Dice, magnitudeOf, noisySweep, type ComplexSweep } from "@/tests/numerics/resonance/sweeps";
 
 const F0 = 1000;
 const Q = 100;
@@ -20,11 +20,15 @@ function sweepOf({ from, to, points = 201, snr = 200, q = Q, seed = 1 }: { from:
 }
 
 /** A hardening or softening resonance swept in the order of its frequencies, keeping to its branch. */
-function bentSweep(bend: number, { snr = 300, descending = false, seed = 2 } = {}): ComplexSweep {
+function bentSweep(
+  bend: number,
+  { snr = 300, descending = false, seed = 2, readout = "velocity", offset = 0 }: { snr?: number; descending?: boolean; seed?: number; readout?: Readout; offset?: number } = {},
+): ComplexSweep {
   const dice = new Dice(seed);
   const frequencyHz = linearGrid(F0 - 8 * HALF_WIDTH, F0 + 8 * HALF_WIDTH, 201);
   if (descending) frequencyHz.reverse();
   let near = 0.5;
+  const b = dice.phasor(offset);
   const re = new Float64Array(201);
   const im = new Float64Array(201);
   frequencyHz.forEach((f, i) => {
@@ -32,8 +36,9 @@ function bentSweep(bend: number, { snr = 300, descending = false, seed = 2 } = {
     const x = Q * (f / F0 - F0 / f);
     near = bentPower(x, local, near);
     const shifted = x - local * near;
-    re[i] = near + dice.normal() / snr;
-    im[i] = -shifted * near + dice.normal() / snr;
+    const w = F0 / f;
+    re[i] = (readout === "velocity" ? near : -w * shifted * near) + b.re + dice.normal() / snr;
+    im[i] = (readout === "velocity" ? -shifted * near : -w * near) + b.im + dice.normal() / snr;
   });
   return { kind: "complex", frequencyHz, re, im };
 }
@@ -100,6 +105,24 @@ describe("flags, one by one", () => {
       for (const descending of [false, true]) {
         expect(fitResonance(bentSweep(bend, { descending }), velocity).flags).toContain("bent");
       }
+    }
+  });
+
+  it("bent: told from the magnitude alone, with an offset or without, either readout", () => {
+    for (const bend of [0.25, 0.8, 2.5, -0.25, -1]) {
+      for (const descending of [false, true]) {
+        for (const readout of ["velocity", "displacement"] as const) {
+          for (const offset of [0, 0.5, 20]) {
+            const sweep = magnitudeOf(bentSweep(bend, { descending, readout, offset, snr: 1000 }));
+            expect(fitResonance(sweep, { readout }).flags, `${bend} ${descending} ${readout} ${offset}`).toContain("bent");
+          }
+        }
+      }
+    }
+    for (const offset of [0, 0.5, 20]) {
+      expect(fitResonance(magnitudeOf(bentSweep(0.05, { offset, snr: 3000 })), velocity).flags).not.toContain("bent");
+      expect(fitResonance(magnitudeOf(bentSweep(0, { offset })), velocity).flags).toEqual([]);
+      expect(fitResonance(magnitudeOf(bentSweep(0.15, { offset, snr: 15 })), velocity).flags).not.toContain("bent");
     }
   });
 
