@@ -11,8 +11,8 @@ export const instant = z.iso
   .transform((value) => new Date(value))
   .pipe(z.date().min(FIRST, "lies before the year 1").max(LAST, "lies after the year 9999"));
 
-/** A time in an answer. */
-export const time = z.iso.datetime();
+/** A time in an answer or a cursor. */
+export const time = z.iso.datetime().refine((text) => new Date(text) >= FIRST, "lies before the year 1");
 
 /** Text that a person typed, without the blanks around it. */
 export const words = (max: number) => z.string().trim().min(1, "is empty").max(max, `is longer than ${max} characters`);

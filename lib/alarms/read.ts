@@ -6,6 +6,7 @@ import { row, rows } from "@/lib/db";
 import { notFound } from "@/lib/errors";
 import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page } from "@/lib/http/paging";
+import { time } from "@/lib/schema";
 
 type Nullable<T> = { [K in keyof T]-?: undefined extends T[K] ? Exclude<T[K], undefined> | null : T[K] };
 type Times = "openedAt" | "shelvedUntil" | "openedClock" | "acknowledgedAt" | "returnedAt" | "clearedAt";
@@ -43,7 +44,7 @@ const STATES: Record<NonNullable<AlarmQuery["state"]>, string> = {
 /** Alarms, the newest first. */
 export async function findAlarms({ query, now }: { query: AlarmQuery; now: Date }): Promise<Page<AlarmAnswer>> {
   const { state, rigId, campaignId, kind, since, limit } = query;
-  const [at, id] = readCursor(query.cursor, z.tuple([z.iso.datetime(), idSchema])) ?? [null, null];
+  const [at, id] = readCursor(query.cursor, z.tuple([time, idSchema])) ?? [null, null];
   const found = await rows<AlarmRow>(
     `${SELECT}
       where ${state ? STATES[state] : "true"} and ($2::bigint is null or a.rig_id = $2) and ($3::bigint is null or a.campaign_id = $3)

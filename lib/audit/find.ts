@@ -4,6 +4,7 @@ import { detailLines, type NameOf } from "@/lib/audit/detail-lines";
 import { namesIn } from "@/lib/audit/names";
 import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page, type PageQuery } from "@/lib/http/paging";
+import { time } from "@/lib/schema";
 import { demand, type Actor } from "@/lib/people/actor";
 import type { AuditEventAnswer } from "@/lib/people/schema";
 import { AuditEvent } from "@/models/audit-event";
@@ -13,7 +14,7 @@ type Find = PageQuery & { by: Actor; personId?: string; entity?: string; entityI
 /** Newest first; names are those of today. */
 export async function findAuditEvents({ by, limit, cursor, personId, entity, entityId, since, until }: Find): Promise<Page<AuditEventAnswer>> {
   demand(by, "audit log");
-  const after = readCursor(cursor, z.tuple([z.iso.datetime(), idSchema]));
+  const after = readCursor(cursor, z.tuple([time, idSchema]));
   const where: WhereOptions[] = [];
   if (personId) where.push({ personId });
   if (entity) where.push({ entity });

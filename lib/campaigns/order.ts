@@ -1,4 +1,6 @@
+import { z } from "zod";
 import type { CampaignSort } from "@/lib/campaigns/answers";
+import { idSchema } from "@/lib/http/ids";
 
 type Order = { by: string; type: "text" | "bigint" | "timestamptz"; descending?: boolean };
 
@@ -23,15 +25,23 @@ const ORDERS: Record<CampaignSort, Order> = {
   line: { by: LINE, type: "text" },
 };
 
+/** Numbers and times as PostgreSQL writes them in UTC. */
+const KEYS: Record<Order["type"], z.ZodType<string>> = {
+  text: z.string(),
+  bigint: z.string().regex(/^\d{1,18}$/),
+  timestamptz: z.string().refine((text) => text === "infinity" || (/\+00$/.test(text) && z.iso.datetime({ offset: true }).safeParse(`${text.replace(" ", "T")}:00`).success)),
+};
+
 /**
  * A list's order by a key and the id, in SQL. `key` is selected as text beside each row, so that a cursor can name the last
- * one; `beyond` is true for rows behind the bound `($key, $id)`.
+ * one, which `cursor` validates; `beyond` is true for rows behind the bound `($key, $id)`.
  */
 export function orderOf(sort: CampaignSort, { key, id }: { key: string; id: string }) {
   const { by, type, descending } = ORDERS[sort];
   const direction = descending ? "desc" : "asc";
   return {
     key: `(${by})::text`,
+    cursor: z.tuple([KEYS[type], idSchema]),
     beyond: `(${key}::text is null or (${by}, c.id) ${descending ? "<" : ">"} (${key}::text::${type}, ${id}::bigint))`,
     orderBy: `${by} ${direction}, c.id ${direction}`,
   };

@@ -30,7 +30,7 @@ type PhaseRecord = {
 /** Phases of a campaign in order; the one under way has no value yet. */
 export async function findPhases({ campaignId, query }: { campaignId: string; query: PhaseQuery }): Promise<Page<PhaseItem>> {
   const fitRunId = await findFitRun(campaignId, query.fitRunId);
-  const after = readCursor(query.cursor, z.tuple([z.int()]))?.[0] ?? null;
+  const after = readCursor(query.cursor, z.tuple([z.int32()]))?.[0] ?? null;
   const found = await rows<PhaseRecord>(
     `select p.id, p.cycle, p.sequence, p.medium, p.role, p.set_point_c as "setPointC", p.mount_id as "mountId", p.started_at as "startedAt",
             p.ended_at as "endedAt", coalesce(s.n, st.stored)::int as n, coalesce(s.n_used, 0) as "nUsed", s.f0_mean as "f0Mean", s.f0_sd as "f0Sd",

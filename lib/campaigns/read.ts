@@ -1,4 +1,3 @@
-import { z } from "zod";
 import type { CampaignAnswer, CampaignItem, CampaignQuery } from "@/lib/campaigns/answers";
 import { CAMPAIGNS, CAMPAIGNS_FROM } from "@/lib/campaigns/campaigns-query";
 import { campaignWhere } from "@/lib/campaigns/filter";
@@ -7,14 +6,13 @@ import { iso, presentCampaign, type CampaignRecord } from "@/lib/campaigns/prese
 import { slotLiquids } from "@/lib/campaigns/slot-liquids";
 import { row, rows } from "@/lib/db";
 import { notFound } from "@/lib/errors";
-import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page } from "@/lib/http/paging";
 
 /** Campaigns, the newest first unless asked otherwise; filtered by state, rig, sensor, protocol and words. */
 export async function findCampaigns({ query, now }: { query: CampaignQuery; now: Date }): Promise<Page<CampaignItem>> {
-  const [key, id] = readCursor(query.cursor, z.tuple([z.string(), idSchema])) ?? [null, null];
   const { where, bind } = campaignWhere(query, 4);
   const order = orderOf(query.sort, { key: "$2", id: "$3" });
+  const [key, id] = readCursor(query.cursor, order.cursor) ?? [null, null];
   const found = await rows<CampaignRecord & { sortKey: string }>(
     `${CAMPAIGNS}, ${order.key} as "sortKey" ${CAMPAIGNS_FROM} where ${where} and ${order.beyond} order by ${order.orderBy} limit ${query.limit + 1}`,
     [now, key, id, ...bind],

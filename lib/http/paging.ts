@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { invalid } from "@/lib/errors";
+import { refuseBadText } from "@/lib/http/read-body";
 
 /** `?limit=` and `?cursor=` of every list; extend it with a list's own filters. */
 export const pageQuery = z.object({
@@ -28,7 +29,9 @@ export function cutPage<T>(found: readonly T[], limit: number, keyOf: (row: T) =
 export function readCursor<K>(cursor: string | undefined, key: z.ZodType<K>): K | undefined {
   if (cursor === undefined) return undefined;
   try {
-    return key.parse(JSON.parse(Buffer.from(cursor, "base64url").toString("utf8")));
+    const parts: unknown = JSON.parse(Buffer.from(cursor, "base64url").toString("utf8"));
+    refuseBadText(parts);
+    return key.parse(parts);
   } catch {
     throw invalid([{ path: "cursor", message: "is not one that this list gave out" }]);
   }

@@ -2,8 +2,7 @@ import { z } from "zod";
 import { idSchema } from "@/lib/http/ids";
 import { pageOf, pageQuery } from "@/lib/http/paging";
 import { ROLES } from "@/lib/permissions";
-
-const time = z.iso.datetime();
+import { time } from "@/lib/schema";
 
 export const roleSchema = z.enum(ROLES);
 export const emailSchema = z.string().trim().toLowerCase().max(254).pipe(z.email("is not a mail address"));

@@ -32,8 +32,9 @@ const CAMPAIGNS = (of: string) => `select count(*)::int from campaign c join pro
 export async function findProtocols({ limit, cursor, sort, show, search, now }: ProtocolQuery & { now: Date }): Promise<Page<ProtocolItem>> {
   const isDown = sort.startsWith("-");
   const key = SORT_KEYS[sort.replace("-", "") as keyof typeof SORT_KEYS];
-  const [after, id] = readCursor(cursor, z.tuple([z.union([z.string(), z.number()]), idSchema])) ?? [null, null];
-  const keyType = sort.endsWith("campaigns") || sort.endsWith("versions") ? "integer" : "text";
+  const counts = sort.endsWith("campaigns") || sort.endsWith("versions");
+  const [after, id] = readCursor(cursor, z.tuple([counts ? z.int32() : z.string(), idSchema])) ?? [null, null];
+  const keyType = counts ? "integer" : "text";
   const [found, { timeZone }] = await Promise.all([
     rows<ListRow>(
       `with listed as (
@@ -90,7 +91,7 @@ const VERSION = `v.id, v.version, v.note, v.created_at as "savedAt", w.name as "
 
 /** Versions of a protocol, newest first. @throws AppError 404 when there is no such protocol. */
 export async function findVersions({ protocolId, limit, cursor }: PageQuery & { protocolId: string }): Promise<Page<VersionItem>> {
-  const [before] = readCursor(cursor, z.tuple([z.int()])) ?? [null];
+  const [before] = readCursor(cursor, z.tuple([z.int32()])) ?? [null];
   const found = await rows<VersionRow>(
     `select ${VERSION} from protocol_version v left join person w on w.id = v.created_by
       where v.protocol_id = $1 and ($2::integer is null or v.version < $2) order by v.version desc limit $3`,

@@ -4,6 +4,7 @@ import { row, rows } from "@/lib/db";
 import { notFound } from "@/lib/errors";
 import { idSchema } from "@/lib/http/ids";
 import { cutPage, readCursor, type Page } from "@/lib/http/paging";
+import { time } from "@/lib/schema";
 import type { TaskAnswer, TaskQuery } from "@/lib/tasks/schema";
 
 type Times = "dueAt" | "createdAt" | "answeredAt";
@@ -27,7 +28,7 @@ const SELECT = `
 
 /** Open tasks by when they are due, one without a time as of when it was made; those answered or withdrawn the newest first. */
 export async function findTasks({ state, rigId, campaignId, limit, cursor }: TaskQuery): Promise<Page<TaskAnswer>> {
-  const [at, id] = readCursor(cursor, z.tuple([z.iso.datetime(), idSchema])) ?? [null, null];
+  const [at, id] = readCursor(cursor, z.tuple([time, idSchema])) ?? [null, null];
   const open = state === "open";
   const key = open ? "coalesce(t.due_at, t.created_at)" : "coalesce(t.answered_at, t.created_at)";
   const found = await rows<TaskRow>(

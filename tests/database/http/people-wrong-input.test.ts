@@ -1,12 +1,15 @@
 import { gzipSync } from "node:zlib";
 import { afterAll, beforeAll, describe, expect, test, vi } from "vitest";
+import { z } from "zod";
 import { sequelize } from "@/lib/db";
+import { EXAMPLES } from "@/lib/http/examples";
 import { listener } from "@/lib/listener";
 import { API_CALLS, type ApiCall } from "../../factories/api-calls";
 import { databaseDigest, oneIdOfEach, partIds } from "../../factories/database-digest";
 import { hours, now } from "../../factories/now";
 import { buildPerson } from "../../factories/person";
 import { prepareCall, sendPrepared, type Otherwise, type PreparedCall } from "../../factories/prepared-call";
+import { placesIn, withText } from "../../factories/wrong-json";
 import { agentToken, cookieOf, ORIGIN, tokenOf } from "../../factories/session";
 
 const MIB = 1024 * 1024;
@@ -18,6 +21,11 @@ const signedIn = forPeople.filter(({ operation }) => operation.access !== "publi
 const withId = signedIn.filter(({ path }) => path.includes("{"));
 /** A new password ends the very session that could repeat the call. */
 const idempotent = signedIn.filter(({ method, path }) => method === "POST" && path !== "/api/me/password");
+
+const TABLE_OF_FIELD: Readonly<Record<string, string>> = { rigId: "rig", sensorId: "sensor", lotId: "lot", protocolVersionId: "protocol_version", before: "campaign" };
+const ID_IN_BODY = /"(rigId|sensorId|lotId|protocolVersionId|before)":"/;
+
+const queryFields = (query: z.ZodType): object => (query instanceof z.ZodObject ? (query.shape as object) : {});
 
 const prepared = new Map<string, PreparedCall>();
 
@@ -138,7 +146,40 @@ const tableOf = (path: string): string =>
   ({ alarms: "alarm", "blocked-times": "maintenance_window", campaigns: "campaign", invitations: "invitation", liquids: "liquid", loads: "load", lots: "lot", mounts: "mount", notifications: "notification", people: "person", protocols: "protocol", rigs: "rig", sensors: "sensor", tasks: "operator_task", tokens: "access_token" })[path.split("/")[2]] ?? "";
 
 
+describe.each(named(signedIn.filter(({ operation }) => operation.query && "cursor" in queryFields(operation.query))))("cursors of %s", (_, call) => {
+  test("one that the list did not give out is 400 and named; the true one leads on", async () => {
+    const { params } = prepared.get(call.name) as PreparedCall;
+    const first = (await (await sendPrepared(prepared.get(call.name) as PreparedCall, { query: "?limit=1" })).json()) as { nextCursor: string | null };
+    const forged = ["x", "W10", "bnVsbA", "e30", "%00", "A".repeat(400)];
+    if (first.nextCursor) {
+      const query = `?limit=1&cursor=${first.nextCursor}`;
+      expect((await sendPrepared(prepared.get(call.name) as PreparedCall, { query })).status).toBe(200);
+      const parts = JSON.parse(Buffer.from(first.nextCursor, "base64url").toString()) as unknown[];
+      for (const [i, part] of parts.entries())
+        for (const wrong of [`${part}\u0000`, "\ud800", null, [], {}, 1e10, -1e99, ...(i === parts.length - 1 ? ["", "x", "9223372036854775808", "1 or 1=1"] : [])])
+          forged.push(Buffer.from(JSON.stringify(parts.with(i, wrong))).toString("base64url"));
+    }
+    for (const cursor of forged) expect((await refuses(call, { params, query: `?cursor=${cursor}` }, [400], cursor)).errors, cursor).toEqual([{ path: "cursor", message: expect.any(String) }]);
+  });
+});
+
 const jsonOf = (text: string): unknown => (text === "" ? "" : JSON.parse(text));
+
+describe.each(named(withBody.filter(({ name }) => ID_IN_BODY.test(JSON.stringify(EXAMPLES[name])))))("ids in the body of %s", (_, call) => {
+  test("what nothing has or another thing has is refused at its field, and nothing changes", async () => {
+    const { body } = prepared.get(call.name) as PreparedCall;
+    const ids = [...placesIn(body)].filter(({ path, value }) => typeof value === "string" && TABLE_OF_FIELD[String(path.at(-1))]);
+    const things = await oneIdOfEach();
+    await changesNothing(async () => {
+      for (const { path } of ids)
+        for (const [table, id] of [...things, ["nothing", "999999999"] as const]) {
+          if (table === TABLE_OF_FIELD[String(path.at(-1))]) continue;
+          const problem = await refuses(call, { body: withText(body, path, JSON.stringify(id)) }, [404, 422], `${path.join(".")} is the id of ${table}`);
+          if (problem.status === 422) expect(problem.errors, `${path.join(".")} of ${table}`).toEqual(expect.arrayContaining([expect.objectContaining({ path: path.join(".") })]));
+        }
+    });
+  });
+});
 
 describe.each(named(idempotent))("Idempotency-Key of %s", (_, call) => {
   test("once for a key; the same key with another body or at another address is 422, a key that is none 400", async () => {
