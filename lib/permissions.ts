@@ -37,6 +37,51 @@ export const PERMISSIONS = {
 
 export type Permission = keyof typeof PERMISSIONS;
 
+/**
+ * What each page needs, by its address; "public" needs no sign-in. Whoever lacks it is told whose page it is. A server action
+ * would stand here too; there is none, as every change goes through a call of the API.
+ */
+export const PAGES = {
+  "/": "read",
+  "/alarms": "read",
+  "/alarms/[id]": "read",
+  "/api-reference": "read",
+  "/api-reference/[group]": "read",
+  "/audit": "audit log",
+  "/campaigns": "read",
+  "/campaigns/[id]": "read",
+  "/campaigns/new": "edit campaigns",
+  "/find": "read",
+  "/forgotten-password": "public",
+  "/invitation/[token]": "public",
+  "/liquids": "read",
+  "/liquids/[id]": "read",
+  "/liquids/[id]/edit": "edit liquids",
+  "/liquids/[id]/lots/[lotId]/edit": "edit liquids",
+  "/liquids/[id]/lots/new": "edit liquids",
+  "/liquids/new": "edit liquids",
+  "/new-password/[token]": "public",
+  "/people": "people",
+  "/problems": "public",
+  "/problems/[code]": "public",
+  "/protocols": "read",
+  "/protocols/[id]": "read",
+  "/protocols/[id]/edit": "edit protocols",
+  "/protocols/new": "edit protocols",
+  "/rigs": "read",
+  "/rigs/[id]": "read",
+  "/rigs/[id]/edit": "edit rigs",
+  "/rigs/new": "edit rigs",
+  "/sensors": "read",
+  "/sensors/[id]": "read",
+  "/sensors/[id]/edit": "edit sensors",
+  "/sensors/new": "edit sensors",
+  "/settings": "own settings",
+  "/settings/mail": "settings",
+  "/sign-in": "public",
+  "/tasks": "read",
+} as const satisfies Record<string, Permission | "public">;
+
 export const may = (role: Role, permission: Permission): boolean => (PERMISSIONS[permission] as readonly Role[]).includes(role);
 
 /** Roles that hold a permission, in words: "a researcher or an administrator". */
