@@ -1,9 +1,10 @@
 import { failedFit } from "@/lib/numerics/resonance/failed-fit";
-import { fft } from "@/lib/numerics/resonance/fft";
 import type { FitFlag } from "@/lib/numerics/resonance/flags";
 import { DISTORTED_SIGMAS, NOISY_SNR } from "@/lib/numerics/resonance/judge";
 import { FEWEST_POINTS } from "@/lib/numerics/resonance/prepare";
-import { decayModel, emptyDecayModel, type DecayModel } from "@/lib/numerics/resonance/ring-down-model";
+import { isDecayBent } from "@/lib/numerics/resonance/ring-down-bend";
+import { descendDecay, type DecaySolution } from "@/lib/numerics/resonance/ring-down-descend";
+import { decayGuess } from "@/lib/numerics/resonance/ring-down-guess";
 import type { ResonanceFit } from "@/lib/numerics/resonance/types";
 
 export type RingDown = {
@@ -15,10 +16,12 @@ export type RingDown = {
   volts: Float64Array;
 };
 
-const MOST_STEPS = 60;
-/** Done after a step that promises less than this share of a variance. */
-const SMALL_GAIN = 1e-6;
+/** A tone must explain this much of the sum of squares, in variances of a sample, beyond 2 ln n; below TRUSTED_GAIN it is doubted. */
 const LEAST_GAIN = 20;
+const TRUSTED_GAIN = 100;
+const DOUBTFUL_SIGMAS = 3;
+/** A doubted record is looked at anew by its first quarter, sixteenth and so on, where a short decay stands out better. */
+const SHORTER = [4, 16, 64, 256];
 
 /**
  * f0 and Q from the free decay after the drive is switched off.
@@ -26,15 +29,19 @@ const LEAST_GAIN = 20;
  *   v(t) = e^(−γt)·Re(ā·e^(iωt)) + b,   f0 = fd/√(1 − 1/4Q²),   Q = √(ω² + γ²)/2γ,   fd = ω/2π
  *
  * Separable least squares over (ω, γ); first guess from two neighbouring lines of the spectrum, whose ratio for a decaying
- * tone is exact.
+ * tone is exact. Velocity and displacement decay alike, so the readout does not matter.
  *
  * @returns As fitResonance, with a the phasor at the first sample used (v = a.re·cos + a.im·sin there), amplitude |a|, b the
- *   constant offset (real) and c zero. Flags among failed, noisy (amplitude/noise < 5) and distorted (lag-1 autocorrelation
- *   of the residuals > 4/√n).
+ *   constant offset (real) and c zero. Flags among
+ *   - `failed`: no convergence, or no decaying tone told from the noise; every number is then NaN
+ *   - `bent`: a frequency that follows the square of the amplitude fits better at 4σ and is shifted at the first sample by more
+ *     than 0.1 half-width f0/2Q
+ *   - `noisy`: amplitude/noise below 5
+ *   - `distorted`: lag-1 autocorrelation of the residuals above 4/√n
  * @throws RangeError if fewer than 11 samples follow the switch-off, one is not finite, or sampleHz is not positive.
  *
- * Source: free damped oscillation, e.g. Landau & Lifshitz, Mechanics, §25; first guess after Bertocco et al., IEEE Trans.
- * Instrum. Meas. 43 (1994) 245; projection after Golub & Pereyra, SIAM J. Numer. Anal. 10 (1973) 413.
+ * Source: free damped oscillation, e.g. Landau & Lifshitz, Mechanics, §25; projection after Golub & Pereyra, SIAM J. Numer.
+ * Anal. 10 (1973) 413.
  */
 export function fitRingDown({ sampleHz, startS, volts }: RingDown): ResonanceFit {
   if (!(sampleHz > 0) || !Number.isFinite(sampleHz)) throw new RangeError(`sampleHz must be positive, got ${sampleHz}`);
@@ -44,62 +51,43 @@ export function fitRingDown({ sampleHz, startS, volts }: RingDown): ResonanceFit
   if (n < FEWEST_POINTS) throw new RangeError(`a ring-down needs at least ${FEWEST_POINTS} samples after switch-off, got ${n}`);
   if (!y.every(Number.isFinite)) throw new RangeError("a sample is not finite");
 
-  const end = descendDecay(y, decayGuess(y));
-  return end.settled ? describeDecay(end, n, sampleHz) : failedFit(end.evaluations);
+  let best = descendDecay(y, decayGuess(y, n), 2);
+  let { evaluations } = best;
+  for (const shorter of SHORTER) {
+    if (isTrusted(best, n) || n / shorter < 16) break;
+    const other = descendDecay(y, decayGuess(y, n / shorter), 2);
+    evaluations += other.evaluations;
+    if (other.settled && (!best.settled || other.model.squares < best.model.squares)) best = other;
+  }
+  if (!best.settled || explainedOf(best, n) < LEAST_GAIN + 2 * Math.log(n)) return failedFit(evaluations);
+  const bend = isDecayBent(y, best, best.model.lag1 > DOUBTFUL_SIGMAS / Math.sqrt(n));
+  return describeDecay(best, { n, sampleHz, bent: bend.bent, evaluations: evaluations + bend.evaluations });
 }
 
-/** Angle ω and decay γ, both per sample. */
-type Decay = { omega: number; gamma: number };
-type DecaySolution = Decay & { model: DecayModel; settled: boolean; evaluations: number };
+function isTrusted(end: DecaySolution, n: number): boolean {
+  return end.settled && explainedOf(end, n) > TRUSTED_GAIN && end.model.lag1 < DOUBTFUL_SIGMAS / Math.sqrt(n);
+}
 
-/** Damped Gauss–Newton over (ω, γ). */
-function descendDecay(y: Float64Array, start: Decay): DecaySolution {
-  const n = y.length;
-  let here = emptyDecayModel();
-  let there = emptyDecayModel();
-  let { omega, gamma } = start;
-  let damping = 0;
-  let settled = false;
-  let evaluations = 1;
-  if (!decayModel(y, omega, gamma, here)) return { omega, gamma, model: here, settled, evaluations };
-  while (!settled && evaluations < MOST_STEPS && damping < 1e8) {
-    const ww = here.ww * (1 + damping);
-    const gg = here.gg * (1 + damping);
-    const determinant = ww * gg - here.wg ** 2;
-    let dOmega = (gg * here.gradientW - here.wg * here.gradientG) / determinant;
-    let dGamma = (ww * here.gradientG - here.wg * here.gradientW) / determinant;
-    const gain = dOmega * here.gradientW + dGamma * here.gradientG;
-    if (!Number.isFinite(gain)) break;
-    settled = damping <= 1 && (gain <= (SMALL_GAIN * here.squares) / n || Math.abs(dOmega) + Math.abs(dGamma) < 1e-14);
-    const longest = gamma + 2 / n;
-    const cut = Math.max(1, Math.abs(dOmega) / longest, Math.abs(dGamma) / (0.7 * longest));
-    dOmega /= cut;
-    dGamma /= cut;
-    const nextOmega = omega + dOmega;
-    const nextGamma = Math.max(gamma + dGamma, gamma / 5);
-    const solved = decayModel(y, nextOmega, nextGamma, there);
-    evaluations++;
-    if (solved && (there.squares <= here.squares || settled)) {
-      [omega, gamma] = [nextOmega, nextGamma];
-      [here, there] = [there, here];
-      damping = damping < 1e-3 ? 0 : damping / 10;
-    } else {
-      damping = Math.max(1e-2, damping * 10);
-    }
-  }
-  return { omega, gamma, model: here, settled: settled && omega > 0 && omega < Math.PI && gamma > 0, evaluations };
+/** What the tone explains, in variances of a sample. */
+function explainedOf({ model: { energy, squares } }: DecaySolution, n: number): number {
+  if (squares > 0) return ((energy - squares) * (n - 5)) / squares;
+  return energy > 0 ? Infinity : 0;
 }
 
 /** From angle and decay to f0 and Q, variances carried along to first order. */
-function describeDecay({ omega, gamma, model, evaluations }: DecaySolution, n: number, sampleHz: number): ResonanceFit {
+function describeDecay(
+  { omega, gamma, model }: DecaySolution,
+  { n, sampleHz, bent, evaluations }: { n: number; sampleHz: number; bent: boolean; evaluations: number },
+): ResonanceFit {
   const variance = model.squares / (n - 5);
-  const determinant = model.ww * model.gg - model.wg ** 2;
-  if (!(determinant > 0) || model.energy - model.squares < (LEAST_GAIN + 2 * Math.log(n)) * variance) return failedFit(evaluations);
+  const [ww, wg, , , gg] = model.gram;
+  const determinant = (ww * gg - wg ** 2) * n * n;
+  if (!(determinant > 0)) return failedFit(evaluations);
   const natural = Math.hypot(omega, gamma);
   const perRadian = sampleHz / (2 * Math.PI);
-  const varW = (variance * model.gg) / determinant;
-  const varG = (variance * model.ww) / determinant;
-  const covWG = (-variance * model.wg) / determinant;
+  const varW = (variance * gg) / determinant;
+  const varG = (variance * ww) / determinant;
+  const covWG = (-variance * wg) / determinant;
   const f0W = (perRadian * omega) / natural;
   const f0G = (perRadian * gamma) / natural;
   const qW = omega / (2 * gamma * natural);
@@ -111,6 +99,7 @@ function describeDecay({ omega, gamma, model, evaluations }: DecaySolution, n: n
   const amplitude = Math.hypot(model.cosine, model.sine);
   const snr = noise > 0 ? amplitude / noise : Infinity;
   const flags: FitFlag[] = [];
+  if (bent) flags.push("bent");
   if (snr < NOISY_SNR) flags.push("noisy");
   if (model.lag1 > DISTORTED_SIGMAS / Math.sqrt(n)) flags.push("distorted");
   return {
@@ -118,33 +107,4 @@ function describeDecay({ omega, gamma, model, evaluations }: DecaySolution, n: n
     amplitude, noise, snr, flags,
     a: { re: model.cosine, im: model.sine }, b: { re: model.constant, im: 0 }, c: { re: 0, im: 0 }, evaluations,
   };
-}
-
-/**
- * Angle and decay per sample from the strongest line of the spectrum and its stronger neighbour: for a decaying tone
- * X[k] ∝ 1/(1 − ζ·e^(−2πik/n)) with ζ = e^(iω − γ), so two lines give ζ.
- */
-function decayGuess(y: Float64Array): Decay {
-  const n = 2 ** Math.floor(Math.log2(y.length));
-  const re = y.slice(0, n);
-  const im = new Float64Array(n);
-  const mean = re.reduce((sum, v) => sum + v, 0) / n;
-  for (let i = 0; i < n; i++) re[i] -= mean;
-  fft(re, im);
-  const power = (k: number): number => re[k] * re[k] + im[k] * im[k];
-  let peak = 1;
-  for (let k = 2; k < n / 2; k++) if (power(k) > power(peak)) peak = k;
-  const other = peak + 1 < n / 2 && (peak < 2 || power(peak + 1) > power(peak - 1)) ? peak + 1 : Math.max(peak - 1, 0);
-  const unit = (k: number): [number, number] => [Math.cos((2 * Math.PI * k) / n), -Math.sin((2 * Math.PI * k) / n)];
-  const [aR, aI] = unit(peak);
-  const [bR, bI] = unit(other);
-  const upR = re[peak] - re[other];
-  const upI = im[peak] - im[other];
-  const downR = re[peak] * aR - im[peak] * aI - (re[other] * bR - im[other] * bI);
-  const downI = re[peak] * aI + im[peak] * aR - (re[other] * bI + im[other] * bR);
-  const omega = Math.atan2(upI * downR - upR * downI, upR * downR + upI * downI);
-  const gamma = -Math.log(Math.hypot(upR, upI) / Math.hypot(downR, downI));
-  const line = (2 * Math.PI * peak) / n;
-  const near = Math.abs(omega - line) < (4 * Math.PI) / n;
-  return { omega: near ? omega : line, gamma: gamma > 0 && gamma < 1 ? gamma : 1 / n };
 }
