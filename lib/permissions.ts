@@ -84,6 +84,12 @@ export const PAGES = {
 
 export const may = (role: Role, permission: Permission): boolean => (PERMISSIONS[permission] as readonly Role[]).includes(role);
 
+/** Whether a role may open the page of that address; a page that the table does not name is nobody's. */
+export function mayOpen(role: Role, address: string): boolean {
+  const needed = (PAGES as Readonly<Record<string, Permission | "public">>)[address];
+  return needed === "public" || (needed !== undefined && may(role, needed));
+}
+
 /** Roles that hold a permission, in words: "a researcher or an administrator". */
 export function whoMay(permission: Permission): string {
   const article = (role: Role) => (/^[aeiou]/.test(role) ? `an ${role}` : `a ${role}`);

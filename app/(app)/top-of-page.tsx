@@ -9,9 +9,7 @@ import { findNow } from "@/lib/find/client";
 import { KIND_WORDS } from "@/lib/find/kind-words";
 import { meOptions } from "@/lib/people/client";
 import type { MeAnswer } from "@/lib/people/schema";
-import { may, type Permission } from "@/lib/permissions";
-
-const NEEDS: Readonly<Record<string, Permission>> = { "/people": "people", "/audit": "audit log" };
+import { mayOpen } from "@/lib/permissions";
 
 const onFind = async (words: string, signal: AbortSignal) => {
   const { items, totals } = await findNow(words, signal);
@@ -34,7 +32,7 @@ export function TopOfPage({ me, demo }: { me: MeAnswer; demo: boolean }) {
       zone={data.laboratory.timeZone}
       person={{ name: data.name, role: data.role }}
       alarms={data.alarms}
-      more={MORE_PLACES.filter(({ href }) => !NEEDS[href] || may(data.role, NEEDS[href]))}
+      more={MORE_PLACES.filter(({ href }) => mayOpen(data.role, href))}
       demo={demo && <><b>A demo laboratory.</b> Rigs, liquids and people are invented; mail stays on this machine.</>}
       onFind={onFind}
       onSignOut={() => void leave()}

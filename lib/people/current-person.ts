@@ -5,7 +5,6 @@ import { cache } from "react";
 import { personOfSession } from "@/lib/http/authenticate";
 import type { Actor } from "@/lib/people/actor";
 import { sessionCookieName } from "@/lib/people/session-cookie";
-import { may, type Permission } from "@/lib/permissions";
 
 /** The person of this request, checked against the database once per request. */
 export const personOrNull = cache(async (): Promise<Actor | null> => {
@@ -19,10 +18,4 @@ export async function currentPerson(): Promise<Actor> {
   if (person) return person;
   const path = (await headers()).get("x-path");
   redirect(path && path !== "/" ? `/sign-in?next=${encodeURIComponent(path)}` : "/sign-in");
-}
-
-/** For pages that not every role may open. */
-export async function currentPersonWith(permission: Permission): Promise<Actor | null> {
-  const person = await currentPerson();
-  return may(person.role, permission) ? person : null;
 }
