@@ -23,7 +23,7 @@ const WANTED = 1500;
 export async function run(): Promise<BenchResult[]> {
   const undoing: (() => Promise<void> | void)[] = [];
   try {
-    const { url, token } = await startBenchLaboratory({ repeats: REPEATS, points: POINTS }, (undo) => undoing.push(undo));
+    const { url, tokens: [token] } = await startBenchLaboratory({ repeats: REPEATS, points: POINTS }, (undo) => undoing.push(undo));
     const agent = benchAgent(url, token);
     await hello(agent);
     let step = await nextStep(agent);

@@ -21,10 +21,10 @@ import { type Service, supervise } from "./supervise.mjs";
 
 export type Step = { id: string; kind: string; lease: string; params: { repeats: number; sweep: { startHz: number; stopHz: number; points: number } } };
 
-type Given = { repeats: number; points: number };
+type Given = { repeats: number; points: number; rigs?: number };
 
-/** PostgreSQL, web and worker in a folder of their own, and one rig with a campaign of nothing but air. */
-export async function startBenchLaboratory({ repeats, points }: Given, later: (undo: () => Promise<void> | void) => void): Promise<{ url: string; token: string }> {
+/** PostgreSQL, web and worker in a folder of their own, and rigs with a campaign each of nothing but air. */
+export async function startBenchLaboratory({ rigs = 1, ...given }: Given, later: (undo: () => Promise<void> | void) => void): Promise<{ url: string; tokens: string[] }> {
   const root = path.resolve(import.meta.dirname, "../..");
   await ensureBuild({ root, distDir: ".next", step: (_title, work) => work() });
   const home = fs.mkdtempSync(path.join(os.tmpdir(), "longreed-bench-"));
@@ -46,19 +46,15 @@ export async function startBenchLaboratory({ repeats, points }: Given, later: (u
   start(webService({ root, env, port: ports.web, distDir: ".next" }));
   start(workerService({ root, env }));
   const url = `http://127.0.0.1:${ports.web}`;
-  const token = await makeCampaign({ repeats, points });
+  const tokens = await makeCampaigns(given, rigs);
   await waitForAnswer(`${url}/sign-in`, { withinMs: 60_000 });
-  return { url, token };
+  return { url, tokens };
 }
 
-async function makeCampaign({ repeats, points }: Given): Promise<string> {
+async function makeCampaigns({ repeats, points }: Given, rigs: number): Promise<string[]> {
   const now = new Date();
   const person = await createFirstAdministrator({ email: "bench@longreed.example", name: "Bench", password: "of no use elsewhere", now });
   const by = { id: person.id, name: person.name, role: person.role };
-  const { id: rigId } = await createRig({ by, now, name: "Bench", timeZone: "UTC", ports: 1 });
-  const { token } = await createAgentToken({ by, now, rigId, name: "bench" });
-  const { id: sensorId } = await createSensor({ by, now, serial: "BENCH-1", kind: "wire", nominalF0Hz: 2400, nominalQ: 2000 });
-  await mountSensor({ by, now, sensorId, rigId });
   const sweep = { centre: "track" as const, span: { halfWidths: 8 }, points, dwell: { s: 0.01 }, driveV: 0.1 };
   const { versionId } = await createProtocol({
     by,
@@ -74,9 +70,17 @@ async function makeCampaign({ repeats, points }: Given): Promise<string> {
       ],
     },
   });
-  const { id: campaignId } = await createCampaign({ by, now, protocolVersionId: versionId, sensorId, rigId, slots: {} });
-  await queueCampaign({ by, now, campaignId });
-  return token;
+  const tokens: string[] = [];
+  for (let i = 1; i <= rigs; i++) {
+    const { id: rigId } = await createRig({ by, now, name: `Bench ${i}`, timeZone: "UTC", ports: 1 });
+    const { token } = await createAgentToken({ by, now, rigId, name: "bench" });
+    const { id: sensorId } = await createSensor({ by, now, serial: `BENCH-${i}`, kind: "wire", nominalF0Hz: 2400, nominalQ: 2000 });
+    await mountSensor({ by, now, sensorId, rigId });
+    const { id: campaignId } = await createCampaign({ by, now, protocolVersionId: versionId, sensorId, rigId, slots: {} });
+    await queueCampaign({ by, now, campaignId });
+    tokens.push(token);
+  }
+  return tokens;
 }
 
 export type BenchAgent = (path: string, body: object) => Promise<unknown>;
