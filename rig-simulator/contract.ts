@@ -45,6 +45,15 @@ export type Step = MeasureStep | FillStep | RinseStep | DrainStep | DryStep | Se
 
 export type Wish = "none" | "hold" | "stop";
 
+type Volts = { re: number[]; im: number[] } | { magnitude: number[] };
+
+/** What was measured, in one of the forms that the contract takes. */
+export type Measured =
+  | { sweep: { startHz: number; stopHz: number } & Volts }
+  | ({ frequencyHz: number[] } & Volts)
+  | { ringDown: { sampleHz: number; startS: number; volts: number[] } }
+  | { fitted: { f0Hz: number; q: number; f0StdHz: number; qStd: number; amplitudeV: number } };
+
 export type Reading = {
   index: number;
   takenAt: string;
@@ -52,8 +61,7 @@ export type Reading = {
   temperatureC: number;
   pressurePa: number;
   humidityPercent: number;
-  sweep: { startHz: number; stopHz: number; re: number[]; im: number[] };
-};
+} & Measured;
 
 export type FailureCode = "port-empty" | "waste-full" | "pump" | "thermostat" | "instrument" | "sensor" | "timeout" | "other";
 

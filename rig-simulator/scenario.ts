@@ -74,6 +74,12 @@ const signal = z.strictObject({
   noiseV: z.number().min(0).default(2e-6),
 });
 
+/** In which form readings are sent, and which way and how evenly sweeps go. An uneven one is denser in the middle. */
+const sends = z.strictObject({
+  form: z.enum(["complex", "magnitude", "ringDown", "fitted"]).default("complex"),
+  grid: z.enum(["even", "downward", "uneven"]).default("even"),
+});
+
 const surroundings = z.strictObject({
   setPointC: z.number().default(20),
   ambientC: z.number().default(21.5),
@@ -165,6 +171,7 @@ export const scenarioSchema = z.strictObject({
   rig,
   sensor,
   signal: signal.prefault({}),
+  sends: sends.prefault({}),
   surroundings: surroundings.prefault({}),
   noise: noise.prefault({}),
   /** Nominal hours from one step to the next: what time means for drift, ageing, weather and noise. See `elapsedS`. */

@@ -1,6 +1,7 @@
 import { fitResonance } from "@/lib/numerics/resonance/fit-resonance";
 import { fitRingDown } from "@/lib/numerics/resonance/fit-ring-down";
 import type { FitFlag } from "@/lib/numerics/resonance/flags";
+import { judgeGiven, type AskedSweep } from "@/lib/numerics/resonance/judge-given";
 import type { Readout } from "@/lib/numerics/resonance/types";
 import { decodeSweep, type StoredSweep } from "@/lib/readings/decode-sweep";
 import type { FitSettings } from "@/models/json";
@@ -16,10 +17,13 @@ export type RecordFit = {
   flags: FitFlag[];
 };
 
-type Settings = { settings: FitSettings; readout: Readout; dwellS: number | undefined };
+type Settings = { settings: FitSettings; readout: Readout; asked: AskedSweep };
 
-/** f0 and Q of one stored record, whichever form it has. What cannot be fitted is flagged `failed`, never thrown. */
-export function fitRecord(stored: StoredSweep, { settings, readout, dwellS }: Settings): RecordFit {
+/**
+ * f0 and Q of one stored record, whichever form it has; values that a rig has fitted are taken as given, judged by the sweep it was
+ * asked for. What cannot be fitted is flagged `failed`, never thrown.
+ */
+export function fitRecord(stored: StoredSweep, { settings, readout, asked }: Settings): RecordFit {
   const record = decodeSweep(stored);
   if (record.form === "fitted") {
     return {
@@ -30,13 +34,13 @@ export function fitRecord(stored: StoredSweep, { settings, readout, dwellS }: Se
       covarianceF0Q: NaN,
       amplitude: record.amplitudeV ?? NaN,
       noise: NaN,
-      flags: [],
+      flags: judgeGiven(record, asked),
     };
   }
   const fit =
     record.form === "ringDown"
       ? fitRingDown({ sampleHz: record.sampleHz, startS: record.startS, volts: record.volts })
-      : fitResonance(record.sweep, { readout, dwellS, offsetSlope: settings.offsetSlope });
+      : fitResonance(record.sweep, { readout, dwellS: asked.dwellS, offsetSlope: settings.offsetSlope });
   return {
     f0Hz: fit.f0Hz,
     q: fit.q,

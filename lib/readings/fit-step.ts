@@ -1,6 +1,7 @@
 import type { Transaction } from "sequelize";
 import { change, inTransaction, rows } from "@/lib/db";
 import { flagBits } from "@/lib/numerics/resonance/flags";
+import type { AskedSweep } from "@/lib/numerics/resonance/judge-given";
 import type { Readout } from "@/lib/numerics/resonance/types";
 import { refreshPhase } from "@/lib/phases/close-phase";
 import { fitRecord } from "@/lib/readings/fit-record";
@@ -8,7 +9,7 @@ import type { FitSettings } from "@/models/json";
 
 const BATCH = 200;
 
-type FitContext = { fitRunId: string; settings: FitSettings; readout: Readout; dwellS: number | undefined };
+type FitContext = { fitRunId: string; settings: FitSettings; readout: Readout; asked: AskedSweep };
 
 type Asked = { stepId: string; from?: number; now: Date };
 
@@ -52,7 +53,7 @@ type Waiting = FitContext & { idx: number; kind: number; flags: number; startHz:
 
 // One look-up a reading, by the whole key: PostgreSQL takes a new step for one row and would go through it once for each.
 const WAITING = `
-  select run.id as "fitRunId", run.settings, v.definition->>'readout' as readout, (s.params->'sweep'->>'dwellS')::float8 as "dwellS",
+  select run.id as "fitRunId", run.settings, v.definition->>'readout' as readout, s.params->'sweep' as asked,
          r.idx, r.kind, r.flags, w.start_hz as "startHz", w.stop_hz as "stopHz", w.points, w.data
     from step s join fit_run run on run.campaign_id = s.campaign_id and run.current join protocol_version v on v.id = s.protocol_version_id
    cross join lateral (select idx from reading where step_id = $1 and idx >= $2

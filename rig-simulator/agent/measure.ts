@@ -2,11 +2,11 @@ import type { MeasureStep, Outcome, Reading } from "../contract";
 import { conditionsOf, repeatPeriodS, type World } from "../world";
 import { repeatKey, type Conditions, type Moment } from "../physics/moment";
 import { processes } from "../physics/processes";
-import { sweepVoltages } from "../physics/sweep";
 import { truth } from "../physics/truth";
 import type { Rig } from "../rig";
 import { CaughtUp } from "./caught-up";
 import { crashIfDue } from "./faults";
+import { measured } from "./measured";
 import { Interrupted, type Session } from "./session";
 import { Uploader } from "./uploader";
 
@@ -71,11 +71,7 @@ export function takeReading(rig: Rig, step: MeasureStep, conditions: Conditions,
     temperatureC: round(climate.thermometerC, 5),
     pressurePa: round(climate.pressurePa, 1),
     humidityPercent: round(climate.humidityPercent, 2),
-    sweep: {
-      startHz: sweep.startHz,
-      stopHz: sweep.stopHz,
-      ...sweepVoltages(scenario, { f0Hz, q }, rig.nominal, sweep, repeatKey(moment, processes.sweep)),
-    },
+    ...measured(scenario, { f0Hz, q }, rig.nominal, sweep, repeatKey(moment, processes.sweep)),
   };
 }
 
