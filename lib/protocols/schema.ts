@@ -6,9 +6,20 @@ import { instant, time, words } from "@/lib/schema";
 
 /** A draft may be half-written: it is kept as it is, and judged when it becomes a version. */
 const MAX_DRAFT_LENGTH = 2_000_000;
-const draft = z.record(z.string(), z.unknown()).refine((value) => JSON.stringify(value).length <= MAX_DRAFT_LENGTH, {
+/** A protocol nests 8 deep; whatever is far beyond that would exhaust the stack of whoever reads it. */
+const MAX_DRAFT_DEPTH = 100;
+const draft = z.record(z.string(), z.unknown()).refine((value) => !isDeeper(value, MAX_DRAFT_DEPTH), { error: `is nested more than ${MAX_DRAFT_DEPTH} deep`, abort: true }).refine((value) => JSON.stringify(value).length <= MAX_DRAFT_LENGTH, {
   error: `is longer than ${MAX_DRAFT_LENGTH} characters as JSON`,
 });
+
+function isDeeper(value: unknown, most: number): boolean {
+  let level = [value];
+  for (let depth = 0; depth <= most; depth++) {
+    level = level.flatMap((one) => (typeof one === "object" && one !== null ? Object.values(one) : []));
+    if (level.length === 0) return false;
+  }
+  return true;
+}
 
 export const protocolBody = z.strictObject({ definition: definitionSchema });
 

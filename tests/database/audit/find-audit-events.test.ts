@@ -1,4 +1,4 @@
-import { afterAll, expect, test } from "vitest";
+import { afterAll, expect, test, vi } from "vitest";
 import { findAuditEvents } from "@/lib/audit/find";
 import { createCampaign } from "@/lib/campaigns/create";
 import { sequelize } from "@/lib/db";
@@ -19,11 +19,10 @@ test("a page names what its events are about and what they speak of, in one quer
   const { lotId } = await buildLoad({ rigId });
   const { id: campaignId } = await createCampaign({ by, now, rigId, sensorId: (await buildSensor({ serial: "WR-1" })).id, protocolVersionId: (await buildProtocolVersion()).id, slots: { sample: { port: 1, lotId } }, name: "Ageing" });
 
-  const asked: string[] = [];
-  sequelize.options.logging = (sql) => void asked.push(sql);
+  const asked = vi.spyOn(sequelize, "query");
   const { items } = await findAuditEvents({ by, limit: 50 });
-  sequelize.options.logging = false;
-  expect(asked).toHaveLength(2);
+  expect(asked).toHaveBeenCalledTimes(2);
+  asked.mockRestore();
 
   const [made, changed] = items;
   expect(made).toMatchObject({ entity: "campaign", about: `C-${campaignId} Ageing` });

@@ -7,13 +7,15 @@ import { POST as finish } from "@/app/api/agent/steps/[id]/finish/route";
 import { POST as readings } from "@/app/api/agent/steps/[id]/readings/route";
 import { POST as next } from "@/app/api/agent/steps/next/route";
 import type { StepAnswer } from "@/lib/agents/schema";
-import { row, sequelize } from "@/lib/db";
+import { sequelize } from "@/lib/db";
 import { listener } from "@/lib/listener";
 import { hashToken, newToken } from "@/lib/tokens";
 import { fitStep } from "@/lib/readings/fit-step";
 import { AgentToken } from "@/models/agent-token";
 import { Bench } from "@/tests/factories/bench";
+import { databaseDigest } from "@/tests/factories/database-digest";
 import { agentToken, ORIGIN } from "@/tests/factories/session";
+import { placesIn, withText, type Place } from "@/tests/factories/wrong-json";
 
 const routes = { hello, heartbeat, next, readings, finish };
 type Route = keyof typeof routes;
@@ -91,13 +93,6 @@ async function send({ route, body, id = step.id, headers = {}, as = token }: Sen
   return routes[route](request, { params: Promise.resolve(route === "readings" || route === "finish" ? { id } : {}) });
 }
 
-/** A digest of everything that a call of an agent may change. When a token was last used is no part of it. */
-async function state(): Promise<string> {
-  const tables = ["rig", "agent_session", "heartbeat", "port", "campaign", "step", "step_lease", "phase", "reading", "sweep", "fit", "hold", "alarm", "operator_task", "audit_event", "campaign_event", "notification"];
-  const digests = tables.map((name) => `(select md5(coalesce(string_agg(t::text, '|' order by t::text), '')) from ${name} t)`);
-  return (await row<{ digest: string }>(`select concat_ws(' ', ${digests.join(", ")}) as digest`))?.digest as string;
-}
-
 async function refuses(sent: Sent, statuses: number[], about: string): Promise<void> {
   const answer = await send(sent);
   const text = await answer.text();
@@ -108,9 +103,9 @@ async function refuses(sent: Sent, statuses: number[], about: string): Promise<v
 }
 
 async function changesNothing(work: () => Promise<void>): Promise<void> {
-  const before = await state();
+  const before = await databaseDigest();
   await work();
-  expect(await state()).toBe(before);
+  expect(await databaseDigest()).toBe(before);
 }
 
 const everyRoute = Object.keys(routes) as Route[];
@@ -186,13 +181,6 @@ function dice(seed: number): (n: number) => number {
   return (n) => (random.unsafeNext() >>> 0) % n;
 }
 
-type Place = { path: (string | number)[]; value: unknown };
-
-function* placesIn(value: unknown, path: (string | number)[] = []): Generator<Place> {
-  if (path.length > 0) yield { path, value };
-  if (value && typeof value === "object") for (const [key, inner] of Object.entries(value)) yield* placesIn(inner, [...path, Array.isArray(value) ? Number(key) : key]);
-}
-
 /** JSON texts that cannot stand where this value stands. */
 function wrongFor(value: unknown): string[] {
   const always = ["null", '"\\u0000"', '"\\ud800"', "[[]]", '{"__proto__":{"x":1}}', '""'];
@@ -201,16 +189,6 @@ function wrongFor(value: unknown): string[] {
   if (typeof value === "boolean") return [...always, "1", "0", '"true"', "[]"];
   if (Array.isArray(value)) return [...always, "1", '"[]"', "{}", `[${"null,".repeat(5000)}null]`, '[1,"2"]'];
   return [...always, "1", "[]", '"{}"', "true"];
-}
-
-/** The body as JSON with one place in it replaced by another JSON text. */
-function withText(body: unknown, at: readonly (string | number)[], text: string): string {
-  const mark = "\u241f";
-  const copy = structuredClone(body) as Record<string | number, unknown>;
-  let inner = copy;
-  for (const key of at.slice(0, -1)) inner = inner[key] as Record<string | number, unknown>;
-  inner[at[at.length - 1]] = mark;
-  return JSON.stringify(copy).replace(JSON.stringify(mark), () => text);
 }
 
 /** Where the wrong text happens to be allowed. */
@@ -226,7 +204,7 @@ function isAllowed({ path, value }: Place, text: string): boolean {
 test(`${GENERATED} generated requests with one thing wrong are 400, 404, 409 or 422, and nothing changes (seed ${SEED})`, { timeout: 120_000 }, async () => {
   const roll = dice(SEED);
   let batch: string[] = [];
-  let before = await state();
+  let before = await databaseDigest();
   for (let n = 0; n < GENERATED; n++) {
     const route = everyRoute[roll(everyRoute.length)];
     const places = [...placesIn(valid[route])];
@@ -237,7 +215,7 @@ test(`${GENERATED} generated requests with one thing wrong are 400, 404, 409 or 
     batch.push(about);
     await refuses({ route, body: withText(valid[route], place.path, text) }, [400, 404, 409, 422], about);
     if (n % 50 === 49) {
-      const after = await state();
+      const after = await databaseDigest();
       expect(after === before, `something changed in one of\n${batch.join("\n")}`).toBe(true);
       before = after;
       batch = [];

@@ -8,9 +8,11 @@ import { API_CALLS, type ApiCall } from "../../factories/api-calls";
 import { databaseDigest, oneIdOfEach, partIds } from "../../factories/database-digest";
 import { hours, now } from "../../factories/now";
 import { buildPerson } from "../../factories/person";
+import { buildCampaign } from "../../factories/campaign";
+import { buildRig } from "../../factories/rig";
 import { prepareCall, sendPrepared, type Otherwise, type PreparedCall } from "../../factories/prepared-call";
-import { placesIn, withText } from "../../factories/wrong-json";
-import { agentToken, cookieOf, ORIGIN, tokenOf } from "../../factories/session";
+import { HOSTILE_TEXTS, placesIn, withText } from "../../factories/wrong-json";
+import { agentToken, at, cookieOf, ORIGIN, request, signedInAs, tokenOf } from "../../factories/session";
 
 const MIB = 1024 * 1024;
 
@@ -75,6 +77,34 @@ describe.each(named(withBody))("bodies of %s", (_, call) => {
       for (const encoding of ["br", "deflate", "gzip, gzip"]) await refuses(call, { body: good, headers: { "content-encoding": encoding } }, [415], encoding);
     });
   });
+});
+
+test("a draft may be nested as deep as one writes, and no deeper than what reads it can go", async () => {
+  const call = forPeople.find(({ name }) => name === "POST /api/protocols/drafts") as ApiCall;
+  const nested = (depth: number) => `{"draft":{"a":${"[".repeat(depth)}${"]".repeat(depth)}}}`;
+  await changesNothing(async () => {
+    for (const depth of [101, 1000, 4700, 100_000, 1_000_000]) await refuses(call, { body: nested(depth) }, [400], `${depth}`);
+  });
+  expect((await sendPrepared(prepared.get(call.name) as PreparedCall, { body: nested(99) })).status).toBe(201);
+});
+
+test("what people type who mean harm is stored as it is and comes back so", async () => {
+  const rig = await buildRig();
+  const { id: campaignId } = await buildCampaign({ state: "running", rigId: rig.id });
+  const { cookie } = await signedInAs("administrator");
+  const send = async (name: string, id: string, body?: unknown) => {
+    const call = API_CALLS.find((one) => one.name === name) as ApiCall;
+    return (await call.handler(request(call.method, "/api/x", { cookie, body }), at({ id }))).json() as Promise<Record<string, unknown>>;
+  };
+  for (const text of HOSTILE_TEXTS) {
+    const kept = text.trim();
+    if (kept === "") continue;
+    expect(await send("PATCH /api/rigs/{id}", rig.id, { name: text })).toMatchObject({ name: kept });
+    expect(await send("GET /api/rigs/{id}", rig.id)).toMatchObject({ name: kept });
+    await send("POST /api/campaigns/{id}/notes", campaignId, { text });
+    expect(await send("GET /api/campaigns/{id}/notes", campaignId)).toMatchObject({ items: expect.arrayContaining([expect.objectContaining({ text: kept })]) });
+  }
+  expect(await send("GET /api/audit", "")).toMatchObject({ items: expect.any(Array) });
 });
 
 describe("credentials", () => {
