@@ -63,6 +63,7 @@ function unbiasedDeviation(
 describe("bands hold the truth at their rate, noise type known, ± 3 points", () => {
   const cases: { statistic: Statistic; alpha: Alpha }[] = [
     { statistic: "oadev", alpha: 2 },
+    { statistic: "oadev", alpha: 1 },
     { statistic: "oadev", alpha: 0 },
     { statistic: "oadev", alpha: -1 },
     { statistic: "oadev", alpha: -2 },
@@ -71,6 +72,8 @@ describe("bands hold the truth at their rate, noise type known, ± 3 points", ()
     { statistic: "totdev", alpha: 0 },
     { statistic: "totdev", alpha: -2 },
     { statistic: "adev", alpha: -2 },
+    { statistic: "tdev", alpha: 1 },
+    { statistic: "hdev", alpha: 0 },
   ];
 
   test.each(cases)("$statistic, α = $alpha", { timeout: 300_000 }, ({ statistic, alpha }) => {
@@ -97,7 +100,7 @@ describe("bands hold the truth at their rate, noise type known, ± 3 points", ()
 });
 
 describe("bands of the curve, noise type identified, ± 6 points", () => {
-  test.each([2, 0, -1, -2] as const)("overlapping Allan, α = %i", { timeout: 300_000 }, (alpha) => {
+  test.each([2, 1, 0, -1, -2] as const)("overlapping Allan, α = %i", { timeout: 300_000 }, (alpha) => {
     const truths = trueDeviations("oadev", alpha);
     const make = powerLawNoise({ alpha, length, seed: 52_013 });
     const held = new Map<number, { held: number; judged: number }>();

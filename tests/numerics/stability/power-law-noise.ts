@@ -4,13 +4,20 @@ import { gaussian } from "@/tests/numerics/seeded-noise";
 
 /**
  * Maker of series of discrete noise S_y(f) ∝ f^alpha, exact in distribution up to a constant: white (0) to random walk
- * (−2) FM by a factor of the covariance of their steps, white PM (2) as differences of white phase.
+ * (−2) FM by a factor of the covariance of their steps, white and flicker PM (2, 1) as differences of white and flicker phase.
  */
 export function powerLawNoise({ alpha, length, seed }: { alpha: number; length: number; seed: number }): () => Float64Array {
   const next = gaussian(seed);
   if (alpha === 2) {
     return () => {
       const phase = Float64Array.from({ length: length + 1 }, next);
+      return phase.subarray(1).map((value, i) => value - phase[i]);
+    };
+  }
+  if (alpha === 1) {
+    const makePhase = powerLawNoise({ alpha: -1, length: length + 1, seed });
+    return () => {
+      const phase = makePhase();
       return phase.subarray(1).map((value, i) => value - phase[i]);
     };
   }
