@@ -13,7 +13,7 @@ import { httpTransport, type Transport } from "@/rig-simulator/agent/transport";
 import { sleep } from "@/rig-simulator/clock";
 import { loadScenario } from "@/rig-simulator/load-scenario";
 import { nominalInAir } from "@/rig-simulator/physics/truth";
-import { memoryStore, Rig } from "@/rig-simulator/rig";
+import { memoryStore, Rig, type TruthRecord } from "@/rig-simulator/rig";
 import { scenarioSchema } from "@/rig-simulator/scenario";
 import { buildCampaign } from "../../factories/campaign";
 import { buildLot } from "../../factories/lot";
@@ -49,8 +49,12 @@ export type Place = { url: string; token: string; campaignId: string; rigId: str
 
 export type Disturbance = {
   faults?: object;
-  /** Replaces parts of the scenario's rig. */
+  /** Replaces parts of the scenario's rig, and of the scenario. */
   rig?: object;
+  scenario?: object;
+  readout?: Definition["readout"];
+  /** Is told the truth behind every reading. */
+  onTruth?: (record: TruthRecord) => void;
   /** Faults of the way to the server that the scenario does not know. */
   network?: (inner: Transport, place: Place) => Transport;
   /** What goes on beside the agent, until it ends or the signal does. */
@@ -63,19 +67,22 @@ export type Disturbance = {
 export type Left = { state: string; readings: object[]; phases: object[]; alarms: object[] };
 
 /** Runs a seeded campaign of three cycles on a rig of its own to its end. */
-export async function runCampaign(url: string, { faults = {}, rig: part = {}, network = (inner) => inner, beside, person }: Disturbance = {}): Promise<Left> {
+export async function runCampaign(
+  url: string,
+  { faults = {}, rig: part = {}, scenario: replaced = {}, readout = "velocity", onTruth, network = (inner) => inner, beside, person }: Disturbance = {},
+): Promise<Left> {
   const quick = loadScenario("quick");
-  const scenario = scenarioSchema.parse({ ...quick, rig: { ...quick.rig, ...part }, changes, faults });
+  const scenario = scenarioSchema.parse({ ...quick, rig: { ...quick.rig, ...part }, sensor: { ...quick.sensor, readout }, changes, faults, ...replaced });
   const { f0Hz, q } = nominalInAir(scenario);
   const rig = await buildRig({ clock: "simulated" });
   const sensor = await buildSensor({ nominalF0Hz: f0Hz, nominalQ: q });
   const { token, hash, last4 } = newToken("agent");
   await AgentToken.create({ rigId: rig.id, name: "simulator", tokenHash: hash, last4, createdAt: now });
-  const version = await buildProtocolVersion({ definition: aDefinition({ blocks, limits, baseline: { airReferences: 1 } }) });
+  const version = await buildProtocolVersion({ definition: aDefinition({ blocks, limits, readout, baseline: { airReferences: 1 } }) });
   await buildMount({ rigId: rig.id, sensorId: sensor.id });
   const campaign = await buildCampaign({ rigId: rig.id, sensorId: sensor.id, protocolVersionId: version.id, state: "queued" });
 
-  const simulated = new Rig({ scenario, seed: 5, speed: { kind: "fast" }, store: memoryStore(), clockStartMs: Date.parse("2026-01-05T03:00:00Z") });
+  const simulated = new Rig({ scenario, seed: 5, speed: { kind: "fast" }, store: memoryStore(), clockStartMs: Date.parse("2026-01-05T03:00:00Z"), onTruth });
   const place: Place = { url, token, campaignId: campaign.id, rigId: rig.id, simulated };
   const ending = new AbortController();
   const signal = AbortSignal.any([ending.signal, AbortSignal.timeout(60_000)]);
