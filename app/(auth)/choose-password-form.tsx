@@ -7,6 +7,7 @@ import { Button } from "@/components/ui/button";
 import { TextField } from "@/components/ui/field";
 import { Problem } from "@/components/ui/states";
 import { fetchJson, ProblemError } from "@/lib/http/fetch-json";
+import { firstPage } from "./landing";
 
 type Props = {
   /** Where the choice goes. */
@@ -32,7 +33,7 @@ export function ChoosePasswordForm({ action, token, email, name, verb }: Props) 
     try {
       await fetchJson(action, { method: "POST", body: { token, password, ...(name !== undefined && { name: String(given.get("name")) }) } });
       if (email) await signIn("credentials", { email, password, redirect: false });
-      router.replace(email ? "/" : "/sign-in");
+      router.replace(email ? await firstPage() : "/sign-in");
       router.refresh();
     } catch (error) {
       setProblem(error);

@@ -87,6 +87,19 @@ export function Problem({ title, error, children, onRetry, retry = "Try again", 
   );
 }
 
+/** The device has no network. `kept`: what people do meanwhile is kept and sent by itself. */
+export function NoNetwork({ since, kept }: { since: string; kept?: boolean }) {
+  return (
+    <p role="status" className="mt-3 flex items-baseline gap-2.5 text-ink2">
+      <svg width="22" height="14" fill="none" stroke="var(--ink)" aria-hidden="true" className="flex-none self-center">
+        <path d="M0 7h8" strokeWidth="2.2" />
+        <path d="M11 7h11" strokeWidth="2.2" strokeDasharray="2 3" />
+      </svg>
+      <span><b className="text-ink">No network since {since}.</b> Shown as of then.{kept && " Answers are kept and sent by themselves."}</span>
+    </p>
+  );
+}
+
 /** The data stay readable while Longreed cannot be reached. */
 export function Offline({ asOf, onTryNow }: { asOf: string; onTryNow?: () => void }) {
   return (

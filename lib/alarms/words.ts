@@ -15,6 +15,11 @@ const TITLES: Readonly<Record<string, string>> = {
   measurement: "measuring is not possible",
 };
 
+/** The other title of a `return` limit: its control chart signals a steady move while the value itself may still be inside. */
+const MOVES_AWAY = "air reference moves away from its baseline";
+
+const movesAway = ({ kind, text }: Said): boolean => kind === "return" && text.includes("moves away from the baseline");
+
 /** The text without the place at its start: "South bench: could not fill …" → "could not fill …". */
 export function whatOf({ text }: Said): string {
   const colon = text.indexOf(": ");
@@ -23,7 +28,7 @@ export function whatOf({ text }: Said): string {
 
 /** What happened, in a few words for a head or a mail's subject: "could not fill Brine B-35". */
 export function titleOf(alarm: Said): string {
-  const known = TITLES[alarm.kind];
+  const known = movesAway(alarm) ? MOVES_AWAY : TITLES[alarm.kind];
   if (known) return known;
   if (alarm.kind.startsWith("task-")) return "a task cannot be done";
   return whatOf(alarm).split(": ", 1)[0];

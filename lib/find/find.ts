@@ -1,3 +1,4 @@
+import { campaignCode } from "@/lib/campaigns/code";
 import type { HoldReason } from "@/lib/campaigns/open-hold";
 import type { CampaignState } from "@/lib/campaigns/schema";
 import { stateWord } from "@/lib/campaigns/state-word";
@@ -83,7 +84,7 @@ const present = ({ kind, id, name, note, ownerId, state, holds, retired }: Found
 });
 
 const HREFS: Record<FoundKind, (id: string) => string> = {
-  campaign: (id) => `/campaigns/${id}`,
+  campaign: (id) => `/campaigns/${campaignCode(id)}`,
   sensor: (id) => `/sensors/${id}`,
   liquid: (id) => `/liquids/${id}`,
   lot: (id) => `/liquids/${id}`,

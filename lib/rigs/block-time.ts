@@ -52,13 +52,14 @@ export async function unblockTime({ by, now, windowId }: { by: Actor; now: Date;
 type BlockQuery = { rigId: string; now: Date; limit: number; cursor?: string };
 type BlockRow = { id: string; from: Date; to: Date; why: string; createdBy: string };
 
-/** Blocked times of a rig that have not passed, soonest first. @throws AppError 404 when there is no such rig. */
+/** Blocked times of a rig that have not passed by its own clock, soonest first. @throws AppError 404 when there is no such rig. */
 export async function findBlockedTimes({ rigId, now, limit, cursor }: BlockQuery): Promise<Page<BlockedTimeAnswer>> {
   const [from, id] = readCursor(cursor, z.tuple([time, idSchema])) ?? [null, null];
   const found = await rows<BlockRow>(
     `select w.id, lower(w.period) as "from", upper(w.period) as "to", w.why, p.name as "createdBy"
-       from maintenance_window w join person p on p.id = w.created_by
-      where w.rig_id = $1 and w.withdrawn_at is null and upper(w.period) > $2
+       from maintenance_window w join person p on p.id = w.created_by join rig on rig.id = w.rig_id
+      where w.rig_id = $1 and w.withdrawn_at is null
+        and upper(w.period) > case when rig.clock = 'simulated' then coalesce(rig.reported_clock, '-infinity') else $2 end
         and ($3::timestamptz is null or (lower(w.period), w.id) > ($3, $4::bigint))
       order by lower(w.period), w.id limit $5`,
     [rigId, now, from, id, limit + 1],

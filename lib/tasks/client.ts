@@ -1,7 +1,6 @@
 import { queryOptions } from "@tanstack/react-query";
 import { fetchJson } from "@/lib/http/fetch-json";
-import { wasteAnswer } from "@/lib/rigs/schema";
-import { taskAnswer, taskPage } from "@/lib/tasks/schema";
+import { taskPage } from "@/lib/tasks/schema";
 
 const LIVE_MS = 5000;
 
@@ -19,11 +18,3 @@ export const answeredTasksOptions = () =>
     queryFn: ({ signal }) => fetchJson("/api/tasks?state=answered&limit=50", { answer: taskPage, signal }),
     refetchInterval: 15_000,
   });
-
-export type Answer = { taskId: string; answer: "done" | "cannot"; note?: string };
-
-export const answerTask = ({ taskId, answer, note }: Answer) =>
-  fetchJson(`/api/tasks/${taskId}/answer`, { method: "POST", body: { answer, ...(note ? { note } : {}) }, answer: taskAnswer });
-
-/** Emptying the container answers the tasks that asked for it. */
-export const wasteEmptied = (rigId: string) => fetchJson(`/api/rigs/${rigId}/waste-emptied`, { method: "POST", answer: wasteAnswer });

@@ -51,6 +51,6 @@ function marginText({ openedAt, state, acknowledgedAt, returnedAt, shelvedUntil,
   if (state === "cleared" && clearedAt) return `${short(openedAt)} to ${short(clearedAt)}${clearedBy ? `, by ${clearedBy}` : ", by itself"}.`;
   if (shelvedUntil) return `${since}, back ${formatAgo(shelvedUntil, now)}.`;
   if (state === "returned" && returnedAt) return `${short(openedAt)} to ${short(returnedAt)}.`;
-  if (state === "acknowledged" && acknowledgedAt) return `${since}, taken ${short(acknowledgedAt)}. Not back within its limit.`;
+  if (state === "acknowledged" && acknowledgedAt) return `${since}, taken ${short(acknowledgedAt)}. Not over yet.`;
   return `${since}, for ${formatDuration((Date.parse(now) - Date.parse(openedAt)) / 1000)}.`;
 }

@@ -11,7 +11,7 @@ import { pastAlarmsOptions, type AlarmFilter } from "@/lib/alarms/client";
 import type { AlarmAnswer } from "@/lib/alarms/schema";
 import { titleOf } from "@/lib/alarms/words";
 import { campaignCode } from "@/lib/campaigns/code";
-import { capitalised } from "@/lib/format";
+import { capitalised, NO_VALUE } from "@/lib/format";
 import { formatDuration, formatRecent } from "@/lib/format-time";
 import { HowFar } from "./how-far";
 
@@ -59,7 +59,13 @@ const columnsAt = (now: string): readonly TableColumn<AlarmAnswer>[] => [
   { id: "what", head: "What", slot: "a", cell: (alarm) => <Link href={`/alarms/${alarm.id}`}>{capitalised(titleOf(alarm))}</Link> },
   { id: "where", head: "Where", slot: "c", cell: ({ rig, campaignId }) => `${rig}${campaignId ? `, ${campaignCode(campaignId)}` : ""}` },
   { id: "far", head: "How far", slot: "x", cell: (alarm) => <HowFar alarm={alarm} /> },
-  { id: "lasted", head: "Lasted", slot: "d", align: "right", cell: ({ openedAt, returnedAt, clearedAt }) => formatDuration((Date.parse(returnedAt ?? clearedAt ?? openedAt) - Date.parse(openedAt)) / 1000) },
+  { id: "lasted", head: "Lasted", slot: "d", align: "right", cell: lasted },
   { id: "who", head: "Who had it", slot: "x", cell: ({ acknowledgedBy }) => acknowledgedBy ?? <span className="text-ink3">nobody</span> },
   { id: "did", head: "What Longreed did", slot: "x", cell: ({ actionText }) => <span className="text-ink2">{actionText}</span> },
 ];
+
+/** Only its opening is known on the rig's own clock; where that is simulated, how long it lasted cannot be said. */
+function lasted({ openedAt, openedClock, returnedAt, clearedAt }: AlarmAnswer): string {
+  const end = returnedAt ?? clearedAt;
+  return openedClock || !end ? NO_VALUE : formatDuration((Date.parse(end) - Date.parse(openedAt)) / 1000);
+}

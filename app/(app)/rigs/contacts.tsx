@@ -12,7 +12,7 @@ export function Contacts({ name, counts }: { name: string; counts: readonly numb
   const heard = counts.reduce((sum, n) => sum + n, 0);
   const label = `${name} was heard ${formatCount(heard)} times in 24 hours; in ${silent} of ${counts.length} stretches of ten minutes not at all`;
   return (
-    <svg viewBox={`0 0 ${WIDTH} ${HEIGHT}`} width={WIDTH} height={HEIGHT} role="img" aria-label={label}>
+    <svg viewBox={`0 0 ${WIDTH} ${HEIGHT}`} width="100%" height={HEIGHT} preserveAspectRatio="none" role="img" aria-label={label}>
       <path d={d} stroke="var(--ink3)" strokeWidth="1.25" />
       <path d={`M0 20.5H${WIDTH}`} stroke="var(--rule2)" />
     </svg>

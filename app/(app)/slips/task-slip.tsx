@@ -1,18 +1,21 @@
 "use client";
 
-import { onlineManager, useMutation, useQueryClient } from "@tanstack/react-query";
-import { useState, type ReactNode } from "react";
-import { toast } from "sonner";
+import { useState } from "react";
 import { Button } from "@/components/ui/button";
 import { Slip } from "@/components/ui/slip";
-import { formatAgo, formatRecent, formatTime } from "@/lib/format-time";
-import { answerTask, wasteEmptied, type Answer } from "@/lib/tasks/client";
+import { useOfflineSince } from "@/components/ui/use-offline-since";
+import { formatAgo, formatRecent } from "@/lib/format-time";
+import type { KeptAnswer } from "@/lib/tasks/outbox";
 import type { TaskAnswer } from "@/lib/tasks/schema";
+import { useOutbox } from "../outbox/outbox-provider";
 import { CannotDialog } from "./cannot-dialog";
 import { LoadForTask } from "./load-for-task";
 import { MountForTask } from "./mount-for-task";
+import { SendingSlip } from "./sending-slip";
+import { headOf, restOf } from "./task-words";
+import { useAtHand } from "./use-at-hand";
 
-type TaskSlipProps = { task: TaskAnswer; now: string; may: boolean; inHand?: boolean };
+type TaskSlipProps = { task: TaskAnswer; now: string; may: boolean; inHand?: boolean; /** Puts it off; the slip has no such verb without it. */ onLater?: () => void };
 
 const VERBS: Readonly<Record<TaskAnswer["kind"], string>> = {
   ask: "Done",
@@ -24,45 +27,30 @@ const VERBS: Readonly<Record<TaskAnswer["kind"], string>> = {
   mount: "Mounted",
 };
 
-/** A task with its verbs. An answer given without a network is kept, and goes out by itself when there is one. */
-export function TaskSlip({ task, now, may, inHand }: TaskSlipProps) {
+/** A task with its verbs. An answer is kept on this device until it is out, with or without a network. */
+export function TaskSlip({ task, now, may, inHand, onLater }: TaskSlipProps) {
   const [asks, setAsks] = useState<"cannot" | "load" | "mount">();
-  const [given, setGiven] = useState<{ verb: string; at: string }>();
-  const queries = useQueryClient();
-  const refresh = () => Promise.all(["tasks", "today", "rigs", "campaigns", "alarms"].map((key) => queries.invalidateQueries({ queryKey: [key] })));
-  const send = useMutation({
-    mutationFn: async (answer: Omit<Answer, "taskId">) => {
-      if (task.kind === "waste" && answer.answer === "done") await wasteEmptied(task.rigId);
-      else await answerTask({ taskId: task.id, ...answer });
-    },
-    retry: (failures, error) => failures < 5 && "status" in error && error.status === 0,
-    onSuccess: (_, { answer }) => {
-      toast(answer === "done" ? `Done: ${headOf(task)}` : "Told as an alarm; the campaign waits.");
-      return refresh();
-    },
-    onError: () => setGiven(undefined),
-  });
-  const answer = (said: Omit<Answer, "taskId">, verb: string) => {
-    setGiven({ verb, at: new Date().toISOString() });
-    send.mutate(said);
+  const { items, give, takeBack } = useOutbox();
+  const isOffline = useOfflineSince() !== undefined;
+  useAtHand(may ? task : undefined);
+  const kept = items.find(({ taskId }) => taskId === task.id);
+  const waits = kept !== undefined && kept.refusal === undefined;
+  const close = () => setAsks(undefined);
+
+  const keep = (verb: string, call: Pick<KeptAnswer, "path" | "body"> & { key?: string }) => {
+    close();
+    give({ ...call, taskId: task.id, verb, title: headOf(task), timeZone: task.timeZone });
   };
+  const answer = (said: "done" | "cannot", note?: string) =>
+    keep(said === "cannot" ? "Cannot" : VERBS[task.kind], { path: `/api/tasks/${task.id}/answer`, body: { answer: said, ...(note && { note }) } });
   const done = () => {
     if (task.kind === "load" && task.port !== undefined) setAsks("load");
     else if (task.kind === "mount" && task.sensorId) setAsks("mount");
-    else answer({ answer: "done" }, VERBS[task.kind]);
-  };
-  const close = () => {
-    setAsks(undefined);
-    void refresh();
+    else if (task.kind === "waste") keep(VERBS.waste, { path: `/api/rigs/${task.rigId}/waste-emptied`, body: {} });
+    else answer("done");
   };
 
-  if (given && send.isPaused && !onlineManager.isOnline()) {
-    return (
-      <Slip kind="sending" when={`Answered ${formatTime(given.at, task.timeZone)}`} status="Sending" title={headOf(task)} actions={<Button look="link" onClick={() => { send.reset(); setGiven(undefined); }}>Take it back</Button>}>
-        <p>You said <b>{given.verb}</b>. It waits on this page and goes out when there is a network again.</p>
-      </Slip>
-    );
-  }
+  if (waits && (isOffline || kept.tries > 0)) return <SendingSlip kept={kept} onTakeBack={() => takeBack(kept.key)} />;
   return (
     <Slip
       inHand={inHand || asks !== undefined}
@@ -72,43 +60,22 @@ export function TaskSlip({ task, now, may, inHand }: TaskSlipProps) {
       actions={
         may && (
           <>
-            <Button look="primary" busy={send.isPending} onClick={done}>{VERBS[task.kind]}</Button>
-            <Button busy={send.isPending} onClick={() => setAsks("cannot")}>Cannot</Button>
+            <Button look="primary" busy={waits} onClick={done}>{VERBS[task.kind]}</Button>
+            <Button busy={waits} onClick={() => setAsks("cannot")}>Cannot</Button>
+            {onLater && <Button look="link" onClick={onLater}>Later</Button>}
           </>
         )
       }
     >
       <p>{restOf(task)}</p>
-      {send.error && <p role="alert" className="font-medium">{send.error.message}</p>}
-      {asks === "cannot" && (
-        <CannotDialog
-          title={headOf(task)}
-          holds={task.holds}
-          onClose={() => setAsks(undefined)}
-          onCannot={(note) => {
-            setAsks(undefined);
-            answer({ answer: "cannot", note }, "Cannot");
-          }}
-        />
-      )}
-      {asks === "load" && task.port !== undefined && <LoadForTask rigId={task.rigId} port={task.port} onClose={close} />}
-      {asks === "mount" && task.sensorId && <MountForTask sensorId={task.sensorId} rigId={task.rigId} onClose={close} />}
+      {kept?.refusal && <p role="alert" className="font-medium">It was not taken: {kept.refusal}</p>}
+      {asks === "cannot" && <CannotDialog title={headOf(task)} holds={task.holds} onClose={close} onCannot={(note) => answer("cannot", note)} />}
+      {asks === "load" && task.port !== undefined && <LoadForTask rigId={task.rigId} port={task.port} onClose={close} onKeep={(call) => keep(VERBS.load, call)} />}
+      {asks === "mount" && task.sensorId && <MountForTask sensorId={task.sensorId} rigId={task.rigId} onClose={close} onKeep={(call) => keep(VERBS.mount, call)} />}
     </Slip>
   );
 }
 
-/** The first sentence, with the rig where it does not name it. */
-function headOf({ instruction, rig }: TaskAnswer): string {
-  const head = instruction.split(/(?<=\.)\s|: /, 1)[0].replace(/\.$/, "");
-  return head.includes(rig) ? head : `${head}, ${rig}`;
-}
-
-function restOf({ instruction, campaign, holds }: TaskAnswer): ReactNode {
-  const head = instruction.split(/(?<=\.)\s|: /, 1)[0];
-  const rest = instruction.slice(head.length).replace(/^[:.\s]+/, "");
-  const said = rest && `${rest.charAt(0).toUpperCase()}${rest.slice(1)}`;
-  return [said, campaign && (holds ? `${campaign} waits for it.` : `For ${campaign}.`)].filter(Boolean).join(" ");
-}
 
 function whenOf({ dueAt, createdAt, timeZone, holds }: TaskAnswer, now: string): string {
   if (dueAt) return formatRecent(dueAt, timeZone, now).replace(/ (?=[\d:]+$)/, " by ");

@@ -7,6 +7,7 @@ import { useState } from "react";
 import { Button } from "@/components/ui/button";
 import { TextField } from "@/components/ui/field";
 import type { DemoAccount } from "@/lib/people/demo-accounts";
+import { firstPage } from "../landing";
 
 type Props = { next: string; demo?: { password: string; accounts: readonly DemoAccount[] } };
 
@@ -24,7 +25,7 @@ export function SignInForm({ next, demo }: Props) {
       setBusy(false);
       return;
     }
-    router.replace(next);
+    router.replace(await firstPage(next));
     router.refresh();
   }
 

@@ -29,7 +29,7 @@ test("a campaign is found by its number, before anything that only holds the dig
   await buildSensor({ serial: `X-${campaign.id}-C` });
   for (const q of [`C-${campaign.id}`, `c-${campaign.id}`, campaign.id]) {
     const { items } = await find({ by, q, limit: 10 });
-    expect(items[0], q).toMatchObject({ kind: "campaign", id: campaign.id, name: "Slow ageing in brine", href: `/campaigns/${campaign.id}` });
+    expect(items[0], q).toMatchObject({ kind: "campaign", id: campaign.id, name: "Slow ageing in brine", href: `/campaigns/C-${campaign.id}` });
   }
 });
 

@@ -26,3 +26,15 @@ test("a time that ends before it begins is 422, and an operator blocks nothing",
   const operator = await actor("operator");
   await expect(blockTime({ by: operator, now, rigId, from: hours(1), to: hours(2), why: "x" })).rejects.toMatchObject({ status: 403 });
 });
+
+test("what has passed is judged by the rig's own clock, and nothing has before a simulated one was told", async () => {
+  const by = await actor("administrator");
+  const behind = await buildRig({ clock: "simulated", reportedClock: hours(-100) });
+  await blockTime({ by, now, rigId: behind.id, from: hours(-90), to: hours(-80), why: "still to come there" });
+  await blockTime({ by, now, rigId: behind.id, from: hours(-120), to: hours(-110), why: "over there" });
+  const silent = await buildRig({ clock: "simulated" });
+  await blockTime({ by, now, rigId: silent.id, from: hours(-90), to: hours(-80), why: "some day" });
+  const whys = async (rigId: string) => (await findBlockedTimes({ rigId, now, limit: 50 })).items.map(({ why }) => why);
+  expect(await whys(behind.id)).toEqual(["still to come there"]);
+  expect(await whys(silent.id)).toEqual(["some day"]);
+});

@@ -15,6 +15,12 @@ describe("title and detail", () => {
     expect(detailOf(reference)).toBe("Air reference: f0 is −72 ppm from the baseline, limit ± 60 ppm.");
   });
 
+  test("a steady move towards the limit is named as such, since the value is still inside it", () => {
+    const moving = { kind: "return", text: "WR-2207 on North bench, cycle 9: air reference: f0 moves away from the baseline steadily (EWMA signal), now −18 ppm, limit ± 60 ppm" };
+    expect(titleOf(moving)).toBe("air reference moves away from its baseline");
+    expect(detailOf(moving)).toBe("Air reference: f0 moves away from the baseline steadily (EWMA signal), now −18 ppm, limit ± 60 ppm.");
+  });
+
   test("a task that cannot be done ends with what the person said", () => {
     const task = { kind: "task-7", text: "Loft bench: J. Pellick cannot do “Load port 2”: “no lot in the store”" };
     expect(titleOf(task)).toBe("a task cannot be done");

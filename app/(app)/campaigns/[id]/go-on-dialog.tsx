@@ -39,11 +39,21 @@ export function GoOnDialog({ campaign, onClose }: { campaign: CampaignAnswer; on
   );
 }
 
-function wordsOf({ step, cycle }: CampaignAnswer): Record<From, { name: string; means: string }> {
+function wordsOf({ step, cycle, parking }: CampaignAnswer): Record<From, { name: string; means: string }> {
   const stored = step?.kind === "measure" ? step.stored : 0;
   return {
     here: { name: "Here", means: step?.repeats && stored < step.repeats ? `Goes on with repeat ${formatCount(stored + 1)} of ${formatCount(step.repeats)}.` : "Goes on with the next step." },
-    phase: { name: "This phase", means: `Measures the phase again from its beginning${stored > 0 ? `; its ${formatCount(stored)} repeats stay beside` : ""}.` },
+    phase: !step || step.kind === "measure" ? phaseWords(stored) : stepWords(step, parking),
     cycle: { name: "This cycle", means: cycle > 0 ? `Begins cycle ${formatCount(cycle)} again, with its reference.` : "Begins the cycle again." },
   };
 }
+
+const phaseWords = (stored: number) => ({
+  name: "This phase",
+  means: `Measures the phase again from its beginning${stored > 0 ? `; its ${formatCount(stored)} repeats stay beside` : ""}.`,
+});
+
+const stepWords = ({ label, state }: NonNullable<CampaignAnswer["step"]>, parking: CampaignAnswer["parking"]) => ({
+  name: "This step",
+  means: state === "done" && parking === "none" ? `“${label}” is done: goes on with the next step.` : `Makes “${label}” again, with the cell as it needs it.`,
+});

@@ -3,6 +3,7 @@
 import { useMutation, useQueryClient } from "@tanstack/react-query";
 import { useRouter } from "next/navigation";
 import { useRef } from "react";
+import { campaignCode } from "@/lib/campaigns/code";
 import { queueDraft, saveDraft } from "@/lib/campaigns/draft-client";
 import type { CampaignInput } from "@/lib/campaigns/draft-schema";
 
@@ -24,7 +25,7 @@ export function useQueue(keptId?: string) {
   };
   const queueing = useMutation({
     mutationFn: async ({ draft, acknowledgements }: ToQueue) => queueDraft(await save(draft), acknowledgements),
-    onSuccess: ({ id }) => arrive(`/campaigns/${id}`),
+    onSuccess: ({ id }) => arrive(`/campaigns/${campaignCode(id)}`),
     onError: () => queries.invalidateQueries({ queryKey: ["campaigns", "check"] }),
   });
   const keeping = useMutation({ mutationFn: save, onSuccess: () => arrive("/campaigns") });

@@ -57,8 +57,8 @@ export function BlockedTimes({ rig, role }: { rig: RigAnswer; role: Role }) {
       </ul>
       {mayBlock && (
         <form className="mt-3 flex flex-wrap items-end gap-3" onSubmit={submit}>
-          <TextField type="datetime-local" label="From" {...field("from")} />
-          <TextField type="datetime-local" label="To" {...field("to")} />
+          <TextField type="datetime-local" label="From" hint="In the rig’s time" {...field("from")} />
+          <TextField type="datetime-local" label="To" hint="In the rig’s time" {...field("to")} />
           <TextField className="min-w-[14em] flex-1" label="Why" {...field("why")} />
           <Button type="submit" busy={block.isPending} notPossible={complete ? null : "it needs a beginning, an end and a reason"}>Block time</Button>
         </form>

@@ -2,38 +2,50 @@
 
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useMutation, useQuery, useQueryClient } from "@tanstack/react-query";
+import { useRef } from "react";
 import { useForm, useWatch } from "react-hook-form";
 import type { z } from "zod";
 import { asNumber } from "@/components/ui/as-number";
 import { Button } from "@/components/ui/button";
 import { Dialog } from "@/components/ui/dialog";
-import { NumberField, Option, OptionGroup, SelectField } from "@/components/ui/field";
+import { NumberField, Option, OptionGroup } from "@/components/ui/field";
 import { showProblem } from "@/components/ui/show-problem";
 import { Loading, Problem } from "@/components/ui/states";
 import { fetchJson, ProblemError } from "@/lib/http/fetch-json";
 import { lotsOptions } from "@/lib/liquids/client";
 import { loadBody, type PortAnswer, type RigAnswer } from "@/lib/rigs/schema";
 import { created } from "@/lib/schema";
+import type { Unsent } from "../../outbox/unsent";
+import { LotField } from "./lot-field";
 
 type Values = z.input<typeof loadBody>;
 
+type LoadDialogProps = { rig: RigAnswer; port: PortAnswer; onClose: () => void; /** Takes what nothing answered, to send it later. */ onKeep?: (unsent: Unsent) => void };
+
 /** Records a bottle on a port; another lot of the same liquid in mid-campaign is asked for once more. */
-export function LoadDialog({ rig, port, onClose }: { rig: RigAnswer; port: PortAnswer; onClose: () => void }) {
+export function LoadDialog({ rig, port, onClose, onKeep }: LoadDialogProps) {
   const { data: lots, error: lotsError, refetch } = useQuery(lotsOptions());
   const queries = useQueryClient();
-  const { register, handleSubmit, setError, control, formState } = useForm<Values>({
+  const { register, handleSubmit, setError, setValue, control, formState } = useForm<Values>({
     resolver: zodResolver(loadBody),
     defaultValues: { port: port.number, how: "replace", lotId: port.bottle?.lotId ?? "" },
   });
   const { errors } = formState;
   const how = useWatch({ control, name: "how" });
+  const key = useRef(crypto.randomUUID());
+  const path = `/api/rigs/${rig.id}/loads`;
   const save = useMutation({
-    mutationFn: (load: Values) => fetchJson(`/api/rigs/${rig.id}/loads`, { method: "POST", body: load, answer: created }),
+    networkMode: "always",
+    mutationFn: (load: Values) => fetchJson(path, { method: "POST", body: load, answer: created, idempotencyKey: key.current }),
     onSuccess: async () => {
-      await queries.invalidateQueries({ queryKey: ["rigs"] });
+      await Promise.all(["rigs", "tasks", "today", "campaigns"].map((name) => queries.invalidateQueries({ queryKey: [name] })));
       onClose();
     },
-    onError: (error) => showProblem(error, setError),
+    onError: (error, load) => {
+      if (onKeep && error instanceof ProblemError && error.code === "offline") return onKeep({ path, body: load, key: key.current });
+      key.current = crypto.randomUUID();
+      showProblem(error, setError);
+    },
   });
   const asksForAnotherLot = save.error instanceof ProblemError && save.error.code === "other-lot";
   const submit = (confirm: boolean) => handleSubmit((load) => save.mutate(confirm ? { ...load, confirm } : load));
@@ -48,10 +60,7 @@ export function LoadDialog({ rig, port, onClose }: { rig: RigAnswer; port: PortA
             <Option type="radio" value="replace" {...register("how")}>A new bottle was put on</Option>
             {port.bottle && <Option type="radio" value="topUp" note="same lot only" {...register("how")}>The bottle was topped up</Option>}
           </OptionGroup>
-          <SelectField label="Lot" error={errors.lotId?.message} {...register("lotId")}>
-            <option value="">Choose a lot</option>
-            {lots.items.map(({ id, code, liquidName }) => <option key={id} value={id}>{code}, {liquidName}</option>)}
-          </SelectField>
+          <LotField lots={lots.items} bottle={port.bottle} timeZone={rig.timeZone} error={errors.lotId && "Give the lot on the bottle"} onChange={(lotId) => setValue("lotId", lotId, { shouldValidate: formState.isSubmitted })} />
           <NumberField label={how === "topUp" ? "Volume added" : "Volume in the bottle"} hint="mL" error={errors.volumeMl?.message} {...register("volumeMl", asNumber)} />
           {errors.root && <p role="alert" className="font-medium">{errors.root.message}</p>}
           <div className="buttons">

@@ -2,6 +2,7 @@
 
 import { zodResolver } from "@hookform/resolvers/zod";
 import { useInfiniteQuery, useMutation, useQueryClient } from "@tanstack/react-query";
+import { useRef } from "react";
 import { useForm, useWatch } from "react-hook-form";
 import type { z } from "zod";
 import { asNumber, orNothing } from "@/components/ui/as-number";
@@ -10,17 +11,20 @@ import { Dialog } from "@/components/ui/dialog";
 import { NumberField, SelectField, TextAreaField } from "@/components/ui/field";
 import { showProblem } from "@/components/ui/show-problem";
 import { Loading, Problem } from "@/components/ui/states";
-import { fetchJson } from "@/lib/http/fetch-json";
+import { fetchJson, ProblemError } from "@/lib/http/fetch-json";
 import { mountBody } from "@/lib/mounts/schema";
 import { rigsOptions } from "@/lib/rigs/client";
 import { created } from "@/lib/schema";
 import type { SensorAnswer } from "@/lib/sensors/schema";
+import type { Unsent } from "../../outbox/unsent";
 
 type Values = z.input<typeof mountBody>;
 type Mount = z.output<typeof mountBody>;
 
+type MountDialogProps = { sensor: SensorAnswer; rigId?: string; onClose: () => void; /** Takes what nothing answered, to send it later. */ onKeep?: (unsent: Unsent) => void };
+
 /** Records that the sensor was clamped in a rig just now. */
-export function MountDialog({ sensor, rigId: wanted, onClose }: { sensor: SensorAnswer; rigId?: string; onClose: () => void }) {
+export function MountDialog({ sensor, rigId: wanted, onClose, onKeep }: MountDialogProps) {
   const rigs = useInfiniteQuery(rigsOptions());
   const queries = useQueryClient();
   const { register, handleSubmit, setError, control, formState } = useForm<Values, unknown, Mount>({
@@ -29,13 +33,20 @@ export function MountDialog({ sensor, rigId: wanted, onClose }: { sensor: Sensor
   });
   const { errors } = formState;
   const rigId = useWatch({ control, name: "rigId" });
+  const key = useRef(crypto.randomUUID());
+  const path = `/api/sensors/${sensor.id}/mounts`;
   const save = useMutation({
-    mutationFn: (mount: Mount) => fetchJson(`/api/sensors/${sensor.id}/mounts`, { method: "POST", body: mount, answer: created }),
+    networkMode: "always",
+    mutationFn: (mount: Mount) => fetchJson(path, { method: "POST", body: mount, answer: created, idempotencyKey: key.current }),
     onSuccess: async () => {
-      await Promise.all([queries.invalidateQueries({ queryKey: ["sensors"] }), queries.invalidateQueries({ queryKey: ["rigs"] })]);
+      await Promise.all(["sensors", "rigs", "tasks", "today", "campaigns"].map((name) => queries.invalidateQueries({ queryKey: [name] })));
       onClose();
     },
-    onError: (error) => showProblem(error, setError),
+    onError: (error, mount) => {
+      if (onKeep && error instanceof ProblemError && error.code === "offline") return onKeep({ path, body: mount, key: key.current });
+      key.current = crypto.randomUUID();
+      showProblem(error, setError);
+    },
   });
   return (
     <Dialog open onOpenChange={(open) => !open && onClose()} title={`Mount ${sensor.serial}`} description={consequence(sensor, rigId)}>
