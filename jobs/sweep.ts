@@ -2,6 +2,7 @@ import { watchSilence } from "@/lib/alarms/silence";
 import { watchAlarms } from "@/lib/alarms/watch-alarms";
 import { advanceCampaign } from "@/lib/campaigns/advance";
 import { findCampaignsToAdvance } from "@/lib/campaigns/to-advance";
+import { fillLevels } from "@/lib/phases/fill-levels";
 import { fitLeftovers } from "@/lib/readings/fit-leftovers";
 import { tidyUp } from "@/lib/tidy-up";
 
@@ -21,6 +22,7 @@ export async function sweep(): Promise<void> {
 
   for (const campaignId of await findCampaignsToAdvance({ now })) await each(advanceCampaign({ campaignId, now: new Date() }));
   await each(fitLeftovers({ now }));
+  await each(fillLevels());
   await each(watchSilence({ now, listeningSince }));
   await each(watchAlarms({ now }));
   await each(tidyUp({ now }));

@@ -21,6 +21,10 @@ export class PhaseSummary extends Model<InferAttributes<PhaseSummary>, InferCrea
   declare flagCounts: CreationOptional<Record<string, number>>;
   declare columns: Buffer;
   declare madeAt: Date;
+  declare digest: CreationOptional<Buffer | null>;
+  declare earliestAt: CreationOptional<Date | null>;
+  declare latestAt: CreationOptional<Date | null>;
+  declare course: CreationOptional<(number | null)[] | null>;
 }
 
 PhaseSummary.init(
@@ -44,6 +48,10 @@ PhaseSummary.init(
     flagCounts: { type: DataTypes.JSONB, allowNull: false, defaultValue: {} },
     columns: { type: DataTypes.BLOB, allowNull: false },
     madeAt: { type: DataTypes.DATE, allowNull: false },
+    digest: { type: DataTypes.BLOB },
+    earliestAt: { type: DataTypes.DATE },
+    latestAt: { type: DataTypes.DATE },
+    course: { type: DataTypes.ARRAY(DataTypes.DOUBLE) },
   },
   { sequelize, modelName: "PhaseSummary", tableName: "phase_summary" },
 );

@@ -1,4 +1,6 @@
-export type Run<Key> = { key: Key; at: Float64Array; values: Float64Array };
+import { countOf, merge, mergeAll, type Buckets } from "@/lib/phases/buckets";
+
+export type Run<Key> = { key: Key; buckets: Buckets };
 
 export type Bucket<Key> = { key: Key; from: number; to: number; min: number; max: number; mean: number; n: number };
 
@@ -7,33 +9,25 @@ export type Bucket<Key> = { key: Key; from: number; to: number; min: number; max
  * stays within one run while there are no more runs than buckets; beyond that neighbouring runs share one. A bucket of
  * several runs carries the key of its first.
  *
- * @param runs Times rising within a run, values finite, no run empty.
+ * @param runs Times rising within a run, values finite, no run empty; single values, or buckets of several already.
  * @param most A whole number ≥ 1.
  */
 export function bucketRuns<Key>(runs: readonly Run<Key>[], most: number): Bucket<Key>[] {
   if (!Number.isInteger(most) || most < 1) throw new RangeError(`most must be a whole number ≥ 1, got ${most}`);
   if (runs.length > most) return bucketAcross(runs, most);
 
-  const size = smallestSize(runs, most);
-  return runs.flatMap((run) => {
-    const pieces = Math.ceil(run.at.length / size);
-    return Array.from({ length: pieces }, (_, piece) => {
-      const bucket = emptyBucket(run.key);
-      const from = Math.floor((piece * run.at.length) / pieces);
-      const to = Math.floor(((piece + 1) * run.at.length) / pieces);
-      for (let i = from; i < to; i++) add(bucket, run.at[i], run.values[i]);
-      return bucket;
-    });
-  });
+  const counts = runs.map(({ buckets }) => countOf(buckets));
+  const size = smallestSize(counts, most);
+  return runs.flatMap(({ key, buckets }, i) => listed(key, merge(buckets, Math.ceil(counts[i] / size))));
 }
 
-/** The fewest values a bucket can have so that all runs together need no more than `most`. */
-function smallestSize<Key>(runs: readonly Run<Key>[], most: number): number {
+/** The fewest values a bucket can have so that runs of so many values together need no more than `most`; 1 without runs. */
+export function smallestSize(counts: readonly number[], most: number): number {
   let low = 1;
-  let high = runs.reduce((longest, { at }) => Math.max(longest, at.length), 1);
+  let high = counts.reduce((longest, count) => Math.max(longest, count), 1);
   while (low < high) {
     const middle = Math.floor((low + high) / 2);
-    const needed = runs.reduce((sum, { at }) => sum + Math.ceil(at.length / middle), 0);
+    const needed = counts.reduce((sum, count) => sum + Math.ceil(count / middle), 0);
     if (needed <= most) high = middle;
     else low = middle + 1;
   }
@@ -44,19 +38,9 @@ function bucketAcross<Key>(runs: readonly Run<Key>[], most: number): Bucket<Key>
   return Array.from({ length: most }, (_, piece) => {
     const from = Math.floor((piece * runs.length) / most);
     const to = Math.floor(((piece + 1) * runs.length) / most);
-    const bucket = emptyBucket(runs[from].key);
-    for (const run of runs.slice(from, to)) for (let i = 0; i < run.at.length; i++) add(bucket, run.at[i], run.values[i]);
-    return bucket;
-  });
+    return listed(runs[from].key, mergeAll(runs.slice(from, to).map(({ buckets }) => buckets)));
+  }).flat();
 }
 
-const emptyBucket = <Key>(key: Key): Bucket<Key> => ({ key, from: Infinity, to: -Infinity, min: Infinity, max: -Infinity, mean: 0, n: 0 });
-
-function add<Key>(bucket: Bucket<Key>, at: number, value: number): void {
-  bucket.n++;
-  bucket.mean += (value - bucket.mean) / bucket.n;
-  if (at < bucket.from) bucket.from = at;
-  if (at > bucket.to) bucket.to = at;
-  if (value < bucket.min) bucket.min = value;
-  if (value > bucket.max) bucket.max = value;
-}
+const listed = <Key>(key: Key, { from, to, min, max, mean, count }: Buckets): Bucket<Key>[] =>
+  Array.from(count, (n, i) => ({ key, from: from[i], to: to[i], min: min[i], max: max[i], mean: mean[i], n }));

@@ -1,30 +1,48 @@
+import { heavy, type StabilityInput } from "@/lib/analysis/heavy";
+import { loadRepeats } from "@/lib/analysis/load-repeats";
+import { offLoop } from "@/lib/analysis/off-loop";
+import { resultOf } from "@/lib/analysis/results";
 import type { StabilityAnswer, StabilityQuery } from "@/lib/analysis/schema";
-import { findFitRun, loadColumns, selectPhases, type SelectedPhase } from "@/lib/analysis/select-phases";
+import { findFitRun, selectPhases, type SelectedPhase } from "@/lib/analysis/select-phases";
 import { impossible } from "@/lib/errors";
-import { stabilityCurve } from "@/lib/numerics/stability/stability-curve";
-import { stretches } from "@/lib/numerics/stability/stretches";
 
 const nothing = (unit: string, used: string): StabilityAnswer => ({ tau0S: null, unit, reference: null, points: [], used });
 
-type Series = { atS: Float64Array; values: Float64Array; leftOut: Uint8Array; used: string };
+type Series = Pick<StabilityInput, "atS" | "values" | "leftOut"> & { used: string };
 
-/** Stability of f0 or Q, over repeats within phases or over phase values from cycle to cycle. */
-export async function readStability(campaignId: string, query: StabilityQuery): Promise<StabilityAnswer> {
-  const { quantity, statistic, view, taus, confidence, normalise } = query;
+/** Values times averaging factors that are done in a few milliseconds here; more go to another process. */
+const MOST_HERE = 300_000;
+
+/**
+ * Stability of f0 or Q, over repeats within phases or over phase values from cycle to cycle. The phase under way comes in when
+ * it closes, unless it is the only one: an answer then stands, and is kept, until the next phase closes.
+ */
+export async function readStability(campaignId: string, query: StabilityQuery, { background = false } = {}): Promise<StabilityAnswer> {
+  const { quantity, view, normalise } = query;
   const unit = normalise === "fractional" ? "1" : quantity === "f0" ? "Hz" : "1";
   const fitRunId = await findFitRun(campaignId, query.fitRunId);
   if (!fitRunId) return nothing(unit, "Nothing has been measured yet");
   const phases = oneSetPoint(await selectPhases(campaignId, fitRunId, { ...query, medium: query.medium ?? "air" }), query.setPointC);
-  const series = view === "within" ? await repeats(phases, fitRunId, quantity) : phaseValues(phases, quantity);
+  const closed = phases.filter((phase) => phase.closed);
 
-  const counted = series.values.filter((_, i) => !series.leftOut[i]);
-  if (counted.length < 3) return nothing(unit, `${series.used}; at least three values are needed`);
-  const reference = counted.reduce((sum, value) => sum + value, 0) / counted.length;
-  const y = series.values.map((value) => (normalise === "fractional" ? value / reference - 1 : value - reference));
-  const split = stretches({ atS: series.atS, y, leftOut: series.leftOut });
-  const { points } = stabilityCurve({ stretches: split.stretches, tau0S: split.tau0S, statistic, taus, confidence });
-  const holes = split.stretches.length === 1 ? "in one stretch" : `in ${split.stretches.length} stretches; no term reaches across a hole`;
-  return { tau0S: split.tau0S, unit, reference, points, used: `${series.used}, ${holes}` };
+  const compute = async (from: readonly SelectedPhase[]): Promise<StabilityAnswer> => {
+    const series = view === "within" ? await repeats(from, fitRunId, quantity) : phaseValues(from, quantity);
+    const { used } = series;
+    const curve = await curveOf(series, query);
+    if (!curve) return nothing(unit, `${used}; at least three values are needed`);
+    const { tau0S, reference, points, stretches } = curve;
+    const holes = stretches === 1 ? "in one stretch" : `in ${stretches} stretches; no term reaches across a hole`;
+    return { tau0S, unit, reference, points, used: `${used}, ${holes}` };
+  };
+  if (closed.length === 0) return compute(phases);
+  return resultOf({ campaignId, question: { kind: "stability", query }, fitRunId, phases: closed, background, compute: () => compute(closed) });
+}
+
+function curveOf({ used: _used, ...series }: Series, { statistic, taus, confidence, normalise }: StabilityQuery) {
+  const input = { ...series, normalise, statistic, taus, confidence };
+  const n = series.values.length;
+  const factors = taus === "all" ? Math.min(n / 2, 2000) : Math.log2(n + 1);
+  return n * factors <= MOST_HERE ? heavy.stability(input) : offLoop("stability", input);
 }
 
 /** A series belongs to one set-point; with several in the selection the question has to name one. */
@@ -40,25 +58,27 @@ function oneSetPoint(phases: readonly SelectedPhase[], setPointC: number | undef
 }
 
 async function repeats(phases: readonly SelectedPhase[], fitRunId: string, quantity: "f0" | "q"): Promise<Series> {
-  const columns = await loadColumns(phases, fitRunId);
-  const n = phases.reduce((sum, { phaseId }) => sum + (columns.get(phaseId)?.n ?? 0), 0);
+  const parts = [];
+  let n = 0;
+  for await (const { repeats: part } of loadRepeats(phases, { fitRunId, quantity })) {
+    parts.push(part);
+    n += part.n;
+  }
   const atS = new Float64Array(n);
   const values = new Float64Array(n);
   const leftOut = new Uint8Array(n);
   let i = 0;
+  let out = 0;
   let latest = -Infinity;
-  for (const { phaseId } of phases) {
-    const phase = columns.get(phaseId);
-    if (!phase) continue;
-    const of = quantity === "f0" ? phase.f0Hz : phase.q;
-    for (let j = 0; j < phase.n; j++, i++) {
-      latest = Math.max(latest, phase.at[j] / 1000);
+  for (const part of parts) {
+    values.set(part.values, i);
+    for (let j = 0; j < part.n; j++, i++) {
+      latest = Math.max(latest, part.at[j] / 1000);
       atS[i] = latest;
-      values[i] = of[j];
-      leftOut[i] = phase.leftOut[j] || !Number.isFinite(of[j]) ? 1 : 0;
+      leftOut[i] = part.leftOut[j] || !Number.isFinite(part.values[j]) ? 1 : 0;
+      out += leftOut[i];
     }
   }
-  const out = leftOut.reduce((sum, mark) => sum + mark, 0);
   return { atS, values, leftOut, used: `${n - out} repeats of ${phases.length} phases${out > 0 ? `, ${out} left out` : ""}` };
 }
 

@@ -1,7 +1,9 @@
 import type { Transaction } from "sequelize";
 import { change, row, rows } from "@/lib/db";
+import { notify } from "@/lib/notify";
 import { columnsOf, encodeColumns, type PhaseColumns, type Repeat } from "@/lib/phases/columns";
 import { markLeftOut, summarise, type PhaseSummaryValues } from "@/lib/phases/summarise";
+import { writeLevels } from "@/lib/phases/write-levels";
 
 export type ClosedPhase = {
   phaseId: string;
@@ -31,7 +33,7 @@ const PHASE = `
          s.state in ('skipped', 'failed') as "givenUp",
          coalesce(jsonb_path_query_first(v.definition, '$.** ? (@.id == $$block).sweep.centre', jsonb_build_object('block', s.block_id)) = '"track"', false) as tracked
     from phase p join step s on s.id = p.step_id join protocol_version v on v.id = s.protocol_version_id
-    join fit_run r on r.campaign_id = p.campaign_id and r.current
+    join fit_run r on r.campaign_id = p.campaign_id and case when $2::bigint is null then r.current else r.id = $2 end
    where p.step_id = $1`;
 
 /** Brings the summary of a phase that has closed up to date, after late readings or exclusions. Decides nothing anew. */
@@ -40,11 +42,22 @@ export async function refreshPhase(transaction: Transaction, { stepId, now }: { 
   if (closed) await closePhase(transaction, { stepId, now });
 }
 
+/** The same in every fit run that has a summary of the phase. */
+export async function refreshPhaseInEveryRun(transaction: Transaction, { stepId, now }: { stepId: string; now: Date }): Promise<void> {
+  const runs = await rows<{ fitRunId: string }>(
+    `select s.fit_run_id as "fitRunId" from phase p join phase_summary s on s.phase_id = p.id where p.step_id = $1 and p.closed_at is not null
+      order by s.fit_run_id for no key update of p`,
+    [stepId],
+    transaction,
+  );
+  for (const { fitRunId } of runs) await closePhase(transaction, { stepId, fitRunId, now });
+}
+
 /**
- * Makes the summary of a step's phase from its fits in the current run. Undefined for a step without a phase (`find`). All readings have to be fitted before.
+ * Makes the summary of a step's phase from its fits in the named run, else the current. Undefined for a step without a phase (`find`). All readings have to be fitted before.
  */
-export async function closePhase(transaction: Transaction, { stepId, now }: { stepId: string; now: Date }): Promise<ClosedPhase | undefined> {
-  const phase = await row<PhaseRow>(PHASE, [stepId], transaction);
+export async function closePhase(transaction: Transaction, { stepId, fitRunId, now }: { stepId: string; fitRunId?: string; now: Date }): Promise<ClosedPhase | undefined> {
+  const phase = await row<PhaseRow>(PHASE, [stepId, fitRunId ?? null], transaction);
   if (!phase) return undefined;
   const { columns, pressurePa } = await readColumns(transaction, phase);
   const excluded = await rows<{ idx: number }>(`select idx from exclusion where step_id = $1 and undone_at is null`, [stepId], transaction);
@@ -92,7 +105,7 @@ async function medianR1(transaction: Transaction, { campaignId, medium, sequence
 
 async function writeSummary(
   transaction: Transaction,
-  { phaseId, fitRunId }: PhaseRow,
+  { phaseId, fitRunId, campaignId }: PhaseRow,
   columns: PhaseColumns,
   { n, nUsed, unusable, f0, q, temperatureC, flagCounts }: PhaseSummaryValues,
   pressurePa: number | null,
@@ -131,6 +144,8 @@ async function writeSummary(
     ],
     transaction,
   );
+  await writeLevels(transaction, { phaseId, fitRunId }, columns);
+  await notify(`phases:${campaignId}`, transaction);
   await change(
     `update phase set closed_at = coalesce(closed_at, $2), started_at = coalesce($3, started_at), ended_at = coalesce($4, ended_at) where id = $1`,
     [phaseId, now, columns.n > 0 ? new Date(columns.at[0]) : null, columns.n > 0 ? new Date(columns.at[columns.n - 1]) : null],

@@ -1,8 +1,12 @@
 import fc from "fast-check";
 import { describe, expect, test } from "vitest";
-import { bucketRuns, type Run } from "@/lib/analysis/bucket-runs";
+import { bucketRuns as bucketRunsOf } from "@/lib/analysis/bucket-runs";
+import { merge, singles } from "@/lib/phases/buckets";
 
-const run = (key: string, values: readonly number[], start = 0): Run<string> => ({ key, at: Float64Array.from(values, (_, i) => start + i), values: Float64Array.from(values) });
+type Values = { key: string; at: Float64Array; values: Float64Array };
+
+const run = (key: string, values: readonly number[], start = 0): Values => ({ key, at: Float64Array.from(values, (_, i) => start + i), values: Float64Array.from(values) });
+const bucketRuns = (given: readonly Values[], limit: number) => bucketRunsOf(given.map(({ key, at, values }) => ({ key, buckets: singles(at, values) })), limit);
 
 const value = fc.double({ min: -1e9, max: 1e9, noNaN: true });
 const runs = fc.array(fc.array(value, { minLength: 1, maxLength: 60 }), { minLength: 1, maxLength: 30 }).map((all) => all.map((values, i) => run(`phase ${i}`, values, i * 1000)));
@@ -55,6 +59,20 @@ describe("buckets of runs", () => {
         const mean = buckets.reduce((sum, { mean: own, n }) => sum + own * n, 0) / values.length;
         const scale = Math.max(1, ...values.map(Math.abs));
         expect(Math.abs(mean - values.reduce((sum, one) => sum + one, 0) / values.length) / scale).toBeLessThan(1e-9);
+      }),
+    );
+  });
+
+  test("from values put together before, nothing is lost either: extremes, counts and means are those of the values", () => {
+    fc.assert(
+      fc.property(runs, fc.integer({ min: 1, max: 20 }), most, (given, parts, limit) => {
+        const before = given.map(({ key, at, values }) => ({ key, buckets: merge(singles(at, values), parts) }));
+        for (const { from, to, min, max, mean, n } of bucketRunsOf(before, limit)) {
+          const inside = given.flatMap(({ at, values }) => [...values].filter((_, i) => at[i] >= from && at[i] <= to));
+          expect({ n: inside.length, min: Math.min(...inside), max: Math.max(...inside) }).toEqual({ n, min, max });
+          const scale = Math.max(1, ...inside.map(Math.abs));
+          expect(Math.abs(mean - inside.reduce((sum, one) => sum + one, 0) / n) / scale).toBeLessThan(1e-9);
+        }
       }),
     );
   });
