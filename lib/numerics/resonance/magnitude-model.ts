@@ -57,7 +57,7 @@ let scratch = new Float64Array(3 * 1024);
  * Source: Golub & Pereyra, SIAM J. Numer. Anal. 10 (1973) 413; Kaufman, BIT 15 (1975) 49. Two passes, no allocation.
  */
 export function magnitudeModel(p: MagnitudeSweep, { f0, q, bend: k }: Shape, weight: Float64Array, out: MagnitudeModel): boolean {
-  return !Number.isNaN(fitLinear(p, f0, q, k, weight, out)) && fitShape(p, f0, q, k, weight, out);
+  return !Number.isNaN(fitLinear(p, f0, q, k, weight, out)) && fitShape(p, f0, k, weight, out);
 }
 
 /** What the five columns explain of Σ w·|V|⁴ at one shape, for comparing shapes: −Infinity when they are not independent. */
@@ -70,6 +70,7 @@ export function explainedPower(p: MagnitudeSweep, { f0, q, bend }: Shape, weight
 function fitLinear({ n, f, inverseF, s, power, withSlope, descending }: MagnitudeSweep, f0: number, q: number, k: number, weight: Float64Array, out: MagnitudeModel): number {
   if (scratch.length < 3 * n) scratch = new Float64Array(6 * n);
   const scale = q / f0;
+  const places = scratch;
   let near = 0.5;
   let pp = 0, pd = 0, dd = 0, p1 = 0, d1 = 0, p2 = 0, d2 = 0, p3 = 0, d3 = 0, yp = 0, yd = 0;
   let s0 = 0, s1 = 0, s2 = 0, s3 = 0, s4 = 0, y0 = 0, y1 = 0, y2 = 0;
@@ -86,9 +87,9 @@ function fitLinear({ n, f, inverseF, s, power, withSlope, descending }: Magnitud
       const steep = 1 - 2 * bend * x * height * height;
       gain = 1 / (Math.abs(steep) < 0.05 ? 0.05 : steep); // at a fold the derivative has no bound
     }
-    scratch[3 * i] = height;
-    scratch[3 * i + 1] = x;
-    scratch[3 * i + 2] = gain;
+    places[3 * i] = height;
+    places[3 * i + 1] = x;
+    places[3 * i + 2] = gain;
     const t = s[i];
     const w0 = weight[i];
     const wp = w0 * height;
@@ -147,16 +148,20 @@ function fitLinear({ n, f, inverseF, s, power, withSlope, descending }: Magnitud
 }
 
 /** Second pass: residuals, formed point by point, and the normal equations of the next step. */
-function fitShape({ n, f, inverseF, s, power }: MagnitudeSweep, f0: number, q: number, k: number, weight: Float64Array, out: MagnitudeModel): boolean {
+function fitShape({ n, f, inverseF, s, power }: MagnitudeSweep, f0: number, k: number, weight: Float64Array, out: MagnitudeModel): boolean {
   const { mean, residual, gram, gradient } = out;
   const [alpha, beta, gamma, delta, epsilon] = out.linear;
   const inverseF0 = 1 / f0;
   let cost = 0, hh = 0, hq = 0, qq = 0, hk = 0, qk = 0, kk = 0, hr = 0, qr = 0, kr = 0;
-  cross.fill(0);
+  // Products of the three derivative columns with the five linear ones.
+  let hP = 0, hD = 0, h1 = 0, hS = 0, hT = 0;
+  let qP = 0, qD = 0, q1 = 0, qS = 0, qT = 0;
+  let kP = 0, kD = 0, k1 = 0, kS = 0, kT = 0;
+  const places = scratch;
   for (let i = 0; i < n; i++) {
-    const height = scratch[3 * i];
-    const x = scratch[3 * i + 1];
-    const gain = scratch[3 * i + 2];
+    const height = places[3 * i];
+    const x = places[3 * i + 1];
+    const gain = places[3 * i + 2];
     const t = s[i];
     const d = -x * height;
     mean[i] = alpha * height + beta * d + gamma + t * (delta + t * epsilon);
@@ -183,21 +188,22 @@ function fitShape({ n, f, inverseF, s, power }: MagnitudeSweep, f0: number, q: n
     hr += wh * r;
     qr += wq * r;
     kr += wk * r;
-    cross[0] += wh * height;
-    cross[1] += wh * d;
-    cross[2] += wh;
-    cross[3] += wh * t;
-    cross[4] += wh * t * t;
-    cross[5] += wq * height;
-    cross[6] += wq * d;
-    cross[7] += wq;
-    cross[8] += wq * t;
-    cross[9] += wq * t * t;
-    cross[10] += wk * height;
-    cross[11] += wk * d;
-    cross[12] += wk;
-    cross[13] += wk * t;
-    cross[14] += wk * t * t;
+    const tt = t * t;
+    hP += wh * height;
+    hD += wh * d;
+    h1 += wh;
+    hS += wh * t;
+    hT += wh * tt;
+    qP += wq * height;
+    qD += wq * d;
+    q1 += wq;
+    qS += wq * t;
+    qT += wq * tt;
+    kP += wk * height;
+    kD += wk * d;
+    k1 += wk;
+    kS += wk * t;
+    kT += wk * tt;
   }
   out.cost = cost;
   gradient[0] = hr;
@@ -209,6 +215,7 @@ function fitShape({ n, f, inverseF, s, power }: MagnitudeSweep, f0: number, q: n
   gram[6] = hk;
   gram[7] = qk;
   gram[8] = kk;
+  cross.set([hP, hD, h1, hS, hT, qP, qD, q1, qS, qT, kP, kD, k1, kS, kT]);
   for (let j = 0; j < SHAPE_PARAMETERS; j++) {
     forwardSubstitute(factor, cross, LINEAR_PARAMETERS, LINEAR_PARAMETERS * j);
     for (let l = 0; l <= j; l++) {

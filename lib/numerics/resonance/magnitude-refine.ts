@@ -1,5 +1,5 @@
 import { descendExact, exactShapeCovariance } from "@/lib/numerics/resonance/magnitude-exact";
-import { emptyMagnitudeModel, magnitudeModel } from "@/lib/numerics/resonance/magnitude-model";
+import { emptyMagnitudeModel, explainedPower } from "@/lib/numerics/resonance/magnitude-model";
 import { evaluateResonance } from "@/lib/numerics/resonance/model";
 import { noiseOf, scoreOf, weightedLag1, weightsOf, type MagnitudeSolution } from "@/lib/numerics/resonance/magnitude-settle";
 import type { MagnitudeSweep } from "@/lib/numerics/resonance/magnitude-sweep";
@@ -24,6 +24,7 @@ const NEGLIGIBLE = 0.01;
 /** A set whose score is above that of the linear form by less is the right one, or cannot be told from it. */
 const AS_GOOD = 0.5;
 const ROUNDS = 4;
+const spare = emptyMagnitudeModel(0);
 const SAME_NOISE = 1e-3;
 
 /**
@@ -31,31 +32,37 @@ const SAME_NOISE = 1e-3;
  * refit of the oscillator itself.
  */
 export function refineExactly(p: MagnitudeSweep, readout: Readout, solution: MagnitudeSolution): Refined | undefined {
-  const { f0, q, sigma, model, weight, lag1 } = solution;
+  const { f0, q, sigma, model, lag1 } = solution;
   const linear = model.linear.slice();
   linear[2] -= 2 * sigma * sigma;
-  const sets = magnitudeTerms(p, readout, solution, { linear, metric: model.linearGram, tie: 4 * sigma * sigma + ROUNDING * p.energy });
+  const problem = { linear, metric: model.linearGram, tie: 4 * sigma * sigma + ROUNDING * p.energy };
+  const [terms] = magnitudeTerms(p, readout, solution, problem);
   const determinant = model.gram[0] * model.gram[4] - model.gram[1] * model.gram[1];
-  if (!(determinant > 0)) return undefined;
+  if (!terms || !(determinant > 0)) return undefined;
   const covariance = { hh: model.gram[4] / determinant, hq: -model.gram[1] / determinant, qq: model.gram[0] / determinant };
+  if (misfitOf(p, readout, solution, terms) <= NEGLIGIBLE * 4 * sigma * sigma) return { f0, q, sigma, lag1, covariance, terms, evaluations: 1 };
 
-  const [{ a, bRe, bIm, cRe, cIm }] = sets;
-  const offset = { b: { re: bRe, im: bIm }, c: { re: cRe, im: cIm } };
-  const { re, im } = evaluateResonance(p.f, { readout, f0Hz: f0, q, a: { re: a, im: 0 }, ...offset });
-  for (let i = 0; i < p.n; i++) re[i] = re[i] * re[i] + im[i] * im[i];
-  const trial = emptyMagnitudeModel(p.n);
-  const fitted = magnitudeModel({ ...p, power: re }, solution, weight, trial);
-  if (fitted && trial.cost <= NEGLIGIBLE * 4 * sigma * sigma) return { f0, q, sigma, lag1, covariance, terms: sets[0], evaluations: 2 };
-
-  let evaluations = 2;
+  let evaluations = 1;
   let best: (Refined & { score: number }) | undefined;
-  for (const terms of sets) {
-    const end = settleExactly(p, readout, solution, terms);
+  for (const set of magnitudeTerms(p, readout, solution, problem, true)) {
+    const end = settleExactly(p, readout, solution, set);
     evaluations += end.evaluations;
     if (end.refined && !(best && best.score <= end.refined.score)) best = end.refined;
     if (best && best.score < solution.score + AS_GOOD) break;
   }
   return best && { ...best, evaluations };
+}
+
+/** What of the exact oscillator the linear form cannot follow at the same f0 and Q: Σ w·difference². */
+function misfitOf(p: MagnitudeSweep, readout: Readout, solution: MagnitudeSolution, { a, bRe, bIm, cRe, cIm }: MagnitudeTerms): number {
+  const { f0, q, weight, model } = solution;
+  const { re, im } = evaluateResonance(p.f, { readout, f0Hz: f0, q, a: { re: a, im: 0 }, b: { re: bRe, im: bIm }, c: { re: cRe, im: cIm } });
+  let total = 0;
+  for (let i = 0; i < p.n; i++) {
+    re[i] = re[i] * re[i] + im[i] * im[i] - model.mean[i]; // which the linear form follows: less of it, for the digits
+    total += weight[i] * re[i] * re[i];
+  }
+  return total - explainedPower({ ...p, power: re }, solution, weight, spare);
 }
 
 function settleExactly(

@@ -40,9 +40,10 @@ export function evaluateResonance(
   const im = new Float64Array(n);
   let low = Infinity;
   let high = -Infinity;
-  for (const f of frequencyHz) {
-    low = Math.min(low, f);
-    high = Math.max(high, f);
+  for (let i = 0; i < n; i++) {
+    const f = frequencyHz[i];
+    if (f < low) low = f;
+    if (f > high) high = f;
   }
   const middle = (low + high) / 2;
   const perSpan = high > low ? 1 / (high - low) : 0;

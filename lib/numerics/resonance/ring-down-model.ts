@@ -37,7 +37,7 @@ const factor = new Float64Array(LINEAR ** 2);
 const linear = new Float64Array(LINEAR);
 const cross = new Float64Array(DECAY_PARAMETERS * LINEAR);
 /** Cosine and sine columns, from the first pass to the second. */
-let tone = new Float64Array(2 * 4096);
+let workspace = new Float64Array(2 * 4096);
 
 /**
  * A free decay whose frequency follows its amplitude, linear in all but ω, γ and the bend.
@@ -52,12 +52,12 @@ let tone = new Float64Array(2 * 4096);
  * projection after Golub & Pereyra, SIAM J. Numer. Anal. 10 (1973) 413. Two passes over the samples.
  */
 export function decayModel(y: Float64Array, decay: Decay, out: DecayModel): boolean {
-  if (tone.length < 2 * y.length) tone = new Float64Array(4 * y.length);
-  fillTone(y.length, decay);
-  return fitLinear(y, out) && fitShape(y, decay, out) && Number.isFinite(out.squares);
+  if (workspace.length < 2 * y.length) workspace = new Float64Array(4 * y.length);
+  fillTone(y.length, decay, workspace);
+  return fitLinear(y, workspace, out) && fitShape(y, workspace, decay, out) && Number.isFinite(out.squares);
 }
 
-function fillTone(n: number, { omega, gamma, bend }: Decay): void {
+function fillTone(n: number, { omega, gamma, bend }: Decay, tone: Float64Array): void {
   const shrink = Math.exp(-gamma);
   const turnR = shrink * Math.cos(omega);
   const turnI = shrink * Math.sin(omega);
@@ -85,7 +85,7 @@ function fillTone(n: number, { omega, gamma, bend }: Decay): void {
 }
 
 /** First pass: A, B and the constant. */
-function fitLinear(y: Float64Array, out: DecayModel): boolean {
+function fitLinear(y: Float64Array, tone: Float64Array, out: DecayModel): boolean {
   const n = y.length;
   let mean = 0;
   for (let i = 0; i < n; i++) mean += y[i];
@@ -117,7 +117,7 @@ function fitLinear(y: Float64Array, out: DecayModel): boolean {
 }
 
 /** Second pass: residuals, formed sample by sample, and the normal equations of the next step. */
-function fitShape(y: Float64Array, { bend }: Decay, out: DecayModel): boolean {
+function fitShape(y: Float64Array, tone: Float64Array, { bend }: Decay, out: DecayModel): boolean {
   const n = y.length;
   const { cosine: a, sine: b, constant, gram, gradient } = out;
   let squares = 0, products = 0, last = 0;

@@ -15,12 +15,12 @@ type Kind = { name: string; form: Form; magnitude?: true; short: number; fewestE
 
 const kinds: Kind[] = [
   { name: "complex, even grid, either readout", form: {}, short: 1500, fewestEvaluations: 8 },
-  { name: "complex, uneven grid in no order", form: { grid: "uneven" }, short: 800, fewestEvaluations: 8 },
-  { name: "complex, downward", form: { grid: "downward" }, short: 800, fewestEvaluations: 8 },
-  { name: "complex, displacement readout", form: { readout: "displacement" }, short: 800, fewestEvaluations: 8 },
-  { name: "magnitude, even grid, either readout", form: {}, magnitude: true, short: 1500, fewestEvaluations: 14 },
-  { name: "magnitude, uneven grid in no order", form: { grid: "uneven" }, magnitude: true, short: 800, fewestEvaluations: 14 },
-  { name: "magnitude, downward, displacement readout", form: { grid: "downward", readout: "displacement" }, magnitude: true, short: 800, fewestEvaluations: 14 },
+  { name: "complex, uneven grid in no order", form: { grid: "uneven" }, short: 500, fewestEvaluations: 8 },
+  { name: "complex, downward", form: { grid: "downward" }, short: 500, fewestEvaluations: 8 },
+  { name: "complex, displacement readout", form: { readout: "displacement" }, short: 500, fewestEvaluations: 8 },
+  { name: "magnitude, even grid, either readout", form: {}, magnitude: true, short: 1000, fewestEvaluations: 14 },
+  { name: "magnitude, uneven grid in no order", form: { grid: "uneven" }, magnitude: true, short: 500, fewestEvaluations: 14 },
+  { name: "magnitude, downward, displacement readout", form: { grid: "downward", readout: "displacement" }, magnitude: true, short: 500, fewestEvaluations: 14 },
 ];
 
 for (const { name, form, magnitude, short, fewestEvaluations } of kinds) {
