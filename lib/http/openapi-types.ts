@@ -5,7 +5,7 @@ export type Json = Record<string, unknown>;
 
 export type Parameter = { name: string; in: "path" | "query" | "header"; required: boolean; description?: string; schema: Json };
 
-export type Media = { schema: Json; examples?: Record<string, { summary: string; value: unknown }> };
+export type Media = { schema: Json; example?: unknown; examples?: Record<string, { summary: string; value: unknown }> };
 
 export type DocumentedOperation = {
   operationId: string;

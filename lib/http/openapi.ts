@@ -1,6 +1,7 @@
 import { z } from "zod";
 import type { DocumentedOperation, Json, Media, OpenApiDocument, Parameter } from "@/lib/http/openapi-types";
 import { EXAMPLES } from "@/lib/http/examples";
+import { ANSWER_EXAMPLES } from "@/lib/http/examples/answer-examples";
 import type { Operation } from "@/lib/http/operation";
 import { problemCodesOf } from "@/lib/http/problem-codes";
 
@@ -76,6 +77,7 @@ function describe(path: string, method: Method, operation: Operation, components
     ? content(schemaOf(operation.answer, "output", "answer"), ["application/json"])
     : content({}, operation.produces ?? ["application/json"]);
   const extra = operation.answer && operation.produces ? content({ type: "string" }, operation.produces) : {};
+  const shown = Object.fromEntries(Object.entries({ ...answer, ...extra }).map(([type, media]) => [type, { ...media, example: ANSWER_EXAMPLES[call]?.[type] }]));
   const empty = !operation.answer && !operation.produces;
   const mayBeEmpty = operation.answer?.safeParse(undefined).success;
 
@@ -94,9 +96,9 @@ function describe(path: string, method: Method, operation: Operation, components
       },
     }),
     responses: {
-      [empty && status === 200 ? "204" : String(status)]: { description: summary, ...(!empty && { content: { ...answer, ...extra } }) },
+      [empty && status === 200 ? "204" : String(status)]: { description: summary, ...(!empty && { content: shown }) },
       ...(mayBeEmpty && { 204: { description: "Nothing is in it" } }),
-      default: { description: "A problem, see its type", content: { "application/problem+json": { schema: { $ref: "#/components/schemas/Problem" } } } },
+      default: { description: "A problem, see its type", content: { "application/problem+json": { schema: { $ref: "#/components/schemas/Problem" }, example: PROBLEM_EXAMPLE } } },
     },
   };
 }
@@ -175,4 +177,12 @@ const PROBLEM: Json = {
       items: { type: "object", required: ["path", "message"], properties: { path: { type: "string" }, message: { type: "string" } } },
     },
   },
+};
+
+const PROBLEM_EXAMPLE: Json = {
+  type: "/problems/invalid",
+  title: "The request is not valid",
+  status: 400,
+  detail: "limit: Too big: expected number to be <=200",
+  errors: [{ path: "limit", message: "Too big: expected number to be <=200" }],
 };

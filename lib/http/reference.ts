@@ -13,7 +13,7 @@ export type ReferenceCall = {
   who: string;
   parameters: (SchemaField & { where: Parameter["in"] })[];
   body?: { type: string; fields: SchemaField[]; whole?: string; examples: { summary: string; json: string }[] };
-  answers: { status: string; types: string[]; fields: SchemaField[]; whole?: string }[];
+  answers: { status: string; types: string[]; fields: SchemaField[]; whole?: string; example?: string }[];
   problems: ProblemCode[];
   curl: string;
 };
@@ -94,11 +94,13 @@ function callOf(method: string, path: string, operation: DocumentedOperation, se
     body: bodyType && body ? { type: bodyType, ...fieldsOf(body), examples } : undefined,
     answers: Object.entries(operation.responses)
       .filter(([status]) => status !== "default")
-      .map(([status, { content = {} }]) => ({ status, types: Object.keys(content), ...fieldsOf(Object.values(content)[0]) })),
+      .map(([status, { content = {} }]) => ({ status, types: Object.keys(content), ...fieldsOf(Object.values(content)[0]), example: exampleOf(Object.values(content)[0]) })),
     problems: operation["x-problems"],
     curl: curlOf(method, path, operation, server, bodyType, body?.examples && Object.values(body.examples)[0]?.value),
   };
 }
+
+const exampleOf = (media: Media | undefined): string | undefined => (media?.example === undefined ? undefined : JSON.stringify(media.example, null, 2));
 
 /** Fields where the schema is an object; its type in words where it is anything else. */
 function fieldsOf(media: Media | undefined): { fields: SchemaField[]; whole?: string } {

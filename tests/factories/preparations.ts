@@ -2,11 +2,14 @@ import { hash } from "@node-rs/argon2";
 import type { StepAnswer } from "@/lib/agents/schema";
 import { openAlarm } from "@/lib/alarms/open-alarm";
 import { holdCampaign } from "@/lib/campaigns/hold";
-import { inTransaction } from "@/lib/db";
+import { writeNote } from "@/lib/campaigns/notes";
+import { inTransaction, row } from "@/lib/db";
 import { takeOverRig } from "@/lib/rigs/take-over";
 import { blockTime } from "@/lib/rigs/block-time";
 import { newToken } from "@/lib/tokens";
 import { AccessToken } from "@/models/access-token";
+import { Exclusion } from "@/models/exclusion";
+import { FitRun } from "@/models/fit-run";
 import { Invitation } from "@/models/invitation";
 import { Notification } from "@/models/notification";
 import { OperatorTask } from "@/models/operator-task";
@@ -24,13 +27,19 @@ import { actor, buildPerson } from "./person";
 import { aDefinition, buildProtocol, buildProtocolVersion } from "./protocol";
 import { buildRig } from "./rig";
 import { buildSensor } from "./sensor";
-import { agentToken, cookieOf, ORIGIN } from "./session";
+import { agentToken, cookieOf, ORIGIN, signedInAs, tokenOf } from "./session";
 
 /** What a call needs: parts of its address, values at names in its body, and who sends it where that is no administrator. */
 export type Prepared = { params?: Record<string, string>; ids?: Record<string, unknown>; query?: string; headers?: Record<string, string> };
 
 const made = async (thing: Promise<{ id: string }>): Promise<Prepared> => ({ params: { id: (await thing).id } });
 const nothing = async (): Promise<Prepared> => ({});
+
+/** A list with something in it. */
+const listOf = (...things: (() => Promise<unknown>)[]) => async (): Promise<Prepared> => {
+  for (const make of things) await make();
+  return {};
+};
 
 const campaignIn = (state: "draft" | "queued" | "running" | "held") => made(buildCampaign({ state }));
 
@@ -53,6 +62,30 @@ const measuredCampaign = () =>
     return bench.campaign.id;
   })());
 const ofMeasured = async (): Promise<Prepared> => ({ params: { id: await measuredCampaign() } });
+
+/** The longest phase of the measured campaign. */
+async function aPhase(): Promise<{ id: string; stepId: string }> {
+  const found = await row<{ id: string; stepId: string }>(
+    `select p.id, p.step_id as "stepId" from phase p join step s on s.id = p.step_id where p.campaign_id = $1 and p.closed_at is not null order by s.stored desc, p.id limit 1`,
+    [await measuredCampaign()],
+  );
+  if (!found) throw new Error("the measured campaign has no phase");
+  return found;
+}
+
+let leftOut = 0;
+async function anExclusion(): Promise<{ id: string; campaignId: string }> {
+  const { stepId } = await aPhase();
+  const { id } = await Exclusion.create({ stepId, idx: leftOut++ % 15, personId: (await buildPerson()).id, at: now, why: "Somebody leaned on the bench" });
+  return { id, campaignId: await measuredCampaign() };
+}
+
+/** Fits made again beside those that a campaign began with. */
+async function aFitRun(state: "waiting" | "ready"): Promise<{ id: string }> {
+  const campaignId = await measuredCampaign();
+  const { settings, codeVersion } = await FitRun.findOne({ where: { campaignId, current: true }, rejectOnEmpty: true });
+  return FitRun.create({ campaignId, settings, codeVersion, current: false, state, why: "To see what the settings do", createdBy: (await buildPerson()).id, createdAt: now });
+}
 
 /** A campaign about to be: a rig with a bottle, a sensor mounted there, a protocol. */
 async function choice(): Promise<Prepared> {
@@ -162,6 +195,29 @@ async function atStep(kind: StepAnswer["kind"]): Promise<Prepared> {
   return { params: { id: step.id }, ids: { stepId: step.id, lease: step.lease, clock: bench.clock.toISOString(), waitS: 0 }, headers: { authorization: `Bearer ${token}` } };
 }
 
+async function aBlockedTime(): Promise<{ id: string; rigId: string }> {
+  const rigId = (await buildRig()).id;
+  return { rigId, ...(await blockTime({ by: await actor("administrator"), now, rigId, from: hours(24), to: hours(25), why: "Service of the thermostat" })) };
+}
+
+async function withNote(): Promise<Prepared> {
+  const { id: campaignId } = await buildCampaign({ state: "running" });
+  await writeNote({ by: await actor("operator"), campaignId, text: "The scatter of cycle 4 comes from the open lid.", now });
+  return { params: { id: campaignId } };
+}
+
+async function usedLiquid(): Promise<Prepared> {
+  const lot = await buildLot();
+  await buildCampaign({ slots: { sample: { port: 1, lotId: lot.id } } });
+  return { params: { id: lot.liquidId } };
+}
+
+async function ownTokens(): Promise<Prepared> {
+  const { person, cookie } = await signedInAs("researcher");
+  await tokenOf(person.id, { name: "plots on the office computer" });
+  return { headers: { cookie, origin: ORIGIN } };
+}
+
 async function aRigToken(): Promise<Prepared> {
   const { rigId, tokenId } = await agentToken();
   return { params: { id: rigId, tokenId } };
@@ -174,18 +230,18 @@ export const PREPARATIONS: Readonly<Record<string, (example: unknown) => Promise
   "POST /api/agent/steps/next": () => atStep("measure"),
   "POST /api/agent/steps/{id}/readings": () => atStep("measure"),
   "POST /api/agent/steps/{id}/finish": () => atStep("fill"),
-  "GET /api/alarms": nothing,
+  "GET /api/alarms": listOf(anAlarm),
   "GET /api/alarms/{id}": anAlarm,
   "POST /api/alarms/{id}/acknowledge": anAlarm,
   "POST /api/alarms/{id}/clear": anAlarm,
   "POST /api/alarms/{id}/shelve": anAlarm,
-  "GET /api/audit": nothing,
-  "POST /api/blocked-times/{id}/withdraw": async () => made(blockTime({ by: await actor("administrator"), now, rigId: (await buildRig()).id, from: hours(24), to: hours(25), why: "Service" })),
-  "GET /api/campaigns": nothing,
+  "GET /api/audit": listOf(aBlockedTime),
+  "POST /api/blocked-times/{id}/withdraw": () => made(aBlockedTime()),
+  "GET /api/campaigns": listOf(measuredCampaign, aLine),
   "POST /api/campaigns": choice,
   "POST /api/campaigns/check": choice,
-  "GET /api/campaigns/choices": nothing,
-  "GET /api/campaigns/overview": nothing,
+  "GET /api/campaigns/choices": listOf(choice),
+  "GET /api/campaigns/overview": listOf(aLine),
   "GET /api/campaigns/strips": async () => ({ query: `?ids=${await measuredCampaign()}` }),
   "GET /api/campaigns/{id}": ofMeasured,
   "PATCH /api/campaigns/{id}": async () => ({ ...(await campaignIn("draft")), ids: { lotId: (await buildLot()).id } }),
@@ -193,13 +249,22 @@ export const PREPARATIONS: Readonly<Record<string, (example: unknown) => Promise
   "GET /api/campaigns/{id}/back-to-air": ofMeasured,
   "GET /api/campaigns/{id}/drift": ofMeasured,
   "GET /api/campaigns/{id}/events": ofMeasured,
-  "GET /api/campaigns/{id}/notes": ofMeasured,
+  "GET /api/campaigns/{id}/notes": withNote,
   "GET /api/campaigns/{id}/phases": ofMeasured,
   "GET /api/campaigns/{id}/readings": ofMeasured,
   "GET /api/campaigns/{id}/series": ofMeasured,
   "GET /api/campaigns/{id}/stability": ofMeasured,
   "GET /api/campaigns/{id}/strip": ofMeasured,
   "GET /api/campaigns/{id}/sweep": ofMeasured,
+  "GET /api/campaigns/{id}/exclusions": async () => ({ params: { id: (await anExclusion()).campaignId } }),
+  "POST /api/campaigns/{id}/exclusions": async () => ({ params: { id: await measuredCampaign() }, ids: { phaseId: (await aPhase()).id } }),
+  "POST /api/exclusions/{id}/take-back": () => made(anExclusion()),
+  "GET /api/campaigns/{id}/fit-runs": ofMeasured,
+  "POST /api/campaigns/{id}/fit-runs": ofMeasured,
+  "GET /api/fit-runs/{id}": () => made(aFitRun("ready")),
+  "GET /api/fit-runs/{id}/compare": () => made(aFitRun("ready")),
+  "POST /api/fit-runs/{id}/cancel": () => made(aFitRun("waiting")),
+  "POST /api/fit-runs/{id}/make-current": () => made(aFitRun("ready")),
   "POST /api/campaigns/{id}/queue": draftToQueue,
   "POST /api/campaigns/{id}/move": aLine,
   "POST /api/campaigns/{id}/hold": () => campaignIn("running"),
@@ -210,30 +275,30 @@ export const PREPARATIONS: Readonly<Record<string, (example: unknown) => Promise
   "POST /api/campaigns/{id}/notes": () => campaignIn("running"),
   "GET /api/find": async () => ({ query: "?q=wr" }),
   "GET /api/health": nothing,
-  "GET /api/invitations": nothing,
+  "GET /api/invitations": listOf(anInvitation),
   "POST /api/invitations": nothing,
   "POST /api/invitations/accept": async () => ({ ids: { token: (await anInvitation()).token }, headers: {} }),
   "POST /api/invitations/{id}/withdraw": () => made(anInvitation()),
   "GET /api/laboratory": nothing,
   "PATCH /api/laboratory": nothing,
-  "GET /api/liquids": nothing,
+  "GET /api/liquids": listOf(buildLoad),
   "POST /api/liquids": nothing,
   "GET /api/liquids/{id}": () => made(buildLiquid()),
   "PATCH /api/liquids/{id}": () => made(buildLiquid()),
-  "GET /api/liquids/{id}/campaigns": () => made(buildLiquid()),
-  "GET /api/liquids/{id}/lots": () => made(buildLiquid()),
+  "GET /api/liquids/{id}/campaigns": usedLiquid,
+  "GET /api/liquids/{id}/lots": async () => ({ params: { id: (await buildLot()).liquidId } }),
   "POST /api/liquids/{id}/lots": () => made(buildLiquid()),
   "GET /api/loads/{id}": () => made(buildLoad()),
-  "GET /api/lots": nothing,
+  "GET /api/lots": listOf(buildLoad),
   "GET /api/lots/{id}": () => made(buildLot()),
   "PATCH /api/lots/{id}": () => made(buildLot()),
   "GET /api/me": nothing,
   "PATCH /api/me": nothing,
   "POST /api/me/password": changingPassword,
-  "GET /api/mounts": nothing,
+  "GET /api/mounts": listOf(buildMount),
   "GET /api/mounts/{id}": () => made(buildMount()),
   "POST /api/mounts/{id}/end": () => made(buildMount()),
-  "GET /api/notifications": nothing,
+  "GET /api/notifications": listOf(failedMail),
   "POST /api/notifications/{id}/send-again": () => made(failedMail()),
   "GET /api/openapi.json": nothing,
   "POST /api/password-resets": async () => ({ headers: {} }),
@@ -244,11 +309,11 @@ export const PREPARATIONS: Readonly<Record<string, (example: unknown) => Promise
   "PATCH /api/people/{id}": () => made(buildPerson()),
   "POST /api/people/{id}/close": () => made(buildPerson()),
   "POST /api/people/{id}/open": () => made(buildPerson({ closedAt: now })),
-  "GET /api/protocols": nothing,
+  "GET /api/protocols": listOf(twoVersions),
   "POST /api/protocols": nothing,
   "POST /api/protocols/drafts": nothing,
   "POST /api/protocols/estimate": choice,
-  "GET /api/protocols/{id}": () => made(buildProtocol()),
+  "GET /api/protocols/{id}": twoVersions,
   "PATCH /api/protocols/{id}": aDraft,
   "DELETE /api/protocols/{id}": aDraft,
   "POST /api/protocols/{id}/bring-back": () => made(buildProtocol({ retiredAt: now })),
@@ -256,34 +321,34 @@ export const PREPARATIONS: Readonly<Record<string, (example: unknown) => Promise
   "GET /api/protocols/{id}/versions": twoVersions,
   "POST /api/protocols/{id}/versions": twoVersions,
   "GET /api/protocols/{id}/versions/{versionId}": twoVersions,
-  "GET /api/rigs": nothing,
+  "GET /api/rigs": listOf(measuredCampaign),
   "POST /api/rigs": nothing,
-  "GET /api/rigs/contacts": nothing,
-  "GET /api/rigs/timeline": nothing,
+  "GET /api/rigs/contacts": listOf(measuredCampaign),
+  "GET /api/rigs/timeline": listOf(aLine),
   "GET /api/rigs/{id}": () => made(buildRig()),
   "PATCH /api/rigs/{id}": () => made(buildRig()),
-  "GET /api/rigs/{id}/blocked-times": () => made(buildRig()),
+  "GET /api/rigs/{id}/blocked-times": async () => ({ params: { id: (await aBlockedTime()).rigId } }),
   "POST /api/rigs/{id}/blocked-times": () => made(buildRig()),
   "POST /api/rigs/{id}/give-back": takenOver,
-  "GET /api/rigs/{id}/loads": () => made(buildRig()),
+  "GET /api/rigs/{id}/loads": async () => ({ params: { id: (await buildLoad()).rigId } }),
   "POST /api/rigs/{id}/loads": loading,
   "POST /api/rigs/{id}/take-over": async () => ({ params: { id: String((await buildCampaign({ state: "running" })).rigId) } }),
-  "GET /api/rigs/{id}/tokens": () => made(buildRig()),
+  "GET /api/rigs/{id}/tokens": aRigToken,
   "POST /api/rigs/{id}/tokens": () => made(buildRig()),
   "GET /api/rigs/{id}/tokens/{tokenId}": aRigToken,
   "POST /api/rigs/{id}/tokens/{tokenId}/withdraw": aRigToken,
   "POST /api/rigs/{id}/waste-emptied": () => made(buildRig()),
-  "GET /api/sensors": nothing,
+  "GET /api/sensors": listOf(buildMount),
   "POST /api/sensors": nothing,
   "GET /api/sensors/{id}": () => made(buildSensor()),
   "PATCH /api/sensors/{id}": () => made(buildSensor()),
-  "GET /api/sensors/{id}/mounts": () => made(buildSensor()),
+  "GET /api/sensors/{id}/mounts": async () => ({ params: { id: (await buildMount()).sensorId } }),
   "POST /api/sensors/{id}/mounts": async () => ({ ...(await made(buildSensor())), ids: { rigId: (await buildRig()).id } }),
-  "GET /api/tasks": nothing,
+  "GET /api/tasks": listOf(aTask),
   "GET /api/tasks/{id}": aTask,
   "POST /api/tasks/{id}/answer": aTask,
-  "GET /api/today": nothing,
-  "GET /api/tokens": nothing,
+  "GET /api/today": listOf(anAlarm, aTask, aLine, heldCampaign),
+  "GET /api/tokens": ownTokens,
   "POST /api/tokens": nothing,
   "GET /api/tokens/{id}": () => made(anAccessToken()),
   "POST /api/tokens/{id}/withdraw": () => made(anAccessToken()),

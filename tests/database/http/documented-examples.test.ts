@@ -5,11 +5,16 @@ import { afterAll, beforeAll, expect, test, vi } from "vitest";
 import { openApi } from "@/app/api/openapi";
 import { sequelize } from "@/lib/db";
 import { EXAMPLES } from "@/lib/http/examples";
+import { ANSWER_EXAMPLES } from "@/lib/http/examples/answer-examples";
 import type { OpenApiDocument } from "@/lib/http/openapi-types";
 import { listener } from "@/lib/listener";
-import { API_CALLS } from "../../factories/api-calls";
+import { API_CALLS, type ApiCall } from "../../factories/api-calls";
 import { prepareCall, sendPrepared } from "../../factories/prepared-call";
+import { recordAnswer, writeRecorded } from "../../factories/recorded-answers";
 import { PREPARATIONS } from "../../factories/preparations";
+
+/** Set to 1, the answers become the examples of the reference. */
+const RECORD = process.env.LONGREED_RECORD === "1";
 
 const mailServer = net.createServer((socket) => socket.end());
 
@@ -22,6 +27,7 @@ beforeAll(async () => {
   process.env.SMTP_URL = `smtp://127.0.0.1:${(mailServer.address() as AddressInfo).port}`;
 });
 afterAll(async () => {
+  if (RECORD) writeRecorded();
   vi.useRealTimers();
   mailServer.close();
   await listener().close();
@@ -45,7 +51,9 @@ function faults(value: unknown, ...place: string[]): string[] {
   return (check.errors ?? []).map(({ instancePath, message }) => `${instancePath} ${message}`);
 }
 
-const sent = API_CALLS.flatMap((call) => {
+const csv = API_CALLS.filter(({ operation }) => operation.produces?.includes("text/csv")).map((call) => ({ name: call.name, summary: "as CSV", call, example: undefined, query: "?format=csv" }));
+
+const sent = API_CALLS.flatMap((call): { name: string; summary: string; call: ApiCall; example: unknown; query?: string }[] => {
   const examples = Object.entries(EXAMPLES[call.name] ?? {});
   return examples.length > 0 ? examples.map(([summary, example]) => ({ name: call.name, summary, call, example })) : [{ name: call.name, summary: "without a body", call, example: undefined }];
 });
@@ -54,13 +62,26 @@ test("every call of the document is sent", () => {
   expect(Object.keys(PREPARATIONS).toSorted()).toEqual(API_CALLS.map(({ name }) => name).toSorted());
 });
 
-test.each(sent)("$name, $summary: the document allows the example, and its answer", async ({ call, example }) => {
+test("no answer was recorded of a call that is not there", () => {
+  expect(Object.keys(ANSWER_EXAMPLES).filter((name) => !API_CALLS.some((call) => call.name === name))).toEqual([]);
+});
+
+test.each(API_CALLS.map(({ name, path, method }) => ({ name, path, method: method.toLowerCase() })))("$name: the example of its answer is what the document says of it", ({ path, method }) => {
+  const answers = Object.entries(document.paths[path][method].responses).filter(([status]) => status !== "default");
+  for (const [status, { content = {} }] of answers)
+    for (const [type, { example }] of Object.entries(content)) {
+      expect(example, type).toBeDefined();
+      expect(faults(example, "paths", path, method, "responses", status, "content", type)).toEqual([]);
+    }
+});
+
+test.each([...sent, ...csv])("$name, $summary: the document allows the example, and its answer", async ({ call, example, query }) => {
   const { path, method } = call;
   const place = ["paths", path, method.toLowerCase()];
   const prepared = await prepareCall({ call, example });
   if (prepared.body !== undefined) expect(faults(JSON.parse(JSON.stringify(prepared.body)), ...place, "requestBody", "content", "application/json")).toEqual([]);
 
-  const response = await sendPrepared(prepared);
+  const response = await sendPrepared(prepared, { query });
   const text = await response.text();
   const { responses } = document.paths[path][method.toLowerCase()];
   const documented = responses[String(response.status)];
@@ -69,5 +90,6 @@ test.each(sent)("$name, $summary: the document allows the example, and its answe
 
   const type = String(response.headers.get("content-type")).split(";")[0];
   expect(Object.keys(documented.content)).toContain(type);
+  if (RECORD) recordAnswer(call.name, type, text);
   if (type === "application/json") expect(faults(JSON.parse(text), ...place, "responses", String(response.status), "content", type)).toEqual([]);
 });

@@ -24,8 +24,8 @@ const withId = signedIn.filter(({ path }) => path.includes("{"));
 /** A new password ends the very session that could repeat the call. */
 const idempotent = signedIn.filter(({ method, path }) => method === "POST" && path !== "/api/me/password");
 
-const TABLE_OF_FIELD: Readonly<Record<string, string>> = { rigId: "rig", sensorId: "sensor", lotId: "lot", protocolVersionId: "protocol_version", before: "campaign" };
-const ID_IN_BODY = /"(rigId|sensorId|lotId|protocolVersionId|before)":"/;
+const TABLE_OF_FIELD: Readonly<Record<string, string>> = { rigId: "rig", sensorId: "sensor", lotId: "lot", protocolVersionId: "protocol_version", before: "campaign", phaseId: "phase" };
+const ID_IN_BODY = /"(rigId|sensorId|lotId|protocolVersionId|before|phaseId)":"/;
 
 const queryFields = (query: z.ZodType): object => (query instanceof z.ZodObject ? (query.shape as object) : {});
 
@@ -171,9 +171,10 @@ describe.each(named(withId))("the address of %s", (_, call) => {
   });
 });
 
+const ODD_TABLES: Readonly<Record<string, string>> = { "blocked-times": "maintenance_window", people: "person", tasks: "operator_task", tokens: "access_token" };
+
 /** The table that the `{id}` of an address is of. */
-const tableOf = (path: string): string =>
-  ({ alarms: "alarm", "blocked-times": "maintenance_window", campaigns: "campaign", invitations: "invitation", liquids: "liquid", loads: "load", lots: "lot", mounts: "mount", notifications: "notification", people: "person", protocols: "protocol", rigs: "rig", sensors: "sensor", tasks: "operator_task", tokens: "access_token" })[path.split("/")[2]] ?? "";
+const tableOf = (path: string): string => ODD_TABLES[path.split("/")[2]] ?? path.split("/")[2].replace(/s$/, "").replaceAll("-", "_");
 
 
 describe.each(named(signedIn.filter(({ operation }) => operation.query && "cursor" in queryFields(operation.query))))("cursors of %s", (_, call) => {

@@ -33,7 +33,7 @@ export function CallSection({ call, schemas }: { call: ReferenceCall; schemas: R
           ))}
         </Part>
       )}
-      {answers.map(({ status, types, fields, whole }) => (
+      {answers.map(({ status, types, fields, whole, example }) => (
         <Part key={status} title={`Answer ${status}`} remark={types.join(", ")}>
           {fields.length > 0 && (
             <details open={fields.length <= 8}>
@@ -42,6 +42,12 @@ export function CallSection({ call, schemas }: { call: ReferenceCall; schemas: R
             </details>
           )}
           {fields.length === 0 && <p className="text-ink2">{types.length === 0 ? "Nothing is in it." : whole}</p>}
+          {example && (
+            <details>
+              <summary>Example</summary>
+              <pre tabIndex={0}>{example}</pre>
+            </details>
+          )}
         </Part>
       ))}
       <Part title="Problems">
