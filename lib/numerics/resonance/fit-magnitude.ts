@@ -22,7 +22,9 @@ const LEAST_GAIN = 20;
  *
  * A modulus determines f0 and Q, but not all of a, b and c. Their common phase is lost: a comes out real and positive, b and
  * c relative to it. Up to four sets have the same modulus (see magnitudeTerms), of which that of the smallest |a| is given;
- * so amplitude and snr are the least that the data allow, and nothing but the flag `noisy` rests on them.
+ * so amplitude and snr are the least that the data allow, and nothing but the flag `noisy` rests on them. The sign of a
+ * magnitude is not looked at. Not knowing that there is no offset, where there is none, makes the standard
+ * error of Q up to 1.6 times as large; from a hundredth of |a| on hardly anything is lost.
  *
  * Source: quasi-likelihood, Wedderburn, Biometrika 61 (1974) 439; moments of Rice's distribution, Rice, Bell System Technical
  * Journal 24 (1945) 46, §3.10.

@@ -100,10 +100,12 @@ describe("flags, one by one", () => {
     expect(fitResonance(sweepOf({ from: 993, to: 1053 }), velocity).flags).not.toContain("edge");
   });
 
-  it("bent: the peak is pushed by more than 0.1 half-width, either way, swept either way", () => {
+  it("bent: the peak is pushed by more than 0.1 half-width, either way, swept either way, either readout", () => {
     for (const bend of [0.2, 0.8, 2.5, -0.2, -1]) {
       for (const descending of [false, true]) {
-        expect(fitResonance(bentSweep(bend, { descending }), velocity).flags).toContain("bent");
+        for (const readout of ["velocity", "displacement"] as const) {
+          expect(fitResonance(bentSweep(bend, { descending, readout }), { readout }).flags).toContain("bent");
+        }
       }
     }
   });

@@ -182,6 +182,16 @@ describe("ring-down", () => {
     expect(fit(new Float64Array(100).fill(1))).toEqual(["failed"]);
   });
 
+  it("failed: noise alone is not taken for a decay, 300 times over", () => {
+    const dice = new Dice(8);
+    let taken = 0;
+    for (let k = 0; k < 300; k++) {
+      const volts = Float64Array.from({ length: 1000 }, () => dice.normal());
+      if (!fitRingDown({ sampleHz: 1000, startS: 0, volts }).flags.includes("failed")) taken++;
+    }
+    expect(taken).toBeLessThanOrEqual(3);
+  });
+
   it("bent: a frequency that falls with the amplitude by more than 0.1 half-width, either way, and not below, nor in noise", () => {
     const dice = new Dice(6);
     const tone = { f0Hz: 700, q: 200, sampleHz: 10_000, n: 6000 };

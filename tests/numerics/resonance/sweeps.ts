@@ -53,6 +53,8 @@ export type RandomCase = {
 export type Form = {
   readout?: Readout;
   grid?: "even" | "downward" | "uneven";
+  /** An offset of a thousandth of the amplitude to all of it, with a slope up to a third of that, instead. */
+  smallOffset?: true;
 };
 
 /**
@@ -76,8 +78,9 @@ export function randomCase(dice: Dice, form: Form = {}): RandomCase {
   const drawn = dice.uniform() < 0.5 ? "velocity" : "displacement";
   const readout = form.readout ?? drawn;
   const a = dice.phasor(amplitude);
-  const b = dice.phasor(100 * amplitude * dice.uniform());
-  const c = dice.phasor(10 * amplitude * dice.uniform() ** 2);
+  const offset = form.smallOffset ? amplitude * 1000 ** -dice.uniform() : 100 * amplitude * dice.uniform();
+  const b = dice.phasor(offset);
+  const c = dice.phasor(form.smallOffset ? (offset / 3) * dice.uniform() : 10 * amplitude * dice.uniform() ** 2);
   const noise = amplitude / snr;
   const sweep = noisySweep(gridOf(form.grid ?? "even", start, span, n, dice), { readout, f0Hz, q, a, b, c }, noise, dice);
   return { sweep, readout, f0Hz, q, a, b, c, noise };
