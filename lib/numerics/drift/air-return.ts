@@ -49,8 +49,8 @@ const clearlyLogarithmic = -6;
  *   ageing   moves f0 without loss (or slows logarithmically) and stays when cleaned again
  *   step     moves f0 at once
  *
- * Growth is the slope of f0 fitted together with re-mounts, levels after a clean-again and steps found, under power-law
- * noise; Q likewise. Every decision is at 99 %. What contradicts itself, or cannot be told, is undecided.
+ * Growth is the slope of f0 fitted together with re-mounts, levels after a clean-again and steps found, under noise of
+ * unknown kind; Q likewise. Every decision is at 99 %. What contradicts itself, or cannot be told, is undecided.
  *
  * @param references At times in days, rising, all finite.
  * @returns The verdict and every number behind it. References after a clean-again tell whether that took something off;

@@ -41,8 +41,8 @@ const significant = 3;
  *
  *   y = a_phase + d t + A exp(−t/τ)
  *
- * without either, with the line, with the return, with both; level of each phase its own, d, A and τ common to all, noise
- * power-law of unknown exponent. AICc chooses. Several phases together show a return that is lost in the noise of one.
+ * without either, with the line, with the return, with both; level of each phase its own, d, A and τ common to all, noise of
+ * unknown kind. AICc chooses. Several phases together show a return that is lost in the noise of one.
  *
  * @param phases Repeats that count, times in seconds rising within a phase, all finite. Phases below five values are
  *   passed over, of longer ones the first 300 are used; at most 3 000 in all.

@@ -1,8 +1,26 @@
 import { powerLawVariogram } from "@/lib/numerics/drift/power-law-variogram";
 import { median } from "@/lib/numerics/statistics/median";
 
-/** Exponents of noise S_y(f) ∝ f^α averaged over where it is not known: white to random walk in quarters. */
-export const noiseExponents = [0, -0.25, -0.5, -0.75, -1, -1.25, -1.5, -1.75, -2] as const;
+/**
+ * Noise S_y(f) ∝ f^α, or white noise (α = 0) with a random walk beside it that has the share `walk` in the variance of one
+ * difference of neighbours; `prior` is its weight before the data are seen.
+ */
+export type NoiseKind = { alpha: number; walk: number; prior: number };
+
+/**
+ * Kinds averaged over where the noise is not known: white to random walk in quarters of the exponent, and white noise on a
+ * random walk, which no single exponent stands for: it is white from value to value and walks over the record. Those six
+ * together weigh as much as one exponent, so that plain white noise is not taken for a walk without need.
+ */
+export const noiseKinds: readonly NoiseKind[] = [
+  ...[0, -0.25, -0.5, -0.75, -1, -1.25, -1.5, -1.75, -2].map((alpha) => ({ alpha, walk: 0, prior: 1 })),
+  ...[0.001, 0.004, 0.016, 0.06, 0.25, 0.6].map((walk) => ({ alpha: 0, walk, prior: 1 / 6 })),
+];
+
+/** Exponent that stands for a kind over a record of so many steps: between white and walk by their shares in its variance. */
+export function exponentOver({ alpha, walk }: NoiseKind, steps: number): number {
+  return walk === 0 ? alpha : (-2 * walk * steps) / (1 - walk + walk * steps);
+}
 
 /** Longest record in units of its median spacing. */
 const longestRecord = 10_000_000;
@@ -21,12 +39,13 @@ export function differencedSeries({ x, y }: { x: Float64Array; y: Float64Array }
 }
 
 /**
- * Covariance of the differences under power-law noise of exponent α, in units of its variance over one grid step:
- * lower triangle, rows one after another. Stationary and without the level for every α from 0 to −2.
+ * Covariance of the differences under a kind of noise, in units of its variance over one grid step: lower triangle, rows
+ * one after another. Stationary and without the level for every kind.
  */
-export function differenceCovariance(alpha: number, grid: Float64Array): Float64Array {
+export function differenceCovariance({ alpha, walk }: NoiseKind, grid: Float64Array): Float64Array {
   const size = grid.length - 1;
   const variogram = powerLawVariogram(alpha, grid[size]);
+  if (walk > 0) for (let h = 1; h < variogram.length; h++) variogram[h] += walk * (h - variogram[h]);
   const covariance = new Float64Array(size * size);
   for (let i = 0; i < size; i++) {
     for (let j = 0; j <= i; j++) {

@@ -5,9 +5,9 @@ export type GlsFit = {
   coefficients: Float64Array;
   /** Of the coefficients, rows one after another, the doubt about the kind of noise included. */
   covariance: Float64Array;
-  /** Mean exponent of the noise by restricted likelihood: 0 white, −1 flicker, −2 random walk. */
+  /** Mean exponent that stands for the noise, by restricted likelihood: 0 white, −1 flicker, −2 random walk. */
   alpha: number;
-  /** The exponent with most weight. */
+  /** The kind of noise with most weight. */
   likeliest: Whitener;
   /**
    * Corrected Akaike criterion; smaller is better. Only fits of the same differences may be compared. With no column it
@@ -18,19 +18,19 @@ export type GlsFit = {
   dof: number;
 };
 
-/** The fit's own unknowns beside the coefficients: variance and exponent of the noise. */
+/** The fit's own unknowns beside the coefficients: variance and kind of the noise. */
 const noiseUnknowns = 2;
 
 /**
- * Linear model of a series by generalised least squares under power-law noise of unknown exponent.
+ * Linear model of a series by generalised least squares under noise of unknown kind (`noiseKinds`).
  *
- * For each exponent α the differences are whitened and fitted by ordinary least squares: coefficients b_α, covariance C_α
- * and restricted likelihood, with weights w_α ∝ likelihood and a flat prior. Then
+ * For each kind α the differences are whitened and fitted by ordinary least squares: coefficients b_α, covariance C_α
+ * and restricted likelihood, with weights w_α ∝ prior · likelihood. Then
  *
  *   b = Σ w b_α, C = Σ w (C_α + (b_α − b)(b_α − b)ᵀ)
- *   AICc = −2 ln (mean over α of the profile likelihood) + 2k + 2k(k + 1)/(n − k − 1)
+ *   AICc = −2 ln (prior-weighted mean over α of the profile likelihood) + 2k + 2k(k + 1)/(n − k − 1)
  *
- * with n differences and k coefficients, variance, exponent and `extraUnknowns`.
+ * with n differences and k coefficients, variance, kind of noise and `extraUnknowns`.
  *
  * @param noise From `whiteners` of the same stretches.
  * @param values Differences of adjacent values, all finite (`differencesWithin`); a level of each stretch drops out.
@@ -41,7 +41,7 @@ const noiseUnknowns = 2;
  * @throws RangeError if there are not more differences than columns, or the columns depend on each other.
  *
  * Sources: restricted likelihood, D. A. Harville, J. Am. Stat. Assoc. 72 (1977) 320; criterion, K. P. Burnham and
- * D. R. Anderson, Model Selection and Multimodel Inference, 2nd ed. (2002), section 2.4. Averaging over exponents is our
+ * D. R. Anderson, Model Selection and Multimodel Inference, 2nd ed. (2002), section 2.4. Averaging over kinds is our
  * choice: taking the likeliest alone makes intervals too short for short records.
  */
 export function glsFit({
@@ -94,8 +94,8 @@ function fitUnder(whitener: Whitener, values: Float64Array, columns: readonly Fl
   return {
     whitener,
     line: squares > 0 ? line : { ...line, covariance: new Float64Array(columns.length ** 2) },
-    logRestricted: -(dof * Math.log(squares / dof) + whitener.logDeterminant + line.logInformation) / 2,
-    logProfile: -(n * Math.log(squares / n) + whitener.logDeterminant) / 2,
+    logRestricted: Math.log(whitener.prior) - (dof * Math.log(squares / dof) + whitener.logDeterminant + line.logInformation) / 2,
+    logProfile: Math.log(whitener.prior) - (n * Math.log(squares / n) + whitener.logDeterminant) / 2,
   };
 }
 

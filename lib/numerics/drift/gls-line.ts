@@ -18,12 +18,13 @@ export type GlsLine = {
 };
 
 /**
- * Straight line by generalised least squares under power-law noise of unknown exponent.
+ * Straight line by generalised least squares under noise of unknown kind: power laws of exponent α from 0 to −2 in
+ * quarters, and white noise on a random walk of six sizes.
  *
- * For each exponent α from 0 to −2 in quarters: slope b_α, its variance u_α² and the restricted log-likelihood, with
- * weights w_α ∝ exp(likelihood) and a flat prior. Then
+ * For each kind k: slope b_k, its variance u_k² and the restricted log-likelihood, with weights w_k ∝ prior · exp(likelihood).
+ * Then
  *
- *   b = Σ w b_α, u² = Σ w (u_α² + (b_α − b)²)
+ *   b = Σ w b_k, u² = Σ w (u_k² + (b_k − b)²)
  *
  * Work is on the differences of adjacent values, for which the noise is stationary down to α = −2 and the level drops
  * out. Times are taken on a grid of their median spacing for the noise, so holes are holes; the line keeps the times
@@ -38,8 +39,8 @@ export type GlsLine = {
  *   its median spacings.
  *
  * Source: restricted likelihood, D. A. Harville, J. Am. Stat. Assoc. 72 (1977) 320; power-law covariance, J. R. M.
- * Hosking, Biometrika 68 (1981) 165, of differenced noise. Averaging over exponents is our choice: taking the likeliest
- * alone makes intervals too short for short records.
+ * Hosking, Biometrika 68 (1981) 165, of differenced noise. Averaging over kinds is our choice: taking the likeliest alone
+ * makes intervals too short for short records.
  */
 export function glsLine({
   x,

@@ -1,5 +1,5 @@
 import { blockMeans } from "@/lib/numerics/drift/block-means";
-import { differencedSeries, noiseExponents } from "@/lib/numerics/drift/differenced-series";
+import { differencedSeries, noiseKinds } from "@/lib/numerics/drift/differenced-series";
 import { glsFit } from "@/lib/numerics/drift/gls-fit";
 import { addColumn, whitenedSeries, type WhitenedSeries } from "@/lib/numerics/drift/whitened-series";
 import { longestWhitened, whiteners } from "@/lib/numerics/drift/whiteners";
@@ -21,12 +21,12 @@ const penaltyFactor = 4;
 const mostSteps = 20;
 
 /**
- * Steps in a drifting series, by penalised generalised least squares: one slope, a level that jumps, and power-law noise
- * of unknown exponent, so that neither a drift nor flicker nor random walk is cut into stairs.
+ * Steps in a drifting series, by penalised generalised least squares: one slope, a level that jumps, and noise of
+ * unknown kind, so that neither a drift nor flicker nor random walk is cut into stairs.
  *
- * Steps are added one at a time where they add most to the likelihood, averaged over exponents from 0 to −2 in quarters,
+ * Steps are added one at a time where they add most to the likelihood, averaged over kinds of noise (`noiseKinds`),
  * as long as twice its logarithm rises by more than 4 ln n. Sizes come from the joint fit of slope and all steps,
- * averaged over exponents by restricted likelihood; u holds the spread between exponents.
+ * averaged over kinds by restricted likelihood; u holds the spread between them.
  *
  * @param x Times, rising, all finite.
  * @param y Values, one per x, all finite. A step needs three values on either side.
@@ -44,7 +44,7 @@ export function findSteps({ x, y }: { x: Float64Array; y: Float64Array }): Step[
 
   const blocks = blockMeans({ x, y }, longestWhitened);
   const series = differencedSeries(blocks);
-  const models = noiseExponents.map((alpha) => whitenedSeries(alpha, series));
+  const models = noiseKinds.map((kind) => whitenedSeries(kind, series));
   const found: number[] = [];
   let likelihood = logMeanLikelihood(models, (model) => model.squares);
   while (found.length < mostSteps) {
@@ -88,10 +88,10 @@ function likeliestStep(
   return best;
 }
 
-/** Logarithm of the likelihood, slope and variance at their best, averaged over exponents. */
+/** Logarithm of the likelihood, slope and variance at their best, averaged over kinds of noise by their priors. */
 function logMeanLikelihood(models: readonly WhitenedSeries[], squaresOf: (model: WhitenedSeries) => number): number {
   const size = models[0].residual.length;
-  const logs = models.map((model) => -(size * Math.log(squaresOf(model) / size) + model.logDeterminant) / 2);
+  const logs = models.map((model) => model.logPrior - (size * Math.log(squaresOf(model) / size) + model.logDeterminant) / 2);
   const most = Math.max(...logs);
   return most === Infinity ? Infinity : most + Math.log(logs.reduce((sum, log) => sum + Math.exp(log - most), 0));
 }

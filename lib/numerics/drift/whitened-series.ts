@@ -1,14 +1,15 @@
 import { choleskyInPlace, inverseFromCholesky } from "@/lib/numerics/drift/cholesky";
-import { differenceCovariance, type DifferencedSeries } from "@/lib/numerics/drift/differenced-series";
+import { differenceCovariance, type DifferencedSeries, type NoiseKind } from "@/lib/numerics/drift/differenced-series";
 
 /**
- * Differences of a series under one noise exponent, with what a generalised least-squares fit has taken off so far.
+ * Differences of a series under one kind of noise, with what a generalised least-squares fit has taken off so far.
  * With P the inverse covariance and Q = P − Σ g gᵀ after the columns added, `residual` is Q z, `diagonal` that of Q and
  * `squares` zᵀ Q z, the weighted sum of squared residuals.
  */
 export type WhitenedSeries = {
   inverse: Float64Array;
   logDeterminant: number;
+  logPrior: number;
   values: Float64Array;
   directions: Float64Array[];
   residual: Float64Array;
@@ -16,15 +17,15 @@ export type WhitenedSeries = {
   squares: number;
 };
 
-/** The series under noise of exponent α from 0 to −2, its slope already taken off. Cubic in the number of values. */
-export function whitenedSeries(alpha: number, { dx, dy, grid }: DifferencedSeries): WhitenedSeries {
+/** The series under a kind of noise, its slope already taken off. Cubic in the number of values. */
+export function whitenedSeries(kind: NoiseKind, { dx, dy, grid }: DifferencedSeries): WhitenedSeries {
   const size = dx.length;
-  const covariance = differenceCovariance(alpha, grid);
+  const covariance = differenceCovariance(kind, grid);
   const logDeterminant = choleskyInPlace(covariance, size);
   const inverse = inverseFromCholesky(covariance, size);
   const residual = times(inverse, dy);
   const diagonal = dy.map((_, i) => inverse[i * size + i]);
-  const whitened = { inverse, logDeterminant, values: dy, directions: [], residual, diagonal, squares: dot(dy, residual) };
+  const whitened = { inverse, logDeterminant, logPrior: Math.log(kind.prior), values: dy, directions: [], residual, diagonal, squares: dot(dy, residual) };
   addColumn(whitened, dx);
   return whitened;
 }

@@ -1,12 +1,15 @@
 import { choleskyInPlace, solveLowerInPlace } from "@/lib/numerics/drift/cholesky";
-import { differenceCovariance, differencedSeries, noiseExponents } from "@/lib/numerics/drift/differenced-series";
+import { differenceCovariance, differencedSeries, exponentOver, noiseKinds, type NoiseKind } from "@/lib/numerics/drift/differenced-series";
 
 /** Values up to which the full covariance of a stretch is used; its cost grows with the cube. */
 export const longestWhitened = 300;
 
-/** Power-law noise of one exponent over stretches whose levels are free and whose noise is taken as independent. */
+/** One kind of noise over stretches whose levels are free and whose noise is taken as independent. */
 export type Whitener = {
+  /** Exponent that stands for the kind over the longest stretch: 0 white, −1 flicker, −2 random walk. */
   alpha: number;
+  /** Weight before the data are seen. */
+  prior: number;
   /** Natural logarithm of the determinant of the covariance, in units of the variance over one grid step. */
   logDeterminant: number;
   /** Differences of adjacent values, stretch after stretch, made independent with equal variance. */
@@ -19,7 +22,7 @@ export function differencesWithin(stretches: readonly Float64Array[]): Float64Ar
 }
 
 /**
- * Whiteners of a series for every exponent from 0 to −2 in quarters.
+ * Whiteners of a series for every kind of noise averaged over.
  *
  * @param times Of each stretch, rising; stretches of one value carry nothing and are passed over by the differences.
  *   Each is at most 300 long for a tolerable cost, which grows with its cube.
@@ -27,12 +30,13 @@ export function differencesWithin(stretches: readonly Float64Array[]): Float64Ar
  */
 export function whiteners(times: readonly Float64Array[]): Whitener[] {
   const grids = times.filter(({ length }) => length > 1).map((x) => differencedSeries({ x, y: x }).grid);
-  return noiseExponents.map((alpha) => {
+  const longest = grids.reduce((most, grid) => Math.max(most, grid[grid.length - 1]), 1);
+  return noiseKinds.map((kind) => {
     let logDeterminant = 0;
     const known = new Map<string, { factor: Float64Array; log: number }>(); // phases of one protocol have one grid
     const factors = grids.map((grid) => {
       const key = grid.join();
-      const { factor, log } = known.get(key) ?? factorOf(alpha, grid);
+      const { factor, log } = known.get(key) ?? factorOf(kind, grid);
       known.set(key, { factor, log });
       logDeterminant += log;
       return factor;
@@ -47,12 +51,12 @@ export function whiteners(times: readonly Float64Array[]): Whitener[] {
       });
       return whitened;
     };
-    return { alpha, logDeterminant, whiten };
+    return { alpha: exponentOver(kind, longest), prior: kind.prior, logDeterminant, whiten };
   });
 }
 
-function factorOf(alpha: number, grid: Float64Array): { factor: Float64Array; log: number } {
-  const factor = differenceCovariance(alpha, grid);
+function factorOf(kind: NoiseKind, grid: Float64Array): { factor: Float64Array; log: number } {
+  const factor = differenceCovariance(kind, grid);
   const log = choleskyInPlace(factor, grid.length - 1);
   return { factor, log };
 }

@@ -21,7 +21,7 @@ export type AirDensityCorrection =
  *   y − k (ρ − 1.2), k = df0/dρ
  *
  * k comes from the calibration where it is given, else from the regression of the references on density, fitted together
- * with drift, known steps and, where given, temperature under power-law noise; that needs at least 20 references whose
+ * with drift, known steps and, where given, temperature; that needs at least 20 references whose
  * densities span 1 %. Else nothing is corrected, and the reason said.
  *
  * @param atDays Times of the references in days, rising.

@@ -49,8 +49,8 @@ export type TemperatureSeries = {
  *   y = a + d t + b₁ θ + b₂ θ², θ = sensor temperature − reference
  *
  * without temperature, linear, quadratic, and each with the sensor lagging behind the thermometer (first order, τ fitted
- * together); chosen by AICc. Noise is power-law of unknown exponent, so standard errors hold under white, flicker and
- * random walk noise.
+ * together); chosen by AICc. Noise is of unknown kind (`noiseKinds`), so standard errors hold under white,
+ * flicker and random walk noise.
  *
  * Errors of the thermometer. A common offset does not touch the coefficient. Scatter of its phase means makes b₁ too
  * small; the share s = u² tr M / θᵀMθ, with M the weights of the fit after drift and steps, is returned, and b₁ s/(1 − s)

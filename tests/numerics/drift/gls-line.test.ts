@@ -15,11 +15,11 @@ test("equals an independent computation on a series with holes", () => {
   const x = at.map((i) => 0.5 * i + 0.01 * Math.sin(i));
   const series = lcgSeries();
   const found = glsLine({ x, y: x.map((time, k) => series[at[k]] + 0.02 * time) });
-  expect(relativeError(found?.slope, 0.025044385217394657)).toBeLessThan(1e-9);
-  expect(relativeError(found?.u, 0.0057337916215283065)).toBeLessThan(1e-9);
-  expect(relativeError(found?.alpha, -0.11958633722284706)).toBeLessThan(1e-9);
-  expect(relativeError(found?.lower, 0.013548825152606345)).toBeLessThan(1e-9);
-  expect(relativeError(found?.intercept, 0.42918793352885204)).toBeLessThan(1e-9);
+  expect(relativeError(found?.slope, 0.025065735253615495)).toBeLessThan(1e-9);
+  expect(relativeError(found?.u, 0.007264997666177232)).toBeLessThan(1e-9);
+  expect(relativeError(found?.alpha, -0.19191000615999068)).toBeLessThan(1e-9);
+  expect(relativeError(found?.lower, 0.010500291903962195)).toBeLessThan(1e-9);
+  expect(relativeError(found?.intercept, 0.4288676813456944)).toBeLessThan(1e-9);
 });
 
 /** Hosking, Biometrika 68 (1981): white noise has V = 2σ² at every lag, random walk V = h. */
@@ -53,7 +53,24 @@ describe("95 % intervals cover the true slope in 92 to 99.7 % of series", () => 
     const chance = 300 * Math.sqrt((0.95 * 0.05) / runs); // three standard errors of the share
     expect((100 * held) / runs).toBeGreaterThan(92 - chance);
     expect((100 * held) / runs).toBeLessThan(99.7 + 300 * Math.sqrt((0.997 * 0.003) / runs));
-    expect(Math.sqrt(claimed / scattered)).toBeLessThan(1.8); // what doubt about the noise may cost
+    expect(Math.sqrt(claimed / scattered)).toBeLessThan(2.1); // what doubt about the noise may cost
+  });
+});
+
+/** White noise on a random walk: no exponent stands for it. Without its own kinds, 95 % intervals would cover half of it. */
+describe("white noise on a random walk, N = 100", () => {
+  test.each([0.1, 0.2])("steps of %f", { timeout: 600_000 }, (walk) => {
+    const runs = full ? 600 : 100;
+    const n = 100;
+    const [white, steps] = [0, -2].map((alpha) => powerLawNoise({ alpha, length: n, seed: 40 - alpha }));
+    const x = Float64Array.from({ length: n }, (_, i) => i);
+    let held = 0;
+    for (let run = 0; run < runs; run++) {
+      const walked = steps();
+      const { lower, upper } = glsLine({ x, y: white().map((value, i) => value + walk * walked[i]) }) ?? impossible();
+      if (lower <= 0 && upper >= 0) held++;
+    }
+    expect((100 * held) / runs).toBeGreaterThan(72 - 300 * Math.sqrt((0.72 * 0.28) / runs));
   });
 });
 
