@@ -44,13 +44,15 @@ export async function readBackToAir(campaignId: string): Promise<BackToAirAnswer
 
 /** f0 in the course of each air phase; from the repeats where a version that kept no course closed it. */
 async function readCourses(campaignId: string, fitRunId: string): Promise<Map<string, (number | null)[]>> {
-  const stored = await rows<{ phaseId: string; course: (number | null)[] }>(
-    `select p.id as "phaseId", s.course from phase p join phase_summary s on s.phase_id = p.id and s.fit_run_id = $2
-      where p.campaign_id = $1 and p.medium = 'air' and s.course is not null`,
+  const stored = await rows<{ phaseId: string; course: (number | null)[] | null }>(
+    `select p.id as "phaseId", s.course from phase p join phase_summary s on s.phase_id = p.id and s.fit_run_id = $2 where p.campaign_id = $1 and p.medium = 'air'`,
     [campaignId, fitRunId],
   );
-  const courses = new Map(stored.map(({ phaseId, course }) => [phaseId, course]));
-  const unfilled = (await selectPhases(campaignId, fitRunId, { medium: "air" })).filter(({ phaseId, closed }) => closed && !courses.has(phaseId));
+  const courses = new Map(stored.map(({ phaseId, course }) => [phaseId, course ?? []]));
+  if (stored.every(({ course }) => course)) return courses;
+
+  const without = new Set(stored.filter(({ course }) => !course).map(({ phaseId }) => phaseId));
+  const unfilled = (await selectPhases(campaignId, fitRunId, { medium: "air" })).filter(({ phaseId }) => without.has(phaseId));
   for await (const { phase, repeats } of loadRepeats(unfilled, { fitRunId, quantity: "f0" })) courses.set(phase.phaseId, courseOf(repeats.values));
   return courses;
 }

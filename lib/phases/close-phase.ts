@@ -32,7 +32,7 @@ const PHASE = `
          p.set_point_c as "setPointC", p.mount_id as "mountId", p.readout, p.discard,
          s.state in ('skipped', 'failed') as "givenUp",
          coalesce(jsonb_path_query_first(v.definition, '$.** ? (@.id == $$block).sweep.centre', jsonb_build_object('block', s.block_id)) = '"track"', false) as tracked
-    from phase p join step s on s.id = p.step_id join protocol_version v on v.id = s.protocol_version_id
+    from phase p join step s on s.id = p.step_id left join protocol_version v on v.id = s.protocol_version_id
     join fit_run r on r.campaign_id = p.campaign_id and case when $2::bigint is null then r.current else r.id = $2 end
    where p.step_id = $1`;
 
@@ -58,9 +58,19 @@ export async function refreshPhaseInEveryRun(transaction: Transaction, { stepId,
  */
 export async function closePhase(transaction: Transaction, { stepId, fitRunId, now }: { stepId: string; fitRunId?: string; now: Date }): Promise<ClosedPhase | undefined> {
   const phase = await row<PhaseRow>(PHASE, [stepId, fitRunId ?? null], transaction);
-  if (!phase) return undefined;
-  const { columns, pressurePa } = await readColumns(transaction, phase);
-  const excluded = await rows<{ idx: number }>(`select idx from exclusion where step_id = $1 and undone_at is null`, [stepId], transaction);
+  return phase && close(transaction, phase, await readColumns(transaction, phase), now);
+}
+
+/** The same for whoever has just stored the repeats and has them at hand, as an import has: nothing is read back. */
+export async function closeMeasured(transaction: Transaction, { stepId, measured, now }: { stepId: string; measured: Measured; now: Date }): Promise<ClosedPhase | undefined> {
+  const phase = await row<PhaseRow>(PHASE, [stepId, null], transaction);
+  return phase && close(transaction, phase, measured, now);
+}
+
+export type Measured = { columns: PhaseColumns; pressurePa: number | null };
+
+async function close(transaction: Transaction, phase: PhaseRow, { columns, pressurePa }: Measured, now: Date): Promise<ClosedPhase> {
+  const excluded = await rows<{ idx: number }>(`select idx from exclusion where step_id = $1 and undone_at is null`, [phase.stepId], transaction);
   markLeftOut(columns, { discard: phase.discard, excluded: new Set(excluded.map(({ idx }) => idx)) });
   const summary = summarise(columns, { medianR1: await medianR1(transaction, phase) });
   const values = isWithoutValue(phase, summary) ? withoutValue(summary) : summary;
@@ -77,7 +87,7 @@ const withoutValue = (summary: PhaseSummaryValues): PhaseSummaryValues => ({ ...
 
 type ReadingRow = Repeat & { pressurePa: number | null };
 
-async function readColumns(transaction: Transaction, { stepId, fitRunId }: PhaseRow): Promise<{ columns: PhaseColumns; pressurePa: number | null }> {
+async function readColumns(transaction: Transaction, { stepId, fitRunId }: PhaseRow): Promise<Measured> {
   const readings = await rows<ReadingRow>(
     `select r.idx, r.at, r.temperature_c as "temperatureC", r.pressure_pa as "pressurePa", f.f0_hz as "f0Hz", f.q, f.f0_std_hz as "f0StdHz",
             coalesce(f.flags, r.flags) as flags

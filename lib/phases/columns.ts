@@ -21,7 +21,8 @@ export type PhaseColumns = {
 
 const BYTES_EACH = 8 * 5 + 4 + 2 + 1;
 
-function emptyColumns(n: number): PhaseColumns {
+/** For n repeats, all zero. */
+export function emptyColumns(n: number): PhaseColumns {
   return columnsOn(new ArrayBuffer(n * BYTES_EACH), n);
 }
 

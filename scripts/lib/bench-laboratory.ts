@@ -51,7 +51,7 @@ export async function startBenchLaboratory({ rigs = 1, ...given }: Given, later:
   return { url, tokens };
 }
 
-async function makeCampaigns({ repeats, points }: Given, rigs: number): Promise<string[]> {
+export async function makeCampaigns({ repeats, points }: Given, rigs: number): Promise<string[]> {
   const now = new Date();
   const person = await createFirstAdministrator({ email: "bench@longreed.example", name: "Bench", password: "of no use elsewhere", now });
   const by = { id: person.id, name: person.name, role: person.role };
