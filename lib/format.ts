@@ -84,6 +84,9 @@ const WORDS = ["no", "one", "two", "three", "four", "five", "six", "seven", "eig
 /** Counts in sentences are words up to twelve: `three rigs`. */
 export const inWords = (n: number): string => WORDS[n] ?? formatCount(n);
 export const capitalised = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
+
+/** The same for a text that may begin with a quantity: `f0 in air drifts` stays. */
+export const asSentence = (text: string): string => (/^f0\b/.test(text) ? text : capitalised(text));
 export const plural = (n: number, one: string, many = `${one}s`): string => (n === 1 ? one : many);
 /** `a, b and c`. */
 export const listOf = (items: readonly string[]): string => (items.length < 2 ? (items[0] ?? "") : `${items.slice(0, -1).join(", ")} and ${items[items.length - 1]}`);

@@ -7,8 +7,8 @@ import { formatCount } from "@/lib/format";
 import { formatDuration } from "@/lib/format-time";
 import { HATCH } from "@/components/strip/tint";
 import { AxisX, AxisY } from "./axes";
-import { isDrawable, logRange, notMeasured, type DeviationCurve, type DeviationPoint } from "./deviation";
-import { acrossShifts, CurveDrawing, labelPlaces, NoiseGuides } from "./deviation-curves";
+import { isDrawable, logRange, notMeasured, placeLabels, type DeviationCurve, type DeviationPoint } from "./deviation";
+import { acrossShifts, CurveDrawing, labelWishes, NoiseGuides, noiseGuides } from "./deviation-curves";
 import { NoiseLanes, NOISE_LANE_PX } from "./noise-lanes";
 import { Plot } from "./plot";
 import { QuantityLabel, quantityText, type PlotQuantity } from "./plot-quantity";
@@ -52,9 +52,9 @@ export function DeviationChart({ label, sentence, file, curves, quantity = ALLAN
   const [x0 = 1, x1 = 10] = x.domain();
   const [y0 = 1, y1 = 10] = y.domain();
   const empty = notMeasured(drawn);
-  const labels = labelPlaces(drawn.map(({ within }) => within.at(-1)), x, y);
-  const acrossLabels = labelPlaces(drawn.map(({ across }) => across.at(-1)), x, y);
   const shifts = acrossShifts(drawn, x);
+  const guides = noiseGuides({ curves: drawn, x, y, right, small });
+  const places = placeLabels(labelWishes(drawn, shifts, x, y), { right, bottom: bottom - 4, taken: guides });
 
   function onKeyDown(event: KeyboardEvent) {
     const last = points.length - 1;
@@ -85,8 +85,8 @@ export function DeviationChart({ label, sentence, file, curves, quantity = ALLAN
                 {x(empty[1]) - x(empty[0]) > 60 && <text className="halo" x={(x(empty[0]) + x(empty[1])) / 2} y={bottom - 10} textAnchor="middle">not measured</text>}
               </g>
             )}
-            <NoiseGuides curves={drawn} x={x} y={y} right={right} small={small} />
-            {drawn.map((curve, i) => <CurveDrawing key={curve.id} curve={curve} x={x} y={y} top={top} labelY={labels[i]} acrossLabelY={acrossLabels[i]} shift={shifts[i] ?? 0} />)}
+            <NoiseGuides guides={guides} />
+            {drawn.map((curve, i) => <CurveDrawing key={curve.id} curve={curve} x={x} y={y} top={top} place={places[i]} acrossPlace={places[drawn.length + i]} shift={shifts[i] ?? 0} />)}
             {drawn.some(({ across }) => across.length > 0) && !small && <text className="halo" x={right} y={top + 12} textAnchor="end">hollow: from phase to phase</text>}
             {here && <circle cx={x(here.point.tau)} cy={y(here.point.deviation)} r="6.5" fill="none" stroke="var(--ink)" strokeWidth="1.6" />}
             <QuantityLabel quantity={quantity} x={left} y={8} />

@@ -69,16 +69,42 @@ export function noiseStretches(points: readonly DeviationPoint[]): { from: numbe
   return stretches;
 }
 
-/** Heights of labels, moved down until those nearer than `reach` along x are at least `apart` from each other. */
-export function spreadLabels(places: readonly { x: number; y: number }[], apart: number, reach: number): number[] {
-  const settled: { x: number; y: number }[] = [];
-  const heights = places.map(({ y }) => y);
-  const order = places.map((place, i) => ({ ...place, i })).sort((a, b) => a.y - b.y);
-  for (const { x, y, i } of order) {
-    const near = settled.filter((label) => Math.abs(label.x - x) < reach).map((label) => label.y);
-    const free = near.reduce((height, taken) => (height - taken < apart ? taken + apart : height), y);
-    settled.push({ x, y: free });
-    heights[i] = free;
+/** A label beside the point it belongs to. */
+export type LabelWish = { x: number; y: number; text: string; /** From the point to the text. */ gap: number };
+export type LabelPlace = { x: number; y: number; anchor: "start" | "end" };
+type Box = { from: number; to: number; y: number };
+
+const PX_PER_CHARACTER = 6.6;
+const APART_PX = 15;
+
+const boxOf = ({ x, y, anchor }: LabelPlace, text: string): Box => {
+  const width = text.length * PX_PER_CHARACTER;
+  return anchor === "start" ? { from: x, to: x + width, y } : { from: x - width, to: x, y };
+};
+
+/**
+ * Where labels stand: at the right of their points, or at the left where the plot ends, each moved down until it touches no
+ * other and none of `taken`, or up where there is no room below. A label without a point has no place.
+ */
+export function placeLabels(wishes: readonly (LabelWish | undefined)[], { right, bottom, taken = [] }: { right: number; bottom: number; taken?: readonly (LabelPlace & { text: string })[] }): (LabelPlace | undefined)[] {
+  const boxes = taken.map((label) => boxOf(label, label.text));
+  const places: (LabelPlace | undefined)[] = wishes.map(() => undefined);
+  const order = wishes.flatMap((wish, i) => (wish ? [{ wish, i }] : [])).sort((a, b) => a.wish.y - b.wish.y);
+  for (const { wish, i } of order) {
+    const atRight: LabelPlace = { x: wish.x + wish.gap, y: wish.y, anchor: "start" };
+    const beside: LabelPlace = boxOf(atRight, wish.text).to <= right ? atRight : { x: wish.x - wish.gap, y: wish.y, anchor: "end" };
+    const below = moved(beside, wish.text, boxes, 1);
+    const place = below.y <= bottom ? below : moved(beside, wish.text, boxes, -1);
+    boxes.push(boxOf(place, wish.text));
+    places[i] = place;
   }
-  return heights;
+  return places;
+}
+
+/** Down (`1`) or up (`-1`) past every box that it touches. */
+function moved(place: LabelPlace, text: string, boxes: readonly Box[], direction: 1 | -1): LabelPlace {
+  const { from, to } = boxOf(place, text);
+  const near = boxes.filter((box) => box.from < to && box.to > from).map(({ y }) => y);
+  const inOrder = near.sort((a, b) => (a - b) * direction);
+  return { ...place, y: inOrder.reduce((y, takenY) => (Math.abs(takenY - y) < APART_PX ? takenY + direction * APART_PX : y), place.y) };
 }

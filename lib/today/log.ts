@@ -1,6 +1,6 @@
 import { rows } from "@/lib/db";
 import { whatOf } from "@/lib/alarms/words";
-import { capitalised } from "@/lib/format";
+import { asSentence } from "@/lib/format";
 import type { TodayAnswer } from "@/lib/today/schema";
 
 const MOST = 12;
@@ -25,7 +25,7 @@ export async function readLog({ since }: { since: Date }): Promise<TodayAnswer["
 
 function sentenceOf(who: string, kind: string, text: string): string {
   const told = kind === "alarm opened" ? whatOf({ kind, text }) : text;
-  const said = told.startsWith("f0 ") ? told : capitalised(told);
+  const said = asSentence(told);
   const by = who !== "Longreed" && !said.includes(who) ? `, ${who}` : "";
   return `${said.replace(/\.$/, "")}${by}.`;
 }

@@ -2,7 +2,7 @@ import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { tickDecimals } from "@/components/charts/axes";
 import { bucketStretches, type Bucket } from "@/components/charts/bucket-columns";
-import { logRange, noiseStretches, notMeasured, spreadLabels, type DeviationPoint } from "@/components/charts/deviation";
+import { logRange, noiseStretches, notMeasured, placeLabels, type DeviationPoint } from "@/components/charts/deviation";
 import { tableAsCsv } from "@/components/charts/save";
 import { decadeTicks, minorTicks, rangeOf, roundTicks } from "@/components/charts/ticks";
 import { closedTimeAxis, timeTicks, trueTimeAxis } from "@/components/charts/time-axis";
@@ -136,8 +136,27 @@ describe("the deviation plot", () => {
       { from: 1440 / Math.SQRT2, to: 1440 * Math.SQRT2, noise: "flicker" },
     ]);
   });
+  const label = (x: number, y: number, text = "water") => ({ x, y, text, gap: 9 });
+  const room = { right: 400, bottom: 300 };
   it("moves labels apart only where they would touch", () => {
-    expect(spreadLabels([{ x: 0, y: 10 }, { x: 5, y: 12 }, { x: 200, y: 11 }], 16, 70)).toEqual([10, 26, 11]);
+    expect(placeLabels([label(0, 10), undefined, label(5, 12), label(200, 11)], room)).toEqual([
+      { x: 9, y: 10, anchor: "start" },
+      undefined,
+      { x: 14, y: 25, anchor: "start" },
+      { x: 209, y: 11, anchor: "start" },
+    ]);
+  });
+  it("puts a label that would leave the plot at the left of its point", () => {
+    expect(placeLabels([label(390, 50, "Brine of thirty-five per mille")], room)).toEqual([{ x: 381, y: 50, anchor: "end" }]);
+  });
+  it("goes up where there is no room below, and past what is written already", () => {
+    const taken = [{ x: 9, y: 295, anchor: "start" as const, text: "slope −½" }];
+    expect(placeLabels([label(0, 296)], { ...room, taken })).toEqual([{ x: 9, y: 280, anchor: "start" }]);
+  });
+  it("leaves no two labels on each other, however many there are", () => {
+    const places = placeLabels(Array.from({ length: 9 }, (_, i) => label(380 + (i % 3) * 5, 100 + i, "2-Propanol")), room);
+    const heights = places.map((place) => place?.y ?? NaN).sort((a, b) => a - b);
+    expect(heights.slice(1).every((y, i) => y - heights[i] >= 15)).toBe(true);
   });
 });
 

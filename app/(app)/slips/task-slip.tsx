@@ -8,9 +8,9 @@ import { formatAgo, formatRecent } from "@/lib/format-time";
 import type { KeptAnswer } from "@/lib/tasks/outbox";
 import type { TaskAnswer } from "@/lib/tasks/schema";
 import { useOutbox } from "../outbox/outbox-provider";
+import { LoadPort } from "../record/load-port";
+import { MountSensor } from "../record/mount-sensor";
 import { CannotDialog } from "./cannot-dialog";
-import { LoadForTask } from "./load-for-task";
-import { MountForTask } from "./mount-for-task";
 import { SendingSlip } from "./sending-slip";
 import { headOf, restOf } from "./task-words";
 import { useAtHand } from "./use-at-hand";
@@ -70,8 +70,8 @@ export function TaskSlip({ task, now, may, inHand, onLater }: TaskSlipProps) {
       <p>{restOf(task)}</p>
       {kept?.refusal && <p role="alert" className="font-medium">It was not taken: {kept.refusal}</p>}
       {asks === "cannot" && <CannotDialog title={headOf(task)} holds={task.holds} onClose={close} onCannot={(note) => answer("cannot", note)} />}
-      {asks === "load" && task.port !== undefined && <LoadForTask rigId={task.rigId} port={task.port} onClose={close} onKeep={(call) => keep(VERBS.load, call)} />}
-      {asks === "mount" && task.sensorId && <MountForTask sensorId={task.sensorId} rigId={task.rigId} onClose={close} onKeep={(call) => keep(VERBS.mount, call)} />}
+      {asks === "load" && task.port !== undefined && <LoadPort rigId={task.rigId} port={task.port} onClose={close} onKeep={(call) => keep(VERBS.load, call)} />}
+      {asks === "mount" && task.sensorId && <MountSensor sensorId={task.sensorId} rigId={task.rigId} onClose={close} onKeep={(call) => keep(VERBS.mount, call)} />}
     </Slip>
   );
 }

@@ -1,6 +1,7 @@
 import { DataTable, type TableColumn } from "@/components/ui/data-table";
 import { Section } from "@/components/ui/page";
 import type { CampaignAnswer } from "@/lib/campaigns/answers";
+import { asSentence, NO_VALUE } from "@/lib/format";
 import { formatDayTime, formatDuration } from "@/lib/format-time";
 import { HOLD_WORDS, type HoldAnswer } from "./hold-words";
 
@@ -8,11 +9,18 @@ type Row = { hold: HoldAnswer; zone: string; now: string };
 
 const HOLDS: readonly TableColumn<Row>[] = [
   { id: "since", head: "Since", slot: "c", width: 150, cell: ({ hold, zone, now }) => <span className="num">{formatDayTime(hold.since, zone, now)}</span> },
-  { id: "long", head: "How long", slot: "b", align: "right", width: 110, cell: ({ hold, now }) => (hold.releasedAt ? formatDuration((Date.parse(hold.until ?? hold.releasedAt) - Date.parse(hold.since)) / 1000) : `${formatDuration((Date.parse(now) - Date.parse(hold.since)) / 1000)}, open`) },
+  { id: "long", head: "How long", slot: "b", align: "right", width: 110, cell: ({ hold, now }) => howLong(hold, now) },
   { id: "reason", head: "Why", slot: "a", width: 190, cell: ({ hold }) => HOLD_WORDS[hold.reason] },
-  { id: "text", head: "In words", slot: "w", cell: ({ hold }) => <span className="whitespace-normal">{hold.text}</span> },
+  { id: "text", head: "In words", slot: "w", cell: ({ hold }) => <span className="whitespace-normal">{asSentence(hold.text)}</span> },
   { id: "by", head: "By", slot: "d", width: 130, cell: ({ hold }) => hold.by ?? "Longreed" },
 ];
+
+/** By the rig's clock; a simulated one may stand still while its campaign is held. */
+function howLong({ since, until, releasedAt }: HoldAnswer, now: string): string {
+  const seconds = (Date.parse(releasedAt ? (until ?? releasedAt) : now) - Date.parse(since)) / 1000;
+  const said = seconds < 1 ? NO_VALUE : formatDuration(seconds);
+  return releasedAt ? said : `${said}, open`;
+}
 
 type Amendment = CampaignAnswer["amendments"][number];
 type AmendmentRow = { amendment: Amendment; zone: string; now: string };

@@ -7,6 +7,7 @@ import { More } from "@/components/ui/more";
 import { Loading, Problem } from "@/components/ui/states";
 import type { CampaignAnswer } from "@/lib/campaigns/answers";
 import { eventsOptions } from "@/lib/campaigns/client";
+import { asSentence } from "@/lib/format";
 import { formatRecent } from "@/lib/format-time";
 
 const FIRST = 8;
@@ -29,7 +30,7 @@ export function Log({ campaign: { id, state, timeZone, now } }: { campaign: Camp
           {shown.map(({ id: eventId, at, clock, text, who }) => (
             <tr key={eventId}>
               <td className="num"><time dateTime={clock ?? at}>{formatRecent(clock ?? at, timeZone, now)}</time></td>
-              <td>{text} <span className="text-ink2">{who}</span></td>
+              <td>{asSentence(text)} <span className="text-ink2">{who}</span></td>
             </tr>
           ))}
         </tbody>

@@ -1,6 +1,8 @@
 import { Findings, type Finding } from "@/components/ui/tag";
 import type { CheckAnswer, Choices } from "@/lib/campaigns/draft-schema";
 import { ProblemError } from "@/lib/http/fetch-json";
+import { RepairButtons } from "./repair-buttons";
+import { repairsOf } from "./repairs";
 import type { Draft } from "./use-draft";
 
 /** Must fix and Check, in a column of their own. */
@@ -13,9 +15,9 @@ export function BeforeQueueing({ findings, ready }: { findings: readonly Finding
   );
 }
 
-type Known = { draft: Draft; choices: Choices; checked: CheckAnswer | undefined; error: Error | null };
+type Known = { draft: Draft; choices: Choices; checked: CheckAnswer | undefined; error: Error | null; onChange: (changes: Partial<Draft>) => void };
 
-export function findingsOf({ draft, choices, checked, error }: Known): Finding[] {
+export function findingsOf({ draft, choices, checked, error, onChange }: Known): Finding[] {
   const must = (text: string): Finding => ({ kind: "must", text });
   const findings: Finding[] = [];
   if (!draft.protocolVersionId) findings.push(must("Choose a protocol version."));
@@ -29,5 +31,9 @@ export function findingsOf({ draft, choices, checked, error }: Known): Finding[]
     }
   if (findings.length > 0) return findings;
   if (error) return error instanceof ProblemError && error.fields.length > 0 ? error.fields.map(({ message }) => must(`${message}.`)) : [must(error.message)];
-  return checked?.problems.map(({ severity, message }): Finding => ({ kind: severity === "error" ? "must" : "check", text: message })) ?? [];
+  const found = (checked?.problems ?? []).map((problem): Finding => {
+    const repairs = repairsOf(problem, draft, choices);
+    return { kind: problem.severity === "error" ? "must" : "check", text: problem.message, repair: repairs.length > 0 && <RepairButtons repairs={repairs} onChange={onChange} /> };
+  });
+  return found.sort((a, b) => Number(b.kind === "must") - Number(a.kind === "must"));
 }

@@ -34,7 +34,7 @@ function QueueForm({ choices, personName, given }: QueueScreenProps & { choices:
   const queue = useQueue(given.draftId);
 
   const checked = body ? check.data : undefined;
-  const findings = findingsOf({ draft, choices, checked, error: check.error });
+  const findings = findingsOf({ draft, choices, checked, error: check.error, onChange: change });
   const open = checked?.cautions.filter(({ code, message }) => acknowledged[code]?.message !== message) ?? [];
   const notPossible = missing({ mustFix: findings.filter(({ kind }) => kind === "must").length, open: open.length, complete: checked !== undefined, fresh: !check.isPlaceholderData && !check.isFetching });
   const queueIt = () => body && checked && queue.queue({ draft: body, acknowledgements: checked.cautions.map(({ code }) => code) });

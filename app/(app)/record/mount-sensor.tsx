@@ -5,10 +5,10 @@ import { sensorOptions } from "@/lib/sensors/client";
 import type { Unsent } from "../outbox/unsent";
 import { MountDialog } from "../sensors/[id]/mount-dialog";
 
-type MountForTaskProps = { sensorId: string; rigId: string; onClose: () => void; onKeep: (unsent: Unsent) => void };
+type MountSensorProps = { sensorId: string; rigId: string; onClose: () => void; onKeep?: (unsent: Unsent) => void };
 
-/** Recording the mount answers the task. */
-export function MountForTask({ sensorId, rigId, onClose, onKeep }: MountForTaskProps) {
+/** Records a mount of a sensor that only its id is known of; a task that asks for it is answered by that. */
+export function MountSensor({ sensorId, rigId, onClose, onKeep }: MountSensorProps) {
   const { data: sensor } = useQuery(sensorOptions(sensorId));
   return sensor ? <MountDialog sensor={sensor} rigId={rigId} onClose={onClose} onKeep={onKeep} /> : null;
 }

@@ -5,10 +5,10 @@ import { rigOptions } from "@/lib/rigs/client";
 import type { Unsent } from "../outbox/unsent";
 import { LoadDialog } from "../rigs/[id]/load-dialog";
 
-type LoadForTaskProps = { rigId: string; port: number; onClose: () => void; onKeep: (unsent: Unsent) => void };
+type LoadPortProps = { rigId: string; port: number; onClose: () => void; onKeep?: (unsent: Unsent) => void };
 
-/** Recording the bottle answers the task. */
-export function LoadForTask({ rigId, port, onClose, onKeep }: LoadForTaskProps) {
+/** Records a bottle on a port of a rig that only its id is known of; a task that asks for it is answered by that. */
+export function LoadPort({ rigId, port, onClose, onKeep }: LoadPortProps) {
   const { data: rig } = useQuery(rigOptions(rigId));
   const found = rig?.ports.find(({ number }) => number === port);
   return rig && found ? <LoadDialog rig={rig} port={found} onClose={onClose} onKeep={onKeep} /> : null;
