@@ -2,6 +2,7 @@ import { PgBoss } from "pg-boss";
 import { startFastPath } from "@/jobs/fast-path";
 import { buryMail, queueMail, sendMail } from "@/jobs/mail";
 import { createQueues, payloads, send, type Payload, type QueueName, type QueueSettings } from "@/jobs/queues";
+import { makeRefit, queueRefits } from "@/jobs/refit";
 import { sweep } from "@/jobs/sweep";
 import { advanceCampaign } from "@/lib/campaigns/advance";
 import { findCampaignsToAdvance, findNextDue } from "@/lib/campaigns/to-advance";
@@ -43,11 +44,14 @@ export async function startWorker({ superviseIntervalSeconds = 30, settings = {}
     await advanceCampaign({ campaignId, now: new Date() });
     await planDue();
   });
+  let isEnding = false;
+  await work(boss, "refit", 1, (data) => makeRefit(data, { isEnding: () => isEnding }));
   await work(boss, "sweep", 1, async () => {
     try {
       await sweep();
     } finally {
       await queueMail(boss);
+      await queueRefits(boss);
       await planDue();
     }
   });
@@ -56,10 +60,13 @@ export async function startWorker({ superviseIntervalSeconds = 30, settings = {}
   const stopFastPath = await startFastPath({
     onError: (key, error) => log.error({ key, error: error instanceof Error ? error.stack : String(error) }, "fast path"),
     onMail: () => queueMail(boss),
+    onRefit: () => queueRefits(boss),
     onAdvanced: planDue,
   });
   await queueMail(boss);
+  await queueRefits(boss);
   return async () => {
+    isEnding = true;
     await stopFastPath();
     await boss.stop({ graceful: true, timeout: 10_000 });
   };

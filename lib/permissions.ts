@@ -28,6 +28,7 @@ export const PERMISSIONS = {
   "edit sensors": researchers,
   "edit liquids": researchers,
   "exclude readings": researchers,
+  "fit again": researchers,
   "edit rigs": administrators,
   "agent tokens": administrators,
   people: administrators,

@@ -30,7 +30,14 @@ export type StepProgress = { volumeMl?: number; times?: number; seconds?: number
 
 export type StepFailure = { code: string; message: string; retry: boolean };
 
-export type FitSettings = { offsetSlope: boolean };
+/** How a fit run fits; `readout` in place of the protocol's. */
+export type FitSettings = { offsetSlope: boolean; readout?: "velocity" | "displacement" };
+
+/** A limit that a fit run breaks, where it breaks it first. */
+export type FoundOnRefit = { limitId: string; kind: string; phaseId: string; stepId: string; cycle: number; value: number; limit: number; unit: string; text: string };
+
+/** Why a file was refused: what its sender was told. */
+export type ImportProblem = { detail: string; errors: { path: string; message: string }[]; errorCount: number };
 
 /** A time range as Sequelize reads and writes it. */
 export type DateRange = [

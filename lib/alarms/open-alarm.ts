@@ -24,6 +24,8 @@ type OpenAlarm = {
   text: string;
   /** What Longreed did about it. */
   actionText: string;
+  /** Told of by fits made again, long after it happened. */
+  foundOnRefit?: boolean;
   mail: boolean;
 };
 
@@ -36,8 +38,8 @@ export async function openAlarm(transaction: Transaction, alarm: OpenAlarm): Pro
   const { now, source } = alarm;
   const opened = await row<{ id: string }>(
     `insert into alarm (campaign_id, rig_id, sensor_id, source, limit_id, kind, state, opened_at, opened_clock, phase_id, step_id, fit_run_id,
-       value, limit_value, unit, text, action_text)
-     values ($1, $2, $3, $4, $5, $6, 'unacknowledged', $7, $8, $9, $10, $11, $12, $13, $14, $15, $16)
+       value, limit_value, unit, text, action_text, found_on_refit)
+     values ($1, $2, $3, $4, $5, $6, 'unacknowledged', $7, $8, $9, $10, $11, $12, $13, $14, $15, $16, $17)
      on conflict do nothing returning id`,
     [
       alarm.campaignId ?? null,
@@ -56,6 +58,7 @@ export async function openAlarm(transaction: Transaction, alarm: OpenAlarm): Pro
       alarm.unit ?? null,
       alarm.text,
       alarm.actionText,
+      alarm.foundOnRefit ?? false,
     ],
     transaction,
   );

@@ -19,6 +19,9 @@ export type ClosedPhase = {
   values: PhaseSummaryValues;
 };
 
+/** The repeats of a phase with their fits, and the mean pressure. */
+export type Measured = { columns: PhaseColumns; pressurePa: number | null };
+
 type PhaseRow = Omit<ClosedPhase, "columns" | "values"> & {
   stepId: string;
   campaignId: string;
@@ -66,8 +69,6 @@ export async function closeMeasured(transaction: Transaction, { stepId, measured
   const phase = await row<PhaseRow>(PHASE, [stepId, null], transaction);
   return phase && close(transaction, phase, measured, now);
 }
-
-export type Measured = { columns: PhaseColumns; pressurePa: number | null };
 
 async function close(transaction: Transaction, phase: PhaseRow, { columns, pressurePa }: Measured, now: Date): Promise<ClosedPhase> {
   const excluded = await rows<{ idx: number }>(`select idx from exclusion where step_id = $1 and undone_at is null`, [phase.stepId], transaction);

@@ -17,11 +17,11 @@ export type RecordFit = {
   flags: FitFlag[];
 };
 
-type Settings = { settings: FitSettings; readout: Readout; asked: AskedSweep };
+type Settings = { settings: FitSettings; readout: Readout; asked: AskedSweep | null };
 
 /**
  * f0 and Q of one stored record, whichever form it has; values that a rig has fitted are taken as given, judged by the sweep it was
- * asked for. What cannot be fitted is flagged `failed`, never thrown.
+ * asked for, where it was asked for one: an imported value was not. What cannot be fitted is flagged `failed`, never thrown.
  */
 export function fitRecord(stored: StoredSweep, { settings, readout, asked }: Settings): RecordFit {
   const record = decodeSweep(stored);
@@ -34,13 +34,13 @@ export function fitRecord(stored: StoredSweep, { settings, readout, asked }: Set
       covarianceF0Q: NaN,
       amplitude: record.amplitudeV ?? NaN,
       noise: NaN,
-      flags: judgeGiven(record, asked),
+      flags: asked ? judgeGiven(record, asked) : record.f0Hz > 0 && record.q > 0 ? [] : ["failed"],
     };
   }
   const fit =
     record.form === "ringDown"
       ? fitRingDown({ sampleHz: record.sampleHz, startS: record.startS, volts: record.volts })
-      : fitResonance(record.sweep, { readout, dwellS: asked.dwellS, offsetSlope: settings.offsetSlope });
+      : fitResonance(record.sweep, { readout: settings.readout ?? readout, dwellS: asked?.dwellS, offsetSlope: settings.offsetSlope });
   return {
     f0Hz: fit.f0Hz,
     q: fit.q,

@@ -7,9 +7,9 @@ import { refreshPhase } from "@/lib/phases/close-phase";
 import { fitRecord } from "@/lib/readings/fit-record";
 import type { FitSettings } from "@/models/json";
 
-const BATCH = 200;
+export const BATCH = 200;
 
-type FitContext = { fitRunId: string; settings: FitSettings; readout: Readout; asked: AskedSweep };
+type FitContext = { fitRunId: string; settings: FitSettings; readout: Readout; asked: AskedSweep | null };
 
 type Asked = { stepId: string; from?: number; now: Date };
 
@@ -45,17 +45,17 @@ async function fitAll({ stepId, from = 0, now }: Asked): Promise<number> {
 }
 
 /** The same within a transaction, for whoever decides on the fits: what came after the last look is in them too. */
-export async function fitRest(transaction: Transaction, stepId: string): Promise<void> {
-  while ((await fitBatch({ stepId, from: 0 }, transaction)) === BATCH);
+export async function fitRest(transaction: Transaction, stepId: string, fitRunId?: string): Promise<void> {
+  while ((await fitBatch({ stepId, fitRunId }, transaction)) === BATCH);
 }
 
 type Waiting = FitContext & { idx: number; kind: number; flags: number; startHz: number | null; stopHz: number | null; points: number; data: Buffer };
 
 // One look-up a reading, by the whole key: PostgreSQL takes a new step for one row and would go through it once for each.
 const WAITING = `
-  select run.id as "fitRunId", run.settings, v.definition->>'readout' as readout, s.params->'sweep' as asked,
+  select run.id as "fitRunId", run.settings, coalesce(v.definition->>'readout', (select readout from phase where step_id = s.id)) as readout, s.params->'sweep' as asked,
          r.idx, r.kind, r.flags, w.start_hz as "startHz", w.stop_hz as "stopHz", w.points, w.data
-    from step s join fit_run run on run.campaign_id = s.campaign_id and run.current join protocol_version v on v.id = s.protocol_version_id
+    from step s join fit_run run on run.campaign_id = s.campaign_id and case when $3::bigint is null then run.current else run.id = $3 end left join protocol_version v on v.id = s.protocol_version_id
    cross join lateral (select idx from reading where step_id = $1 and idx >= $2
                          except select idx from fit where fit_run_id = run.id and step_id = $1 and idx >= $2 order by idx limit ${BATCH}) left_over
    cross join lateral (select * from reading where step_id = $1 and idx = left_over.idx offset 0) r
@@ -63,8 +63,9 @@ const WAITING = `
    where s.id = $1
    order by r.idx`;
 
-async function fitBatch({ stepId, from }: { stepId: string; from: number }, transaction?: Transaction): Promise<number> {
-  const waiting = await rows<Waiting>(WAITING, [stepId, from], transaction);
+/** Fits the first that have no fit yet, in the named run or else the current; returns how many. Fewer than a full batch: nothing is left. */
+export async function fitBatch({ stepId, from = 0, fitRunId }: { stepId: string; from?: number; fitRunId?: string }, transaction?: Transaction): Promise<number> {
+  const waiting = await rows<Waiting>(WAITING, [stepId, from, fitRunId ?? null], transaction);
   if (waiting.length === 0) return 0;
   const [context] = waiting;
   const fits = waiting.map((stored) => ({ stored, fit: fitRecord(stored, context) }));

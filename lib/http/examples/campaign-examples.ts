@@ -23,6 +23,9 @@ const campaign = { protocolVersionId: "12", sensorId: "3", rigId: "1", slots: { 
 
 /** Protocols, campaigns, and what they ask of people. */
 export const CAMPAIGN_EXAMPLES = {
+  "POST /api/campaigns/{id}/fit-runs": { "With a level offset": { offsetSlope: false, why: "The offset of this cell has no slope" } },
+  "POST /api/campaigns/{id}/exclusions": { "Two repeats after a knock": { phaseId: "41", indices: [17, 18], why: "Somebody leaned on the bench at 09:40" } },
+  "POST /api/exclusions/{id}/take-back": { "After a second look": { why: "The knock was at the other bench" } },
   "POST /api/protocols": { "Three fills of one liquid": { definition } },
   "POST /api/protocols/drafts": { "A first thought": { draft: { name: "Ageing in brine", blocks: [] } } },
   "POST /api/protocols/estimate": { "On one rig": { definition, rigId: "1", sensorId: "3" } },
