@@ -1,6 +1,7 @@
 import { describe, expect, test } from "vitest";
 import { ewma, returnEwma } from "@/lib/numerics/statistics/ewma";
 import { movingRangeSigma } from "@/lib/numerics/statistics/moving-range-sigma";
+import { referenceTable } from "@/tests/numerics/reference-table";
 import { gaussian } from "@/tests/numerics/seeded-noise";
 import { relativeError } from "@/tests/numerics/relative-error";
 import reference from "@/tests/reference/5-metrology/control-charts.json";
@@ -60,4 +61,11 @@ test("moving range of the individuals example", () => {
   expect(relativeError(sigma * 1.128, computed.mr_bar)).toBeLessThan(1e-12);
   expect(relativeError(mean + 3 * sigma, computed.UCL)).toBeLessThan(1e-12);
   expect(movingRangeSigma(Float64Array.of(1))).toBeNaN();
+});
+
+/** ISO 7870-2, d₂ of ranges of two as printed; the exact value is 2/√π. */
+test("moving ranges are scaled by the tabulated d₂", () => {
+  const [{ d2_printed, d2 }] = referenceTable("5-metrology/control-chart-constants.csv");
+  expect(movingRangeSigma(Float64Array.of(0, 1))).toBeCloseTo(1 / d2_printed, 12);
+  expect(Math.abs(1 / movingRangeSigma(Float64Array.of(0, 1)) - d2)).toBeLessThan(5e-4);
 });
