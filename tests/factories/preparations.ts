@@ -80,9 +80,10 @@ async function anExclusion(): Promise<{ id: string; campaignId: string }> {
   return { id, campaignId: await measuredCampaign() };
 }
 
-/** Fits made again beside those that a campaign began with. */
-async function aFitRun(state: "waiting" | "ready"): Promise<{ id: string }> {
+/** Fits made again beside those that a campaign began with; one at a time is being made. */
+async function aFitRun(state: "waiting" | "ready"): Promise<{ id: string; campaignId: string }> {
   const campaignId = await measuredCampaign();
+  await FitRun.update({ state: "cancelled", finishedAt: now }, { where: { campaignId, state: "waiting" } });
   const { settings, codeVersion } = await FitRun.findOne({ where: { campaignId, current: true }, rejectOnEmpty: true });
   return FitRun.create({ campaignId, settings, codeVersion, current: false, state, why: "To see what the settings do", createdBy: (await buildPerson()).id, createdAt: now });
 }
@@ -260,7 +261,7 @@ export const PREPARATIONS: Readonly<Record<string, (example: unknown) => Promise
   "POST /api/campaigns/{id}/exclusions": async () => ({ params: { id: await measuredCampaign() }, ids: { phaseId: (await aPhase()).id } }),
   "POST /api/exclusions/{id}/take-back": () => made(anExclusion()),
   "GET /api/campaigns/{id}/fit-runs": ofMeasured,
-  "POST /api/campaigns/{id}/fit-runs": ofMeasured,
+  "POST /api/campaigns/{id}/fit-runs": async () => ({ params: { id: (await aFitRun("ready")).campaignId } }),
   "GET /api/fit-runs/{id}": () => made(aFitRun("ready")),
   "GET /api/fit-runs/{id}/compare": () => made(aFitRun("ready")),
   "POST /api/fit-runs/{id}/cancel": () => made(aFitRun("waiting")),

@@ -78,7 +78,7 @@ function Lines({ lines, zone, now }: { lines: AuditEventAnswer["lines"]; zone: s
       {lines.map(({ field, from, to }, i) => (
         <li key={i}>
           {field && `${field}: `}
-          {from !== undefined && <>{said(from)} <span aria-label="became">→</span> </>}
+          {from !== undefined && <>{said(from)} <span aria-hidden>→</span><span className="visually-hidden">became</span> </>}
           <span className="text-ink">{said(to)}</span>
         </li>
       ))}

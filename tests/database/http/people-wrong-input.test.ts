@@ -14,7 +14,9 @@ import { prepareCall, sendPrepared, type Otherwise, type PreparedCall } from "..
 import { HOSTILE_TEXTS, placesIn, withText } from "../../factories/wrong-json";
 import { agentToken, at, cookieOf, ORIGIN, request, signedInAs, tokenOf } from "../../factories/session";
 
-const MIB = 1024 * 1024;
+const TOO_LARGE = "x".repeat(9 * 1024 * 1024);
+const TOO_LARGE_INSIDE = gzipSync(TOO_LARGE);
+const TOO_DEEP = ["[".repeat(100_000), `{"a":${"[".repeat(50_000)}${"]".repeat(50_000)}}`];
 
 const forPeople = API_CALLS.filter(({ operation }) => operation.access !== "agent");
 const named = (calls: readonly ApiCall[]) => calls.map((call) => [call.name, call] as const);
@@ -64,12 +66,12 @@ describe.each(named(withBody))("bodies of %s", (_, call) => {
   test("what is no JSON object is 400, what is too large 413, what is of another type 415; nothing changes", async () => {
     const good = JSON.stringify(prepared.get(call.name)?.body);
     await changesNothing(async () => {
-      for (const body of ["{", "nul", "[]", "null", "7", '"text"', "{}}", '{"a":1', "\u0000", "{'a':1}", "NaN", '{"a":NaN}', "[".repeat(100_000), `{"a":${"[".repeat(50_000)}${"]".repeat(50_000)}}`, '{"a\\u0000":1}', '{"\\ud800":1}', '{"nobodyKnowsThis":1}'])
+      for (const body of ["{", "nul", "[]", "null", "7", '"text"', "{}}", '{"a":1', "\u0000", "{'a':1}", "NaN", '{"a":NaN}', ...TOO_DEEP, '{"a\\u0000":1}', '{"\\ud800":1}', '{"nobodyKnowsThis":1}'])
         await refuses(call, { body }, [400], body.slice(0, 12));
       await refuses(call, { body: new Uint8Array([0x7b, 0x22, 0xff, 0xfe, 0x22, 0x7d]) }, [400], "not UTF-8");
-      await refuses(call, { body: "x".repeat(9 * MIB) }, [413], "9 MiB");
+      await refuses(call, { body: TOO_LARGE }, [413], "9 MiB");
       const gzip = { "content-encoding": "gzip" };
-      await refuses(call, { body: gzipSync("x".repeat(9 * MIB)), headers: gzip }, [413], "9 MiB inside gzip");
+      await refuses(call, { body: TOO_LARGE_INSIDE, headers: gzip }, [413], "9 MiB inside gzip");
       await refuses(call, { body: "no gzip", headers: gzip }, [400], "bad gzip");
       await refuses(call, { body: gzipSync(good).subarray(0, 12), headers: gzip }, [400], "short gzip");
       for (const type of ["text/plain", "application/x-www-form-urlencoded", "multipart/form-data; boundary=x", "application/json; charset=latin1", "nonsense"])
