@@ -4,7 +4,7 @@ import { solveCholesky } from "@/lib/numerics/resonance/small-linear";
 import type { Readout } from "@/lib/numerics/resonance/types";
 
 /** f0, Q (as shift and stretch), a, and real and imaginary part of b and c. */
-export const EXACT_PARAMETERS = 7;
+const EXACT_PARAMETERS = 7;
 
 export type ExactParameters = MagnitudeTerms & { f0: number; q: number };
 
@@ -18,7 +18,7 @@ export type ExactModel = {
   residual: Float64Array;
 };
 
-export function emptyExactModel(n: number): ExactModel {
+function emptyExactModel(n: number): ExactModel {
   return {
     cost: 0, gram: new Float64Array(EXACT_PARAMETERS ** 2), gradient: new Float64Array(EXACT_PARAMETERS),
     mean: new Float64Array(n), residual: new Float64Array(n),
@@ -32,7 +32,7 @@ const row = new Float64Array(EXACT_PARAMETERS);
  *
  * @param lift What the noise adds to the mean of every point: 2σ².
  */
-export function exactModel(
+function exactModel(
   { n, f, inverseF, s, power: data }: MagnitudeSweep,
   readout: Readout,
   { f0, q, a, bRe, bIm, cRe, cIm }: ExactParameters,
@@ -123,12 +123,12 @@ export function descendExact(
   return { at, model: here, settled, evaluations };
 }
 
-export function freeOf({ withSlope }: MagnitudeSweep): number {
+function freeOf({ withSlope }: MagnitudeSweep): number {
   return withSlope ? EXACT_PARAMETERS : EXACT_PARAMETERS - 2;
 }
 
 /** The leading block of the normal equations with its diagonal raised. */
-export function raised(gram: Float64Array, free: number, raise: number): Float64Array {
+function raised(gram: Float64Array, free: number, raise: number): Float64Array {
   const block = new Float64Array(free * free);
   for (let j = 0; j < free; j++) {
     for (let k = 0; k < free; k++) block[free * j + k] = gram[EXACT_PARAMETERS * j + k];
