@@ -1,21 +1,26 @@
+import os from "node:os";
 import { heavy, type Heavy } from "@/lib/analysis/heavy";
 
 export type Asked = { [Name in keyof Heavy]: { id: number; name: Name; input: Parameters<Heavy[Name]>[0] } }[keyof Heavy];
 
 export type Answered = { id: number } & ({ value: unknown } | { error: { name: string; message: string } });
 
-function compute(asked: Asked): unknown {
-  return asked.name === "drift" ? heavy.drift(asked.input) : heavy.stability(asked.input);
+// Steps for rigs and pages come before plots, also when the machine has no core to spare.
+os.setPriority(os.constants.priority.PRIORITY_BELOW_NORMAL);
+
+async function answer(asked: Asked): Promise<Answered> {
+  try {
+    return { id: asked.id, value: await (asked.name === "drift" ? heavy.drift(asked.input) : heavy.stability(asked.input)) };
+  } catch (error) {
+    const { name, message } = error instanceof Error ? error : new Error(String(error));
+    return { id: asked.id, error: { name, message } };
+  }
 }
 
-/** The other side of `offLoop`: one computation after the other, until whoever started the process goes. */
+let before: Promise<unknown> = Promise.resolve();
+
+/** The other side of `offLoop`: one computation after the other, as each may hold a million repeats, until whoever started the process goes. */
 process.on("message", (asked: Asked) => {
-  let answer: Answered;
-  try {
-    answer = { id: asked.id, value: compute(asked) };
-  } catch (error) {
-    answer = { id: asked.id, error: error instanceof Error ? { name: error.name, message: error.message } : { name: "Error", message: String(error) } };
-  }
-  process.send?.(answer);
+  before = before.then(async () => process.send?.(await answer(asked)));
 });
 process.on("disconnect", () => process.exit(0));

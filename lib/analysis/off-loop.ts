@@ -2,14 +2,14 @@ import type { ChildProcess } from "node:child_process";
 import type { Answered, Asked } from "@/lib/analysis/heavy-process";
 import type { Heavy } from "@/lib/analysis/heavy";
 
-/** A process that has had nothing to do for so long is ended: it holds some 100 MB. */
+/** A process that has had nothing to do for so long is ended: it holds some 150 MB. */
 const IDLE_MS = 120_000;
 
 type Waiting = { resolve: (value: unknown) => void; reject: (error: Error) => void };
 
 /**
- * Runs a heavy computation in a process of its own, so that neither requests nor steps for rigs wait for it. One such process
- * is started when it is first needed and kept while it has work.
+ * Runs a heavy computation in a process of its own, which reads from the database by itself what it needs, so that neither
+ * requests nor steps for rigs wait for it. One such process is started when it is first needed and kept while it has work.
  *
  * A process rather than a thread: it is started from the sources like the worker, whatever the web application was bundled
  * with, and running out of memory ends it alone.
@@ -35,7 +35,7 @@ class HeavyProcess {
   private start(): ChildProcess {
     // Asked for by name at run time, so that no bundler looks for what is started.
     const { fork } = process.getBuiltinModule("node:child_process");
-    const child = fork("lib/analysis/heavy-process.ts", { cwd: process.cwd(), execArgv: ["--import", "tsx"], serialization: "advanced", stdio: ["ignore", "ignore", "inherit", "ipc"] });
+    const child = fork("lib/analysis/heavy-process.ts", { cwd: process.cwd(), env: { ...process.env, DATABASE_POOL: "2" }, execArgv: ["--import", "tsx"], serialization: "advanced", stdio: ["ignore", "ignore", "inherit", "ipc"] });
     child.on("message", (answer: Answered) => {
       this.settle(answer.id, (one) => {
         if ("error" in answer) one.reject(Object.assign(new Error(answer.error.message), { name: answer.error.name }));
@@ -78,7 +78,7 @@ type DistributiveOmit<Union, Key extends PropertyKey> = Union extends unknown ? 
 const holder = globalThis as typeof globalThis & { longreedHeavy?: HeavyProcess };
 
 /** Computes elsewhere what would hold up this process, with the same result as `heavy[name](input)`. @throws what the computation throws, by name and message. */
-export function offLoop<Name extends keyof Heavy>(name: Name, input: Parameters<Heavy[Name]>[0]): Promise<ReturnType<Heavy[Name]>> {
+export function offLoop<Name extends keyof Heavy>(name: Name, input: Parameters<Heavy[Name]>[0]): Promise<Awaited<ReturnType<Heavy[Name]>>> {
   const process = (holder.longreedHeavy ??= new HeavyProcess());
-  return process.run({ name, input } as DistributiveOmit<Asked, "id">) as Promise<ReturnType<Heavy[Name]>>;
+  return process.run({ name, input } as DistributiveOmit<Asked, "id">) as Promise<Awaited<ReturnType<Heavy[Name]>>>;
 }
