@@ -9,6 +9,7 @@ type Options = {
   onError: (key: string, error: unknown) => void;
   onMail: () => Promise<void>;
   onRefit: () => Promise<void>;
+  onImport: () => Promise<void>;
   /** A campaign has moved: it may have a new time to be looked at. */
   onAdvanced: () => Promise<void>;
 };
@@ -20,7 +21,7 @@ type Options = {
  *
  * @returns Ends listening and waits for the work in hand.
  */
-export async function startFastPath({ onError, onMail, onRefit, onAdvanced }: Options): Promise<() => Promise<void>> {
+export async function startFastPath({ onError, onMail, onRefit, onImport, onAdvanced }: Options): Promise<() => Promise<void>> {
   const queue = new KeyedQueue(onError);
   const advance = (campaignId: string) => queue.run(`campaign:${campaignId}`, async () => {
       await advanceCampaign({ campaignId, now: new Date() });
@@ -38,6 +39,7 @@ export async function startFastPath({ onError, onMail, onRefit, onAdvanced }: Op
     else if (what === "phases") queue.run(`results:${key}`, () => refreshResults({ campaignId: key }));
     else if (what === "mail") queue.run("mail", onMail);
     else if (what === "refit") queue.run("refit", onRefit);
+    else if (what === "imports") queue.run("imports", onImport);
     else if (what === "*") {
       catchUp();
       queue.run("mail", onMail);

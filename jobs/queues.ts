@@ -9,6 +9,7 @@ export const payloads = {
   "mail-dead": z.object({ notificationId: z.string() }),
   advance: z.object({ campaignId: z.string() }),
   refit: z.object({ fitRunId: z.string() }),
+  import: z.object({ importRunId: z.string() }),
   sweep: z.object({}),
 } as const;
 
@@ -36,6 +37,7 @@ const QUEUES = [
   { name: "advance", policy: "exclusive", retryLimit: 5, retryDelay: 1, retryBackoff: true, expireInSeconds: 300, retentionSeconds: 30 * DAY_S, notify: true },
   // As long as it takes; a worker that is gone is missed after half a minute.
   { name: "refit", policy: "exclusive", retryLimit: 20, retryDelay: 1, retryBackoff: true, retryDelayMax: 60, expireInSeconds: DAY_S, heartbeatSeconds: 30, notify: true },
+  { name: "import", policy: "exclusive", retryLimit: 5, retryDelay: 1, retryBackoff: true, retryDelayMax: 60, expireInSeconds: DAY_S, heartbeatSeconds: 30, notify: true },
   { name: "sweep", policy: "short", retryLimit: 1, expireInSeconds: 120, retentionSeconds: 3600, deleteAfterSeconds: 3600, notify: true },
 ] as const satisfies readonly ({ name: QueueName } & Parameters<PgBoss["createQueue"]>[1])[];
 

@@ -1,5 +1,6 @@
 import { PgBoss } from "pg-boss";
 import { startFastPath } from "@/jobs/fast-path";
+import { makeImport, queueImports } from "@/jobs/import";
 import { buryMail, queueMail, sendMail } from "@/jobs/mail";
 import { createQueues, payloads, send, type Payload, type QueueName, type QueueSettings } from "@/jobs/queues";
 import { makeRefit, queueRefits } from "@/jobs/refit";
@@ -46,12 +47,14 @@ export async function startWorker({ superviseIntervalSeconds = 30, settings = {}
   });
   let isEnding = false;
   await work(boss, "refit", 1, (data) => makeRefit(data, { isEnding: () => isEnding }));
+  await work(boss, "import", 1, (data) => makeImport(data, { isEnding: () => isEnding }));
   await work(boss, "sweep", 1, async () => {
     try {
       await sweep();
     } finally {
       await queueMail(boss);
       await queueRefits(boss);
+      await queueImports(boss);
       await planDue();
     }
   });
@@ -61,10 +64,12 @@ export async function startWorker({ superviseIntervalSeconds = 30, settings = {}
     onError: (key, error) => log.error({ key, error: error instanceof Error ? error.stack : String(error) }, "fast path"),
     onMail: () => queueMail(boss),
     onRefit: () => queueRefits(boss),
+    onImport: () => queueImports(boss),
     onAdvanced: planDue,
   });
   await queueMail(boss);
   await queueRefits(boss);
+  await queueImports(boss);
   return async () => {
     isEnding = true;
     await stopFastPath();

@@ -26,7 +26,7 @@ export const CAMPAIGNS_FROM = `
     left join lateral (
       select su.f0_mean - b.f0_hz as hz, b.f0_hz as baseline, ${SHIFT_U} as u
         from phase ph join phase_summary su on su.phase_id = ph.id join fit_run r on r.id = su.fit_run_id and r.current
-        join baseline b on b.campaign_id = ph.campaign_id and b.mount_id = ph.mount_id and b.set_point_c is not distinct from ph.set_point_c
+        join baseline b on b.campaign_id = ph.campaign_id and b.mount_id is not distinct from ph.mount_id and b.set_point_c is not distinct from ph.set_point_c
                        and b.readout = ph.readout and b.fit_run_id = r.id
        where ph.campaign_id = c.id and ph.role = 'reference' and ph.medium = 'air' and su.f0_mean is not null
        order by ph.sequence desc limit 1) air on true

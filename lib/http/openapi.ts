@@ -90,13 +90,11 @@ function describe(path: string, method: Method, operation: Operation, components
     "x-problems": problemCodesOf(call, operation),
     security: access === "public" ? [] : agent ? [{ agent: [] }] : [{ session: [] }, { token: [] }],
     ...(parameters.length > 0 && { parameters }),
-    ...((operation.body || operation.consumes) && {
-      requestBody: {
-        content: withExamples(content(operation.body ? schemaOf(operation.body, "input", "body") : {}, [operation.consumes ?? "application/json"]), EXAMPLES[call]),
-      },
-    }),
+    ...(operation.body && { requestBody: { content: withExamples(content(schemaOf(operation.body, "input", "body"), ["application/json"]), EXAMPLES[call]) } }),
+    ...(operation.form && { requestBody: { content: withExamples(content(withFile(schemaOf(operation.form, "input", "form")), ["multipart/form-data"]), EXAMPLES[call]) } }),
     responses: {
       [empty && status === 200 ? "204" : String(status)]: { description: summary, ...(!empty && { content: shown }) },
+      ...Object.fromEntries(Object.entries(operation.otherwise ?? {}).map(([code, means]) => [code, { description: means, content: shown }])),
       ...(mayBeEmpty && { 204: { description: "Nothing is in it" } }),
       default: { description: "A problem, see its type", content: { "application/problem+json": { schema: { $ref: "#/components/schemas/Problem" }, example: PROBLEM_EXAMPLE } } },
     },
@@ -108,6 +106,13 @@ function withExamples(content: Record<string, Media>, examples: Readonly<Record<
   if (named.length === 0) return content;
   return Object.fromEntries(Object.entries(content).map(([type, media]) => [type, { ...media, examples: Object.fromEntries(named) }]));
 }
+
+/** The fields of an upload with the file that they are beside. */
+const withFile = (fields: Json): Json => ({
+  ...fields,
+  required: ["file", ...(Array.isArray(fields.required) ? fields.required : [])],
+  properties: { file: { type: "string", contentMediaType: "application/octet-stream", description: "The file itself" }, ...(fields.properties as Json) },
+});
 
 const header = (name: string, description: string, maxLength: number): Parameter => ({
   name,

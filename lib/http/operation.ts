@@ -11,8 +11,10 @@ export type Operation = {
   body?: z.ZodType;
   answer?: z.ZodType;
   status: number;
-  /** Media type of the body, where it is not JSON. */
-  consumes?: string;
+  /** What further statuses mean that the call answers with, its answer being the same. */
+  otherwise?: Readonly<Record<number, string>>;
+  /** Fields beside the `file` of an upload, which is multipart/form-data. */
+  form?: z.ZodType;
   /** Further media types of the answer. */
   produces?: readonly string[];
 };

@@ -119,7 +119,10 @@ function curlOf(method: string, path: string, { "x-access": access }: Documented
   const lines = [`curl ${server}${path.replaceAll(/\{\w+\}/g, "118")}`];
   if (method !== "GET") lines[0] = lines[0].replace("curl", `curl -X ${method}`);
   if (access !== "public") lines.push(`-H "Authorization: Bearer $TOKEN"`);
-  if (example !== undefined && type) {
+  if (type === "multipart/form-data") {
+    const fields = Object.entries((example ?? {}) as Record<string, unknown>);
+    lines.push("-F file=@readings.csv", ...fields.map(([name, value]) => `-F '${name}=${(typeof value === "string" ? value : JSON.stringify(value)).replaceAll("'", `'\\''`)}'`));
+  } else if (example !== undefined && type) {
     lines.push(`-H "Content-Type: ${type}"`);
     lines.push(`-d '${JSON.stringify(example).replaceAll("'", `'\\''`)}'`);
   }

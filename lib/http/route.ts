@@ -39,9 +39,12 @@ export type RouteOptions<Who extends Access, P, Q, B, A> = {
   answer?: z.ZodType<A>;
   /** Status of a plain answer; 200 unless given. */
   status?: 200 | 201 | 202;
+  /** What further statuses mean that the handler answers with by `Answer`. */
+  otherwise?: Readonly<Record<number, string>>;
   /** The answer holds a secret that must not be kept with its Idempotency-Key. */
   shownOnce?: boolean;
-  consumes?: string;
+  /** Of the fields beside the file of an upload (multipart/form-data). The handler streams the body and sees to the Idempotency-Key, as only it knows what was sent. */
+  form?: z.ZodType;
   produces?: readonly string[];
   /** Plain data → JSON; `undefined` → 204; `new Answer(status, data)` → that status; a `Response` for streams. */
   handle: (call: Call<Who, P, Q, B>) => Result<NoInfer<A>> | Promise<Result<NoInfer<A>>>;
@@ -58,9 +61,9 @@ export type RouteOptions<Who extends Access, P, Q, B, A> = {
 export function route<Who extends Access, P = Record<string, never>, Q = Record<string, never>, B = undefined, A = unknown>(
   options: RouteOptions<Who, P, Q, B, A>,
 ): Handler {
-  const { permission, summary, description, params, query, body, answer, status = 200, consumes, produces } = options;
+  const { permission, summary, description, params, query, body, answer, status = 200, otherwise, form, produces } = options;
 
-  return withOperation({ summary, description, access: permission, params, query, body, answer, status, consumes, produces }, async (request, context) => {
+  return withOperation({ summary, description, access: permission, params, query, body, answer, status, otherwise, form, produces }, async (request, context) => {
     const requestId = requestIdOf(request);
     const url = new URL(request.url);
     try {
@@ -78,7 +81,7 @@ export function route<Who extends Access, P = Record<string, never>, Q = Record<
       const parsed = (body && sent ? validate(body, parseJson(sent.text)) : undefined) as B;
       const work = async () => checkAnswer(answer, await options.handle({ ...call, body: parsed }));
 
-      const key = request.method === "POST" && person ? idempotencyKey(request) : undefined;
+      const key = request.method === "POST" && person && !form ? idempotencyKey(request) : undefined;
       const result =
         key && person
           ? await once(

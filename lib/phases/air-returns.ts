@@ -27,7 +27,7 @@ export function readAirReturns(campaignIds: readonly string[]): Promise<AirRetur
      select ph.campaign_id as "campaignId", ph.cycle, ph.id as "phaseId", ph.sequence, ph.started_at as at, su.f0_mean as "f0Hz", su.f0_u as u, su.q_mean as q, su.q_u as "qU",
             base.f0_hz as "baselineHz", base.q as "baselineQ", base.complete_at is not null as "baselineComplete", ${SHIFT_U_OF_BASE} as "shiftU"
        from phase ph join fit_run r on r.campaign_id = ph.campaign_id and r.current join phase_summary su on su.phase_id = ph.id and su.fit_run_id = r.id
-       left join base on base.campaign_id = ph.campaign_id and base.mount_id = ph.mount_id and base.set_point_c is not distinct from ph.set_point_c and base.readout = ph.readout
+       left join base on base.campaign_id = ph.campaign_id and base.mount_id is not distinct from ph.mount_id and base.set_point_c is not distinct from ph.set_point_c and base.readout = ph.readout
       where ph.campaign_id = any($1::bigint[]) and ph.medium = 'air' and ph.role = 'reference' and su.f0_mean is not null and ph.started_at is not null
       order by ph.campaign_id, ph.sequence`,
     [campaignIds],

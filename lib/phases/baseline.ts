@@ -3,7 +3,8 @@ import { change, row } from "@/lib/db";
 
 export type BaselineKey = {
   campaignId: string;
-  mountId: string;
+  /** Null for a campaign that knows of no mount, an imported one. */
+  mountId: string | null;
   setPointC: number | null;
   readout: string;
   fitRunId: string;
@@ -21,7 +22,7 @@ export async function updateBaseline(transaction: Transaction, key: BaselineKey,
   const mean = await row<{ f0Hz: number | null; q: number | null; n: number }>(
     `select avg(f0_mean) as "f0Hz", avg(q_mean) as q, count(*)::int as n
        from (select s.f0_mean, s.q_mean from phase p join phase_summary s on s.phase_id = p.id and s.fit_run_id = $5
-              where p.campaign_id = $1 and p.mount_id = $2 and p.set_point_c is not distinct from $3 and p.readout = $4
+              where p.campaign_id = $1 and p.mount_id is not distinct from $2 and p.set_point_c is not distinct from $3 and p.readout = $4
                 and p.medium = 'air' and p.role = 'reference' and p.closed_at is not null and s.f0_mean is not null
               order by p.sequence limit $6) first`,
     [key.campaignId, key.mountId, key.setPointC, key.readout, key.fitRunId, airReferences],
@@ -43,7 +44,7 @@ export async function updateBaseline(transaction: Transaction, key: BaselineKey,
 export async function findBaseline(transaction: Transaction | undefined, key: BaselineKey): Promise<Baseline | undefined> {
   return row<Baseline>(
     `select f0_hz as "f0Hz", q, n, complete_at is not null as complete from baseline
-      where campaign_id = $1 and mount_id = $2 and set_point_c is not distinct from $3 and readout = $4 and fit_run_id = $5`,
+      where campaign_id = $1 and mount_id is not distinct from $2 and set_point_c is not distinct from $3 and readout = $4 and fit_run_id = $5`,
     [key.campaignId, key.mountId, key.setPointC, key.readout, key.fitRunId],
     transaction,
   );

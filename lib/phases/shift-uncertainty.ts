@@ -2,7 +2,7 @@
 export const BASELINE_REFERENCES = `(
   select array_agg(first.id) as ids, count(*) as n, case when count(first.f0_u) = count(*) then sum(first.f0_u ^ 2) end as u2
     from (select q.id, qs.f0_u from phase q join phase_summary qs on qs.phase_id = q.id and qs.fit_run_id = b.fit_run_id
-           where q.campaign_id = b.campaign_id and q.mount_id = b.mount_id and q.set_point_c is not distinct from b.set_point_c and q.readout = b.readout
+           where q.campaign_id = b.campaign_id and q.mount_id is not distinct from b.mount_id and q.set_point_c is not distinct from b.set_point_c and q.readout = b.readout
              and q.medium = 'air' and q.role = 'reference' and q.closed_at is not null and qs.f0_mean is not null
            order by q.sequence limit b.n) first)`;
 

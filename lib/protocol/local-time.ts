@@ -70,7 +70,7 @@ function endOfGap(asUtc: number, timeZone: string): number {
 const formats = new Map<string, Intl.DateTimeFormat>();
 
 /** What the local clock is ahead of UTC at an instant, in milliseconds. */
-function offsetMs(instantMs: number, timeZone: string): number {
+export function offsetMs(instantMs: number, timeZone: string): number {
   let format = formats.get(timeZone);
   if (!format) {
     format = new Intl.DateTimeFormat("en-US", {

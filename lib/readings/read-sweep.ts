@@ -27,10 +27,10 @@ export async function readSweep({ campaignId, sequence, index }: { campaignId: s
   const found = await row<Found>(
     `select s.sequence, r.idx as index, s.medium, s.cycle, r.at, r.kind, w.start_hz as "startHz", w.stop_hz as "stopHz", w.points, w.data,
             f.f0_hz as "f0Hz", f.f0_std_hz as "f0StdHz", f.q, f.q_std as "qStd", coalesce(f.flags, r.flags) as flags,
-            v.definition->>'readout' as readout, (s.params->'sweep'->>'dwellS')::float8 as "dwellS"
+            coalesce(v.definition->>'readout', (select readout from phase where step_id = s.id)) as readout, (s.params->'sweep'->>'dwellS')::float8 as "dwellS"
        from (select * from step where campaign_id = $1 and kind = 'measure' and stored > 0 and ($2::int is null or sequence = $2)
               order by sequence desc limit 1) s
-       join protocol_version v on v.id = s.protocol_version_id
+       left join protocol_version v on v.id = s.protocol_version_id
        join lateral (select * from reading where step_id = s.id and ($3::int is null or idx = $3) order by idx desc limit 1) r on true
        join sweep w on w.step_id = r.step_id and w.idx = r.idx
        left join fit_run run on run.campaign_id = $1 and run.current

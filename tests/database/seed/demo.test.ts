@@ -30,7 +30,7 @@ beforeAll(async () => {
   dataFolder = fs.mkdtempSync(path.join(os.tmpdir(), "longreed-seed-"));
   kept = new Kept(dataFolder);
   server = await serveAgentRoutes();
-  stopFastPath = await startFastPath({ onError: (_, error) => errors.push(error), onMail: async () => {}, onRefit: async () => {}, onAdvanced: async () => {} });
+  stopFastPath = await startFastPath({ onError: (_, error) => errors.push(error), onMail: async () => {}, onRefit: async () => {}, onImport: async () => {}, onAdvanced: async () => {} });
 });
 afterAll(async () => {
   await server.stop();

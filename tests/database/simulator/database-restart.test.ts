@@ -23,7 +23,7 @@ beforeAll(async () => {
   process.env.DATABASE_URL = cluster.urlOf("postgres");
   await migrate(process.env.DATABASE_URL);
   server = await serveAgentRoutes();
-  stopFastPath = await startFastPath({ onError: () => {}, onMail: async () => {}, onRefit: async () => {}, onAdvanced: async () => {} });
+  stopFastPath = await startFastPath({ onError: () => {}, onMail: async () => {}, onRefit: async () => {}, onImport: async () => {}, onAdvanced: async () => {} });
 });
 afterAll(async () => {
   await server.stop();

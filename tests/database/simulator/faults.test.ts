@@ -15,7 +15,7 @@ const errors: unknown[] = [];
 
 beforeAll(async () => {
   server = await serveAgentRoutes();
-  stopFastPath = await startFastPath({ onError: (key, error) => errors.push([key, error]), onMail: async () => {}, onRefit: async () => {}, onAdvanced: async () => {} });
+  stopFastPath = await startFastPath({ onError: (key, error) => errors.push([key, error]), onMail: async () => {}, onRefit: async () => {}, onImport: async () => {}, onAdvanced: async () => {} });
   calm = await runCampaign(server.url);
 });
 afterAll(async () => {

@@ -27,7 +27,7 @@ const errors: unknown[] = [];
 
 beforeAll(async () => {
   server = await serveAgentRoutes();
-  stopFastPath = await startFastPath({ onError: (_, error) => errors.push(error), onMail: async () => {}, onRefit: async () => {}, onAdvanced: async () => {} });
+  stopFastPath = await startFastPath({ onError: (_, error) => errors.push(error), onMail: async () => {}, onRefit: async () => {}, onImport: async () => {}, onAdvanced: async () => {} });
 });
 afterAll(async () => {
   await server.stop();
