@@ -55,7 +55,8 @@ const clearlyLogarithmic = -6;
  * @param references At times in days, rising, all finite.
  * @returns The verdict and every number behind it. References after a clean-again tell whether that took something off;
  *   growth and steps are judged on the others.
- * @throws RangeError if lengths differ, times do not rise, a value is not finite or Q not above 0.
+ * @throws RangeError if lengths differ, times do not rise, a value is not finite, Q is not above 0, or there are more than
+ *   3 000 references.
  *
  * A mass δm lowers f0 by δm/2m and, with a loss factor κ of its own, raises 1/Q by κ δm/m: relation of the damped
  * oscillator. The rules are our choice.

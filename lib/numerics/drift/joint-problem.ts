@@ -4,7 +4,7 @@ import { cutAt, differencesWithin, stretchBounds, whiteners, type Whitener } fro
 import { regression } from "@/lib/numerics/statistics/regression";
 
 /** Values beyond this would cost more seconds than they are worth. */
-export const mostJointValues = 3000;
+const mostJointValues = 3000;
 
 /** Left of a column's square below which others are taken to explain it. */
 const nothingLeft = 1e-10;
@@ -52,10 +52,15 @@ export function jointProblem({
   if (steps.some((place) => !Number.isInteger(place) || place < 1 || place >= n)) throw new RangeError("a step lies between two values");
   if (n > mostJointValues) throw new RangeError(`at most ${mostJointValues} values, got ${n}`);
 
-  const bounds = stretchBounds(n);
+  // A step where a stretch begins would be no more than that stretch's own level.
+  const isStep = new Set(steps);
+  const bounds = stretchBounds(n).map((bound) => {
+    let place = bound;
+    while (isStep.has(place)) place++;
+    return place;
+  });
   const differences = (series: Float64Array) => differencesWithin(cutAt(bounds, series));
-  // A step at the first value of a stretch is no more than that stretch's own level.
-  const levels = steps.map((place) => differences(new Float64Array(n).fill(1, place))).filter((column) => column.some((value) => value !== 0));
+  const levels = steps.map((place) => differences(new Float64Array(n).fill(1, place)));
   const sharedColumns = [differences(atDays), ...levels];
   const noise = whiteners(cutAt(bounds, atDays));
   const target = differences(values);

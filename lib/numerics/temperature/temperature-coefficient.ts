@@ -31,7 +31,7 @@ export type TemperatureCoefficient = {
 };
 
 /** Fewest values with which AICc can tell the richest model from the poorest. */
-export const fewestValues = 12;
+const fewestValues = 12;
 
 export type TemperatureSeries = {
   atDays: Float64Array;

@@ -135,6 +135,19 @@ test("a jump at a re-mount is neither step nor growth", () => {
   expect(found).toMatchObject({ verdict: "none", steps: [] });
 });
 
+test("a long record with a re-mount where its second stretch would begin", () => {
+  const many = 320;
+  const next = gaussian(12);
+  const found = judgeAirReturn({
+    atDays: Float64Array.from({ length: many }, (_, i) => i),
+    f0Ppm: Float64Array.from({ length: many }, (_, i) => (i >= 160 ? -40 : 0) + next()),
+    qPercent: Float64Array.from({ length: many }, () => 0.01 * next()),
+    before: Array.from({ length: many }, (_, i) => (i === 160 ? "remount" : "clean")),
+    baselineQ: 2000,
+  });
+  expect(found).toMatchObject({ verdict: "none", steps: [], n: many });
+});
+
 test("too few references and bad input", () => {
   const short = made({ f0: () => 0 });
   const cut = { ...short, atDays: short.atDays.subarray(0, 9), f0Ppm: short.f0Ppm.subarray(0, 9), qPercent: short.qPercent.subarray(0, 9), before: short.before.slice(0, 9) };

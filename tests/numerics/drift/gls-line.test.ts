@@ -36,7 +36,7 @@ describe("95 % intervals cover the true slope in 92 to 99.7 % of series", () => 
     { alpha: 0, n: 50 },
     { alpha: -1, n: 50 },
     ...(full ? [0, -1].flatMap((alpha) => [100, 200, 500].map((n) => ({ alpha, n }))) : []),
-  ])("exponent $alpha, N = $n", { timeout: 600_000 }, ({ alpha, n }) => {
+  ])("exponent $alpha, N = $n", { timeout: 1_800_000 }, ({ alpha, n }) => {
     const runs = full && n <= 100 ? 1000 : 400;
     const make = powerLawNoise({ alpha, length: n, seed: 31 * n - alpha });
     const x = Float64Array.from({ length: n }, (_, i) => i / 4);
@@ -59,7 +59,7 @@ describe("95 % intervals cover the true slope in 92 to 99.7 % of series", () => 
 
 /** White noise on a random walk: no exponent stands for it. Without its own kinds, 95 % intervals would cover half of it. */
 describe("white noise on a random walk, N = 100", () => {
-  test.each([0.1, 0.2])("steps of %f", { timeout: 600_000 }, (walk) => {
+  test.each([0.1, 0.2])("steps of %f", { timeout: 1_800_000 }, (walk) => {
     const runs = full ? 600 : 100;
     const n = 100;
     const [white, steps] = [0, -2].map((alpha) => powerLawNoise({ alpha, length: n, seed: 40 - alpha }));

@@ -157,6 +157,12 @@ test("more than 300 values: levels are free between stretches, the coefficient i
   expect(found?.n).toBe(many);
   expect(Math.abs(b.value + 30)).toBeLessThan(3 * b.u);
   expect(b.u).toBeLessThan(1.5 * Math.sqrt(2 / many) / 0.1);
+
+  // 233 is where the second stretch would begin.
+  const jumped = temperatureCoefficient({ atDays: days, values: days.map((day, i) => (i < 233 ? 0 : 80) + 0.1 * day - 30 * theta[i] + noise[i]), temperatureC: theta.map((value) => 20 + value), referenceC: 20, steps: [233] });
+  expect(Math.abs(termOf(jumped, "linear", "linear").value - b.value)).toBeLessThan(b.u);
+  expect(termOf(jumped, "linear", "linear").u).toBeLessThan(1.1 * b.u);
+  expect(() => temperatureCoefficient({ atDays: Float64Array.from({ length: 3001 }, (_, i) => i), values: new Float64Array(3001), temperatureC: new Float64Array(3001), referenceC: 20 })).toThrow(/3000/);
 });
 
 test("an exact series, too few values, no change of temperature, bad input", () => {
