@@ -18,6 +18,7 @@ import { ProtocolVersion } from "@/models/protocol-version";
 import { Bench } from "./bench";
 import { buildAgentToken } from "./agent-token";
 import { buildCampaign } from "./campaign";
+import { buildImportRun } from "./import-run";
 import { buildLiquid } from "./liquid";
 import { buildLoad } from "./load";
 import { buildLot } from "./lot";
@@ -28,9 +29,10 @@ import { aDefinition, buildProtocol, buildProtocolVersion } from "./protocol";
 import { buildRig } from "./rig";
 import { buildSensor } from "./sensor";
 import { agentToken, cookieOf, ORIGIN, signedInAs, tokenOf } from "./session";
+import { formOf } from "./upload";
 
-/** What a call needs: parts of its address, values at names in its body, and who sends it where that is no administrator. */
-export type Prepared = { params?: Record<string, string>; ids?: Record<string, unknown>; query?: string; headers?: Record<string, string> };
+/** What a call needs: parts of its address, values at names in its body, its form where it takes one, and who sends it where that is no administrator. */
+export type Prepared = { params?: Record<string, string>; ids?: Record<string, unknown>; form?: () => FormData; query?: string; headers?: Record<string, string> };
 
 const made = async (thing: Promise<{ id: string }>): Promise<Prepared> => ({ params: { id: (await thing).id } });
 const nothing = async (): Promise<Prepared> => ({});
@@ -225,6 +227,17 @@ async function aRigToken(): Promise<Prepared> {
 }
 
 /** By call; the example that is to be sent tells what it needs. */
+let uploads = 0;
+/** A file of its own each time, as the example reads it. */
+async function anUpload(example: unknown): Promise<Prepared> {
+  const sensor = await buildSensor();
+  const fields = { ...(example as Record<string, string | object> | undefined), sensorId: sensor.id };
+  const line = ++uploads;
+  const plain = `takenAt,medium,f0Hz,q\n2019-05-14T08:00:00Z,air,${2400 + line},1800\n`;
+  const mapped = `Zeit;Medium;f (kHz);Q;T (K)\n14.05.2019 10:00:00;air;2,4${line};1800;293,15\n`;
+  return { form: () => formOf({ file: "mapping" in fields ? mapped : plain, fields }) };
+}
+
 export const PREPARATIONS: Readonly<Record<string, (example: unknown) => Promise<Prepared>>> = {
   "POST /api/agent/hello": async () => ({ headers: { authorization: `Bearer ${(await agentToken()).token}` } }),
   "POST /api/agent/heartbeat": () => atStep("fill"),
@@ -276,6 +289,10 @@ export const PREPARATIONS: Readonly<Record<string, (example: unknown) => Promise
   "POST /api/campaigns/{id}/notes": () => campaignIn("running"),
   "GET /api/find": async () => ({ query: "?q=wr" }),
   "GET /api/health": nothing,
+  "GET /api/imports": listOf(buildImportRun),
+  "POST /api/imports": anUpload,
+  "GET /api/imports/{id}": () => made(buildImportRun()),
+  "POST /api/imports/{id}/cancel": () => made(buildImportRun()),
   "GET /api/invitations": listOf(anInvitation),
   "POST /api/invitations": nothing,
   "POST /api/invitations/accept": async () => ({ ids: { token: (await anInvitation()).token }, headers: {} }),

@@ -3,10 +3,9 @@ import { afterAll, beforeAll, expect, test, vi } from "vitest";
 import { z } from "zod";
 import { sequelize } from "@/lib/db";
 import { listener } from "@/lib/listener";
-import { API_CALLS } from "../../factories/api-calls";
 import { databaseDigest, partIds } from "../../factories/database-digest";
 import { refusedBySchema, requestsOf, type GeneratedRequest } from "../../factories/generated-request";
-import { prepareCall, sendPrepared, type PreparedCall } from "../../factories/prepared-call";
+import { prepareCall, PREPARED_CALLS, sendPrepared, type PreparedCall } from "../../factories/prepared-call";
 
 const SEED = 20_260_514;
 /** With those of the agents' routes there are 10 000. */
@@ -18,7 +17,7 @@ const PROMISED = [400, 403, 404, 409, 410, 413, 422, 429];
 /** A question changes nothing, so that no state of anything stands against it. */
 const PROMISED_TO_QUESTIONS = [400, 404];
 
-const calls = API_CALLS.filter(({ operation, path }) => operation.access !== "agent" && path !== "/api/health" && (operation.body || operation.query));
+const calls = PREPARED_CALLS.filter(({ operation, path }) => operation.access !== "agent" && path !== "/api/health" && (operation.body || operation.query));
 const prepared = new Map<string, PreparedCall>();
 
 beforeAll(async () => {

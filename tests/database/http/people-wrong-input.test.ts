@@ -10,7 +10,7 @@ import { hours, now } from "../../factories/now";
 import { buildPerson } from "../../factories/person";
 import { buildCampaign } from "../../factories/campaign";
 import { buildRig } from "../../factories/rig";
-import { prepareCall, sendPrepared, type Otherwise, type PreparedCall } from "../../factories/prepared-call";
+import { prepareCall, PREPARED_CALLS, sendPrepared, type Otherwise, type PreparedCall } from "../../factories/prepared-call";
 import { HOSTILE_TEXTS, placesIn, withText } from "../../factories/wrong-json";
 import { agentToken, at, cookieOf, ORIGIN, request, signedInAs, tokenOf } from "../../factories/session";
 
@@ -18,7 +18,7 @@ const TOO_LARGE = "x".repeat(9 * 1024 * 1024);
 const TOO_LARGE_INSIDE = gzipSync(TOO_LARGE);
 const TOO_DEEP = ["[".repeat(100_000), `{"a":${"[".repeat(50_000)}${"]".repeat(50_000)}}`];
 
-const forPeople = API_CALLS.filter(({ operation }) => operation.access !== "agent");
+const forPeople = PREPARED_CALLS.filter(({ operation }) => operation.access !== "agent");
 const named = (calls: readonly ApiCall[]) => calls.map((call) => [call.name, call] as const);
 const withBody = forPeople.filter(({ operation }) => operation.body);
 const signedIn = forPeople.filter(({ operation }) => operation.access !== "public");
