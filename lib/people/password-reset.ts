@@ -1,3 +1,4 @@
+import { Op } from "sequelize";
 import { audit } from "@/lib/audit/record";
 import { change, inTransaction } from "@/lib/db";
 import { env } from "@/lib/env";
@@ -37,13 +38,18 @@ export async function askForReset({ email, place, now }: { email: string; place:
 
 /** Sets the password and ends every session. @throws AppError 410 for a link that was used or has run out. */
 export async function resetPassword({ token, password, now }: { token: string; password: string; now: Date }): Promise<void> {
+  const where = { tokenHash: hashToken(token), usedAt: null, expiresAt: { [Op.gt]: now } };
+  // Hashing is costly by intent: nobody has it done without a link that is good.
+  if (!(await PasswordReset.findOne({ where }))) throw spent();
   const passwordHash = await hashPassword(password);
   await inTransaction(async (transaction) => {
-    const reset = await PasswordReset.findOne({ where: { tokenHash: hashToken(token), usedAt: null }, lock: true, transaction });
-    const person = reset && reset.expiresAt > now ? await Person.findByPk(reset.personId, { lock: true, transaction }) : null;
-    if (!reset || !person || person.closedAt) throw gone("This link was used already or has run out; ask for a new one");
+    const reset = await PasswordReset.findOne({ where, lock: true, transaction });
+    const person = reset && (await Person.findByPk(reset.personId, { lock: true, transaction }));
+    if (!person || person.closedAt) throw spent();
     await change("update password_reset set used_at = $2 where person_id = $1 and used_at is null", [person.id, now], transaction);
     await person.update({ passwordHash, sessionVersion: person.sessionVersion + 1 }, { transaction });
     await audit(transaction, { by: person, now, action: "reset password", entity: "person", entityId: person.id });
   });
 }
+
+const spent = () => gone("This link was used already or has run out; ask for a new one");
