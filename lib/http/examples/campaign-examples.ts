@@ -31,6 +31,14 @@ export const CAMPAIGN_EXAMPLES = {
   "POST /api/protocols/estimate": { "On one rig": { definition, rigId: "1", sensorId: "3" } },
   "PATCH /api/protocols/{id}": { "Another name": { name: "Three fills, slowly" } },
   "POST /api/protocols/{id}/versions": { "The next version": { definition, note: "Longer drying", basedOn: 2 } },
+  "POST /api/imports": {
+    "Columns of our own names": { name: "WR-2204 in 2019", sensorId: "1" },
+    "Columns of other names, in other units": {
+      name: "WR-2204 in 2019",
+      mapping: { Zeit: "takenAt", "f (kHz)": { field: "f0Hz", unit: "kHz" }, "T (K)": { field: "temperatureC", unit: "K" } },
+      format: { delimiter: ";", decimal: ",", timeFormat: "dayFirst", timeZone: "Europe/Berlin" },
+    },
+  },
   "POST /api/campaigns": {
     "As soon as the rig is free": campaign,
     "From a date on, before others": { ...campaign, startAt: "2026-06-01T06:00:00Z", priority: 10, name: "Ageing of WR-2204" },

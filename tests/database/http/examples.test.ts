@@ -14,7 +14,7 @@ const operations = new Map<string, NonNullable<ReturnType<typeof operationsOf>["
     .filter(([file]) => !file.includes("[..."))
     .flatMap(([file, module]) => Object.entries(operationsOf(module)).map(([method, operation]) => [`${method} ${pathOf(file.replace("/app/api/", ""))}`, operation] as const)),
 );
-const withBody = [...operations].filter(([, { body }]) => body);
+const withBody = [...operations].filter(([, { body, form }]) => body ?? form);
 const examples = Object.entries(EXAMPLES).flatMap(([call, named]) => Object.entries(named).map(([summary, value]) => ({ call, summary, value })));
 
 test("every call with a body shows an example of it, and no example is of a call that is not there", () => {
@@ -22,7 +22,8 @@ test("every call with a body shows an example of it, and no example is of a call
 });
 
 test.each(examples)("$call: $summary is what the call takes", ({ call, value }) => {
-  const checked = operations.get(call)?.body?.safeParse(JSON.parse(JSON.stringify(value)));
+  const operation = operations.get(call);
+  const checked = (operation?.body ?? operation?.form)?.safeParse(JSON.parse(JSON.stringify(value)));
   expect(checked?.error?.issues ?? []).toEqual([]);
   expect(checked?.success).toBe(true);
 });
