@@ -2,7 +2,7 @@ import { driftOf } from "@/lib/analysis/drift-of";
 import { offLoop } from "@/lib/analysis/off-loop";
 import { resultOf } from "@/lib/analysis/results";
 import type { DriftAnswer, DriftQuery } from "@/lib/analysis/schema";
-import { findFitRun, selectPhases } from "@/lib/analysis/select-phases";
+import { contentOf, findFitRun, selectPhases } from "@/lib/analysis/select-phases";
 import { impossible } from "@/lib/errors";
 
 /** Phase values whose line is found in a few milliseconds here; more go to another process. */
@@ -15,10 +15,14 @@ const MOST_HERE = 30;
 export async function readDrift(campaignId: string, query: DriftQuery, { background = false } = {}): Promise<DriftAnswer> {
   if (query.compensate === "temperature") throw impossible("Temperature compensation is not available for this campaign yet", { errors: [{ path: "compensate", message: "only none" }] });
   const fitRunId = await findFitRun(campaignId, query.fitRunId);
-  const phases = fitRunId ? await selectPhases(campaignId, fitRunId, { ...query, medium: query.medium ?? "air" }) : [];
-  const closed = phases.filter((phase) => phase.closed);
-  const given = { phases: closed, query };
-  if (!fitRunId || closed.length === 0) return driftOf(given);
-  const compute = async () => (closed.length <= MOST_HERE ? driftOf(given) : offLoop("drift", given));
-  return resultOf({ campaignId, question: { kind: "drift", query }, fitRunId, phases: closed, background, compute });
+  if (!fitRunId) return driftOf({ phases: [], query });
+  const selection = { ...query, medium: query.medium ?? "air" };
+  const { content } = await contentOf(campaignId, fitRunId, selection);
+  if (!content) return driftOf({ phases: [], query });
+  const compute = async () => {
+    const given = { phases: (await selectPhases(campaignId, fitRunId, selection)).filter((phase) => phase.closed), query };
+    return given.phases.length <= MOST_HERE ? driftOf(given) : offLoop("drift", given);
+  };
+  const contentNow = async () => (await contentOf(campaignId, fitRunId, selection)).content;
+  return resultOf({ campaignId, question: { kind: "drift", query }, fitRunId, content, contentNow, background, compute });
 }

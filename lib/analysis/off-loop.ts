@@ -1,6 +1,7 @@
 import type { ChildProcess } from "node:child_process";
 import type { Answered, Asked } from "@/lib/analysis/heavy-process";
 import type { Heavy } from "@/lib/analysis/heavy";
+import { away } from "@/lib/errors";
 
 /** A process that has had nothing to do for so long is ended: it holds some 150 MB. */
 const IDLE_MS = 120_000;
@@ -42,13 +43,13 @@ class HeavyProcess {
         else one.resolve(answer.value);
       });
     });
-    const gone = (error: Error) => {
+    const gone = () => {
       if (this.child !== child) return;
       this.child = undefined;
-      for (const id of [...this.waiting.keys()]) this.settle(id, (one) => one.reject(error));
+      for (const id of [...this.waiting.keys()]) this.settle(id, (one) => one.reject(away("The computation was broken off. Nothing was changed; try again.")));
     };
     child.on("error", gone);
-    child.on("exit", (code, signal) => gone(new Error(`the process for heavy computations ended with ${signal ?? code}`)));
+    child.on("exit", gone);
     return child;
   }
 

@@ -1,6 +1,5 @@
 import { createHash } from "node:crypto";
 import { codeDigest } from "@/lib/analysis/code-digest";
-import type { SelectedPhase } from "@/lib/analysis/select-phases";
 import { change, row, rows } from "@/lib/db";
 
 const DAY_MS = 86_400_000;
@@ -15,8 +14,10 @@ type Ask<Answer> = {
   campaignId: string;
   question: Question;
   fitRunId: string;
-  /** Everything the answer depends on beside the question. */
-  phases: readonly SelectedPhase[];
+  /** SHA-256 of the phases that the answer is made from. */
+  content: Buffer;
+  /** The same looked up again: what changed while the answer was computed must not be kept under the name of what was before. */
+  contentNow: () => Promise<Buffer | null>;
   /** Asked on behalf of nobody: the question grows no younger. */
   background?: boolean;
   compute: () => Promise<Answer>;
@@ -29,10 +30,10 @@ const underWay = new Map<string, Promise<unknown>>();
  * the very same program, else a fresh one, which takes its place. One question has one stored answer, the newest. Who asks
  * while it is being computed waits for the same computation.
  */
-export async function resultOf<Answer extends object>({ campaignId, question, fitRunId, phases, background = false, compute }: Ask<Answer>): Promise<Answer> {
+export async function resultOf<Answer extends object>({ campaignId, question, fitRunId, content: phases, contentNow, background = false, compute }: Ask<Answer>): Promise<Answer> {
   const code = await codeDigest();
   const asked = hash(JSON.stringify(question));
-  const content = hash(JSON.stringify([fitRunId, phases.map(({ phaseId, digest, f0Mean, f0U, qMean, qU }) => [phaseId, digest, f0Mean, f0U, qMean, qU])]), code);
+  const content = hash(fitRunId, phases, code);
   const stored = await row<{ answer: Answer | null; old: boolean }>(
     `select case when content = $3 then answer end as answer, asked_at < now() - interval '1 hour' as old from analysis_result where campaign_id = $1 and question_hash = $2`,
     [campaignId, asked, content],
@@ -43,6 +44,7 @@ export async function resultOf<Answer extends object>({ campaignId, question, fi
   }
   return once(`${campaignId} ${asked.toString("hex")} ${content.toString("hex")}`, async () => {
     const answer = await compute();
+    if (!(await contentNow())?.equals(phases)) return answer;
     await change(
       `insert into analysis_result as r (campaign_id, question_hash, question, code, content, answer, made_at, asked_at)
        values ($1, $2, $3, $4, $5, $6, now(), now())

@@ -1,7 +1,7 @@
 import { offLoop } from "@/lib/analysis/off-loop";
 import { resultOf } from "@/lib/analysis/results";
 import type { StabilityAnswer, StabilityQuery } from "@/lib/analysis/schema";
-import { findFitRun, selectPhases, type SelectedPhase } from "@/lib/analysis/select-phases";
+import { contentOf, findFitRun, selectPhases, type SelectedPhase } from "@/lib/analysis/select-phases";
 import { noStability, stabilityOf } from "@/lib/analysis/stability-of";
 import { impossible } from "@/lib/errors";
 
@@ -15,13 +15,18 @@ const MOST_HERE = 200_000;
 export async function readStability(campaignId: string, query: StabilityQuery, { background = false } = {}): Promise<StabilityAnswer> {
   const fitRunId = await findFitRun(campaignId, query.fitRunId);
   if (!fitRunId) return noStability(query, "Nothing has been measured yet");
-  const phases = oneSetPoint(await selectPhases(campaignId, fitRunId, { ...query, medium: query.medium ?? "air" }), query.setPointC);
-  const closed = phases.filter((phase) => phase.closed);
+  const selection = { ...query, medium: query.medium ?? "air" };
+  const { closed, setPointsC, content } = await contentOf(campaignId, fitRunId, selection);
+  if (query.setPointC === undefined) demandOneSetPoint(setPointsC);
 
-  if (closed.length === 0) return stabilityOf({ phases, fitRunId, query });
-  const given = { phases: closed, fitRunId, query };
-  const compute = () => (costOf(closed, query) <= MOST_HERE ? stabilityOf(given) : offLoop("stability", given));
-  return resultOf({ campaignId, question: { kind: "stability", query }, fitRunId, phases: closed, background, compute });
+  const select = () => selectPhases(campaignId, fitRunId, selection);
+  if (closed === 0 || !content) return stabilityOf({ phases: await select(), fitRunId, query });
+  const compute = async () => {
+    const given = { phases: (await select()).filter((phase) => phase.closed), fitRunId, query };
+    return costOf(given.phases, query) <= MOST_HERE ? stabilityOf(given) : offLoop("stability", given);
+  };
+  const contentNow = async () => (await contentOf(campaignId, fitRunId, selection)).content;
+  return resultOf({ campaignId, question: { kind: "stability", query }, fitRunId, content, contentNow, background, compute });
 }
 
 function costOf(phases: readonly SelectedPhase[], { view, taus }: StabilityQuery): number {
@@ -30,13 +35,10 @@ function costOf(phases: readonly SelectedPhase[], { view, taus }: StabilityQuery
 }
 
 /** A series belongs to one set-point; with several in the selection the question has to name one. */
-function oneSetPoint(phases: readonly SelectedPhase[], setPointC: number | undefined): SelectedPhase[] {
-  const setPoints = new Set(phases.map((phase) => phase.setPointC));
-  if (setPointC === undefined && setPoints.size > 1) {
-    const list = [...setPoints].map((c) => (c === null ? "none" : `${c} °C`)).join(", ");
-    throw impossible(`This campaign was measured at several set-points (${list}); name one with setPointC`, {
-      errors: [{ path: "setPointC", message: "is needed" }],
-    });
-  }
-  return [...phases];
+function demandOneSetPoint(setPointsC: readonly (number | null)[]): void {
+  if (setPointsC.length <= 1) return;
+  const list = setPointsC.map((c) => (c === null ? "none" : `${c} °C`)).join(", ");
+  throw impossible(`This campaign was measured at several set-points (${list}); name one with setPointC`, {
+    errors: [{ path: "setPointC", message: "is needed" }],
+  });
 }

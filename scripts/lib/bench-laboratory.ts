@@ -24,7 +24,7 @@ export type Step = { id: string; kind: string; lease: string; params: { repeats:
 type Given = { repeats: number; points: number; rigs?: number };
 
 /** PostgreSQL, web and worker in a folder of their own, and rigs with a campaign each of nothing but air. */
-export async function startBenchLaboratory({ rigs = 1, ...given }: Given, later: (undo: () => Promise<void> | void) => void): Promise<{ url: string; tokens: string[] }> {
+export async function startBenchLaboratory({ rigs = 1, ...given }: Given, later: (undo: () => Promise<void> | void) => void): Promise<{ url: string; tokens: string[]; pids: ReadonlyMap<string, number> }> {
   const root = path.resolve(import.meta.dirname, "../..");
   await ensureBuild({ root, distDir: ".next", step: (_title, work) => work() });
   const home = fs.mkdtempSync(path.join(os.tmpdir(), "longreed-bench-"));
@@ -41,17 +41,18 @@ export async function startBenchLaboratory({ rigs = 1, ...given }: Given, later:
   const env = demoEnvironment({ given: { ...process.env, APP_URL: undefined }, dataDirectory: data.directory, ports, databaseUrl, authSecret: data.secrets().authSecret });
   Object.assign(process.env, { DATABASE_URL: databaseUrl, AUTH_SECRET: env.AUTH_SECRET, SMTP_URL: env.SMTP_URL, APP_URL: env.APP_URL, LONGREED_DEMO: "1" });
   later(() => sequelize.close());
+  const pids = new Map<string, number>();
   const start = (service: Service) =>
-    later(supervise(service, { root, logDirectory: data.logDirectory, notice: (line) => console.error(line), onStart: () => undefined }).stop);
+    later(supervise(service, { root, logDirectory: data.logDirectory, notice: (line) => console.error(line), onStart: (name, pid) => pids.set(name, pid) }).stop);
   start(webService({ root, env, port: ports.web, distDir: ".next" }));
   start(workerService({ root, env }));
   const url = `http://127.0.0.1:${ports.web}`;
   const tokens = await makeCampaigns(given, rigs);
   await waitForAnswer(`${url}/sign-in`, { withinMs: 60_000 });
-  return { url, tokens };
+  return { url, tokens, pids };
 }
 
-export async function makeCampaigns({ repeats, points }: Given, rigs: number): Promise<string[]> {
+async function makeCampaigns({ repeats, points }: Given, rigs: number): Promise<string[]> {
   const now = new Date();
   const person = await createFirstAdministrator({ email: "bench@longreed.example", name: "Bench", password: "of no use elsewhere", now });
   const by = { id: person.id, name: person.name, role: person.role };

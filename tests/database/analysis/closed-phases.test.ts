@@ -200,6 +200,18 @@ describe("stored answers", () => {
     expect((await stability()).used).toContain("of 3 phases");
   });
 
+  test("are not kept under what was before when a phase changes while they are computed", async () => {
+    const [before] = await Promise.all([stability(), exclude(steps[1].stepId, FAR.idx)]);
+    const after = await stability();
+    await change(`update exclusion set undone_by = person_id, undone_at = $2 where step_id = $1`, [steps[1].stepId, now]);
+    await refresh(steps[1].stepId);
+    const undone = await stability();
+    expect(undone).not.toEqual(after);
+    await change(`delete from analysis_result where campaign_id = $1`, [campaignId]);
+    expect(await stability()).toEqual(undone);
+    expect([after, undone]).toContainEqual(before);
+  });
+
   test("are forgotten when nobody has asked for a fortnight, and not a day sooner", async () => {
     await all();
     const count = async () => (await row<{ n: number }>(`select count(*)::int as n from analysis_result where campaign_id = $1`, [campaignId]))?.n;
