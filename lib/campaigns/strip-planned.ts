@@ -27,9 +27,14 @@ export function plannedSegments({ definition, cursor, abilities, timeZone, nomin
   const restMs = open?.repeats && open.stored > 0 ? Math.max(0, ((clock.getTime() - open.from.getTime()) * (open.repeats - open.stored)) / open.stored) : 0;
   const startMs = clock.getTime() + restMs;
   const ahead = forecast(definition, cursor, { nowMs: startMs, timeZone, abilities, nominal, tracks: known }, MOST_PLANNED);
+  const rest: StripSegment[] = restMs > 0 && open ? [{ ...pastSegment(open, clock), from: clock.toISOString(), to: new Date(startMs).toISOString(), planned: true }] : [];
+  return [...rest, ...drawnAhead(ahead, startMs)];
+}
+
+/** Steps to come as a strip draws them; `startMs` is where their seconds count from. */
+export function drawnAhead(ahead: readonly Segment[], startMs: number): StripSegment[] {
   const time = (seconds: number) => new Date(startMs + seconds * 1000).toISOString();
-  const rest: StripSegment[] = restMs > 0 && open ? [{ ...pastSegment(open, clock), from: clock.toISOString(), to: time(0), planned: true }] : [];
-  return [...rest, ...ahead.filter(({ kind }) => kind !== "ask" && kind !== "settle").map((segment) => planned(segment, time))];
+  return ahead.filter(({ kind }) => kind !== "ask" && kind !== "settle").map((segment) => planned(segment, time));
 }
 
 function planned({ kind, role, medium, slot, cycle, label, startS, durationS }: Segment, time: (seconds: number) => string): StripSegment {

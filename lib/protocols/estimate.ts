@@ -6,7 +6,7 @@ import { estimateWithProblems, type RigForCheck, type SensorForCheck } from "@/l
 import type { DefinitionInput } from "@/lib/protocol/schema";
 import type { RigAbilities } from "@/lib/protocol/types";
 import { checkedDefinition } from "@/lib/protocols/checked-definition";
-import { ANY_RIG, ANY_SENSOR, planBlocks } from "@/lib/protocols/plan";
+import { ANY_RIG, ANY_SENSOR, planAhead } from "@/lib/protocols/plan";
 import type { EstimateAnswer } from "@/lib/protocols/schema";
 
 type Question = { by: Actor; now: Date; definition: DefinitionInput; rigId?: string; sensorId?: string };
@@ -38,7 +38,7 @@ export async function estimateProtocol({ by, now, definition: given, rigId, sens
     sensor: sensor || undefined,
   });
   const unknownRig = rig && !rig.abilities ? [{ path: "", severity: "warning" as const, message: `The agent of ${rig.name} has not reported yet what the rig can do, so that nothing was checked against it.` }] : [];
-  return { seconds, steps, repeats, phases, cycles, mlPerSlot, wasteMl, atMost, people, isExact, blocks: planBlocks(definition, world), problems: [...problems, ...unknownRig] };
+  return { seconds, steps, repeats, phases, cycles, mlPerSlot, wasteMl, atMost, people, isExact, ...planAhead(definition, world), problems: [...problems, ...unknownRig] };
 }
 
 const readRig = (rigId: string, now: Date) =>

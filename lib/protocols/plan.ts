@@ -1,10 +1,12 @@
+import { drawnAhead, MOST_PLANNED } from "@/lib/campaigns/strip-planned";
 import { estimate, type Estimate } from "@/lib/protocol/estimate";
-import { forecast } from "@/lib/protocol/forecast";
+import { forecast, type Segment } from "@/lib/protocol/forecast";
 import { start } from "@/lib/protocol/interpreter";
 import type { World } from "@/lib/protocol/made-up-world";
 import type { Definition } from "@/lib/protocol/schema";
 import type { RigAbilities } from "@/lib/protocol/types";
 import { visitBlocks } from "@/lib/protocol/visit-blocks";
+import type { EstimateAnswer } from "@/lib/protocols/schema";
 
 /** Before a rig is chosen nothing is known to be impossible. */
 export const ANY_RIG: RigAbilities = { minHz: 1, maxHz: 1e9, maxPoints: 4001, maxDriveV: 1000 };
@@ -14,10 +16,26 @@ export const ANY_SENSOR = { f0Hz: 2000, q: 2000 };
 
 const MOST_SEGMENTS = 3000;
 
-/** What one turn of each step takes on the likely course, by block id: the mean over its turns within the first few thousand steps. */
-export function planBlocks(definition: Definition, world: World): Record<string, { seconds: number; ml: number }> {
+/** The likely course: what one turn of each step takes, and its first steps as a strip draws them. */
+export function planAhead(definition: Definition, world: World): Pick<EstimateAnswer, "blocks" | "strip"> {
+  const ahead = forecast(definition, start(definition), world, MOST_SEGMENTS);
+  const first = ahead.slice(0, MOST_PLANNED);
+  const seconds = first.reduce((latest, { startS, durationS }) => Math.max(latest, startS + durationS), 0);
+  return {
+    blocks: takenByBlocks(definition, ahead),
+    strip: {
+      from: new Date(world.nowMs).toISOString(),
+      to: new Date(world.nowMs + seconds * 1000).toISOString(),
+      isWhole: first.length === ahead.length,
+      segments: drawnAhead(first, world.nowMs),
+    },
+  };
+}
+
+/** By block id the mean over its turns within the first few thousand steps. */
+function takenByBlocks(definition: Definition, ahead: readonly Segment[]): EstimateAnswer["blocks"] {
   const sums = new Map<string, { seconds: number; turns: number }>();
-  for (const { blockId, role, durationS } of forecast(definition, start(definition), world, MOST_SEGMENTS)) {
+  for (const { blockId, role, durationS } of ahead) {
     if (role === "find") continue;
     const { seconds = 0, turns = 0 } = sums.get(blockId) ?? {};
     sums.set(blockId, { seconds: seconds + durationS, turns: turns + 1 });

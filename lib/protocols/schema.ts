@@ -1,4 +1,5 @@
 import { z } from "zod";
+import { stripSegment } from "@/lib/campaigns/strip-schema";
 import { idSchema } from "@/lib/http/ids";
 import { pageOf, pageQuery } from "@/lib/http/paging";
 import { type Definition, definitionSchema } from "@/lib/protocol/schema";
@@ -113,6 +114,8 @@ export const estimateAnswer = z.object({
   isExact: z.boolean().describe("False where long loops were multiplied"),
   /** What one turn of each step takes, by its id; the first few thousand steps only. */
   blocks: z.record(z.string(), z.object({ seconds: z.number(), ml: z.number() })),
+  /** The likely course, begun now; the first few hundred steps where there are more. */
+  strip: z.object({ from: time, to: time, isWhole: z.boolean(), segments: z.array(stripSegment) }),
   problems: z.array(z.object({ path: z.string().describe("Within the definition: blocks.2.sweep.points"), severity: z.enum(["error", "warning"]), message: z.string() })),
 });
 

@@ -3,11 +3,12 @@ import { Findings } from "@/components/ui/tag";
 import { formatCount, formatVolume, inWords, listOf, plural } from "@/lib/format";
 import { formatDuration, formatDurationInWords } from "@/lib/format-time";
 import type { EstimateAnswer } from "@/lib/protocols/schema";
+import { PlannedStrip } from "./planned-strip";
 
-type EstimatePanelProps = { estimate: EstimateAnswer | undefined; busy: boolean; rigName?: string; sensorSerial?: string; stale?: boolean };
+type EstimatePanelProps = { estimate: EstimateAnswer | undefined; busy: boolean; zone: string; rigName?: string; sensorSerial?: string; stale?: boolean };
 
 /** Time, liquids and people as sentences; it changes as one types. */
-export function EstimatePanel({ estimate, busy, rigName, sensorSerial, stale }: EstimatePanelProps) {
+export function EstimatePanel({ estimate, busy, zone, rigName, sensorSerial, stale }: EstimatePanelProps) {
   if (!estimate) return <section><h3>Estimate</h3><p className="text-ink2">{busy ? "It is being worked out." : "It follows once nothing is missing."}</p></section>;
   const { seconds, steps, repeats, cycles, mlPerSlot, wasteMl, atMost, people, isExact } = estimate;
   const slots = Object.entries(mlPerSlot);
@@ -23,6 +24,7 @@ export function EstimatePanel({ estimate, busy, rigName, sensorSerial, stale }: 
           {cycles > 0 ? `, ${formatCount(cycles)} ${plural(cycles, "cycle")}` : ""}.{" "}
           {people.asks > 0 ? `A person is asked ${people.asks === 1 ? "once" : `${inWords(people.asks)} times`}.` : "Nobody is asked anything on the way."}
         </p>
+        <PlannedStrip strip={estimate.strip} zone={zone} />
         <p className="caption">{basis(rigName, sensorSerial)}{stale && " It is of the last state without mistakes."}</p>
       </section>
       {slots.length > 0 && (

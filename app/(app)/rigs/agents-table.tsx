@@ -11,13 +11,13 @@ import { Contacts } from "./contacts";
 type Row = { rig: RigAnswer; asOf: number; counts: readonly number[]; longestSilenceS: number | null };
 
 const COLUMNS: readonly TableColumn<Row>[] = [
-  { id: "rig", head: "Rig", slot: "a", cell: ({ rig }) => rig.name },
-  { id: "contacts", head: "Contacts, 24 h", slot: "w", cell: ({ rig, counts }) => <Contacts name={rig.name} counts={counts} />, width: 300 },
-  { id: "seen", head: "Seen", slot: "b", align: "right", cell: ({ rig, asOf }) => (rig.lastContactAt ? formatAgo(rig.lastContactAt, asOf) : "never") },
-  { id: "silence", head: "Longest silence", slot: "c", align: "right", cell: ({ longestSilenceS }) => (longestSilenceS === null ? NO_VALUE : formatDuration(longestSilenceS)) },
-  { id: "state", head: "Says", slot: "d", cell: ({ rig }) => rig.agent?.message ?? rig.agent?.state ?? NO_VALUE },
-  { id: "clock", head: "Clock / s", slot: "x", align: "right", cell: ({ rig }) => clockOf(rig) },
-  { id: "agent", head: "Agent", slot: "x", align: "right", cell: ({ rig }) => (rig.agent ? `${rig.agent.name} ${rig.agent.version}` : NO_VALUE) },
+  { id: "rig", head: "Rig", slot: "a", width: 130, cell: ({ rig }) => rig.name },
+  { id: "contacts", head: "Contacts, 24 h", slot: "w", cell: ({ rig, counts }) => <Contacts name={rig.name} counts={counts} /> },
+  { id: "seen", head: "Seen", slot: "b", align: "right", width: 96, cell: ({ rig, asOf }) => (rig.lastContactAt ? formatAgo(rig.lastContactAt, asOf) : "never") },
+  { id: "silence", head: "Longest silence", slot: "c", align: "right", width: 122, cell: ({ longestSilenceS }) => (longestSilenceS === null ? NO_VALUE : formatDuration(longestSilenceS)) },
+  { id: "state", head: "Says", slot: "d", width: 150, cell: ({ rig }) => rig.agent?.message ?? rig.agent?.state ?? NO_VALUE },
+  { id: "clock", head: "Clock / s", slot: "x", align: "right", width: 92, cell: ({ rig }) => clockOf(rig) },
+  { id: "agent", head: "Agent", slot: "x", align: "right", width: 170, cell: ({ rig: { agent } }) => (agent ? <span className="whitespace-normal">{agent.name} {agent.version}</span> : NO_VALUE) },
 ];
 
 export function AgentsTable({ rigs, asOf }: { rigs: readonly RigAnswer[]; asOf: number }) {

@@ -4,7 +4,7 @@ import { capitalised, formatVolume, listOf, plural } from "@/lib/format";
 import type { RigAnswer } from "@/lib/rigs/schema";
 import type { LaneAnswer } from "@/lib/rigs/timeline-schema";
 
-const ITEM = "w-[70px] text-[11.5px] leading-[15px] text-ink2";
+const ITEM = "w-[78px] text-[11.5px] leading-[15px] text-ink2";
 
 /** The bottles of a rig and its waste, drawn as vessels, with a notch at what the campaign on it and those in line still need. */
 export function RigBottles({ rig, needs }: { rig: RigAnswer; needs: LaneAnswer["needs"] | undefined }) {

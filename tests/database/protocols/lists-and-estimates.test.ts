@@ -85,6 +85,9 @@ describe("estimateProtocol", () => {
     expect(estimate.seconds.likely).toBeLessThan(estimate.seconds.high);
     expect(estimate.blocks.fill).toEqual({ seconds: expect.closeTo(131, 5) as number, ml: 40 });
     expect(estimate.blocks.dry.seconds).toBeCloseTo(601, 5);
+    expect(estimate.strip.isWhole).toBe(true);
+    expect(estimate.strip.segments.filter(({ kind, find }) => kind === "liquid" && !find).map(({ medium, cycle }) => [medium, cycle])).toEqual([["sample", 1], ["sample", 2], ["sample", 3]]);
+    expect((Date.parse(estimate.strip.to) - Date.parse(estimate.strip.from)) / 1000).toBeCloseTo(estimate.seconds.likely, 0);
   });
 
   test("a faster ring-down makes it shorter: the sensor counts", async () => {

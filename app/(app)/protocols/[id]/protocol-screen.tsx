@@ -2,6 +2,7 @@
 
 import { useQuery } from "@tanstack/react-query";
 import Link from "next/link";
+import type { ReactNode } from "react";
 import { PageTitle, Section } from "@/components/ui/page";
 import { Empty, Loading, Problem } from "@/components/ui/states";
 import { inWords, plural } from "@/lib/format";
@@ -35,7 +36,7 @@ export function ProtocolScreen({ protocolId, versionId, role, zone, now }: Proto
         {protocol.retiredAt && <span className="text-ink2">, retired</span>}
       </PageTitle>
       {versionId ? (
-        <Version protocol={protocol} versionId={versionId} margin={<VersionsMargin protocol={protocol} shownId={versionId} zone={zone} now={now} mayEdit={mayEdit} />} />
+        <Version protocol={protocol} versionId={versionId} zone={zone} margin={<VersionsMargin protocol={protocol} shownId={versionId} zone={zone} now={now} mayEdit={mayEdit} />} />
       ) : (
         <Section head="Steps"><Empty>There is only a draft of {protocol.name} so far{mayEdit ? "" : "; a researcher is writing it"}.</Empty></Section>
       )}
@@ -48,13 +49,16 @@ function saved({ version, savedAt, savedBy, campaigns, note }: ProtocolAnswer["v
   return <>Version {version}, saved {formatDayTime(savedAt, zone, now)}{savedBy && ` by ${savedBy}`}. {ran}; it stays as it is.{note && <><br />{note}</>}</>;
 }
 
-function Version({ protocol, versionId, margin }: { protocol: ProtocolAnswer; versionId: string; margin: React.ReactNode }) {
+type VersionProps = { protocol: ProtocolAnswer; zone: string; margin: ReactNode };
+
+function Version({ versionId, ...props }: VersionProps & { versionId: string }) {
+  const { protocol } = props;
   const { data: version, error, refetch } = useQuery(versionOptions(protocol.id, versionId));
   if (!version) return <Section head="Steps">{error ? <Problem error={error} onRetry={() => void refetch()} /> : <Loading label="the version" height={320} />}</Section>;
-  return <VersionBody protocol={protocol} version={version} margin={margin} />;
+  return <VersionBody {...props} version={version} />;
 }
 
-function VersionBody({ protocol, version, margin }: { protocol: ProtocolAnswer; version: VersionAnswer; margin: React.ReactNode }) {
+function VersionBody({ protocol, version, zone, margin }: VersionProps & { version: VersionAnswer }) {
   const { definition } = version;
   const estimate = useQuery(estimateOptions({ definition, rigId: "", sensorId: "" }));
   const others = protocol.versions.filter(({ id }) => id !== version.id);
@@ -69,7 +73,7 @@ function VersionBody({ protocol, version, margin }: { protocol: ProtocolAnswer; 
             <EndBar />
           </div>
           <aside>
-            {estimate.error && !estimate.data ? <Problem error={estimate.error} onRetry={() => void estimate.refetch()} /> : <EstimatePanel estimate={estimate.data} busy={estimate.isFetching} />}
+            {estimate.error && !estimate.data ? <Problem error={estimate.error} onRetry={() => void estimate.refetch()} /> : <EstimatePanel estimate={estimate.data} busy={estimate.isFetching} zone={zone} />}
             {estimate.data && <ProblemsPanel estimate={estimate.data} />}
           </aside>
         </div>

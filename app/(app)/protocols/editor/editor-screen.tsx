@@ -92,7 +92,7 @@ export function EditorScreen({ zone, ...begun }: EditorScreenProps) {
             <div className="buttons border-t border-rule pt-2"><AddStep place={{ list: "blocks", inside: null, index: draft.blocks.length }} word="Add step" /></div>
           </div>
           <aside className="stays">
-            {estimate.error && !estimate.data ? <Problem error={estimate.error} onRetry={() => void estimate.refetch()} /> : <EstimatePanel estimate={estimate.data} busy={estimate.isFetching} rigName={rigName} sensorSerial={sensorSerial} stale={!definition} />}
+            {estimate.error && !estimate.data ? <Problem error={estimate.error} onRetry={() => void estimate.refetch()} /> : <EstimatePanel estimate={estimate.data} busy={estimate.isFetching} zone={zone} rigName={rigName} sensorSerial={sensorSerial} stale={!definition} />}
             {places > 0 && <MistakesPanel draft={draft} errors={errors} onOpen={openAt} />}
             {estimate.data && definition && <ProblemsPanel estimate={estimate.data} rigName={rigName} onOpen={openAt} />}
           </aside>

@@ -2,6 +2,7 @@
 
 import { at } from "@/lib/protocol/sentence";
 import { useFields } from "./editor-context";
+import { SweepPreview } from "./sweep-preview";
 import { NumberInput, SelectInput } from "./typed-fields";
 
 /** Where one repeat sweeps, how wide, how finely, how slowly and how hard. */
@@ -10,6 +11,8 @@ export function SweepFields() {
   const isTracked = at(values, "sweep.centre") === "track";
   const isInHz = unitOf(values, "sweep.span", "hz");
   const isInSeconds = unitOf(values, "sweep.dwell", "s");
+  const halfWidths = at(values, "sweep.span.halfWidths");
+  const points = at(values, "sweep.points");
   return (
     <fieldset className="field-set">
       <legend>Sweep</legend>
@@ -39,9 +42,12 @@ export function SweepFields() {
       />
       <NumberInput key={`dwell ${isInSeconds}`} path={isInSeconds ? "sweep.dwell.s" : "sweep.dwell.ringDowns"} label="Dwell" hint={isInSeconds ? "s a point" : "ring-downs a point"} />
       <NumberInput path="sweep.driveV" label="Drive" hint="V" />
+      {isTracked && isPositive(halfWidths) && isPositive(points) && <SweepPreview halfWidths={halfWidths} points={Math.min(4001, Math.max(11, Math.round(points)))} />}
     </fieldset>
   );
 }
+
+const isPositive = (value: unknown): value is number => typeof value === "number" && value > 0 && Number.isFinite(value);
 
 /** The unit stays chosen while its field is empty: an object without its number still says so by not having the other. */
 function unitOf(values: unknown, path: string, unit: "hz" | "s"): boolean {
