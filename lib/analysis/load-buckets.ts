@@ -1,9 +1,10 @@
 import { smallestSize } from "@/lib/analysis/bucket-runs";
 import { loadRepeats } from "@/lib/analysis/load-repeats";
+import { loadOpenPhase } from "@/lib/analysis/open-phase";
 import type { SelectedPhase } from "@/lib/analysis/select-phases";
 import { rows } from "@/lib/db";
 import { countOf, decodeBuckets, type Buckets } from "@/lib/phases/buckets";
-import { keptOf, levelFor, type Quantity } from "@/lib/phases/levels";
+import { FINER, keptOf, levelFor, type Quantity } from "@/lib/phases/levels";
 
 type Load = { fitRunId: string; quantity: Quantity; points: number; from?: Date; to?: Date };
 
@@ -12,7 +13,7 @@ export type PhaseBuckets = { phase: SelectedPhase; buckets: Buckets; leftOut: nu
 /**
  * What a plot of at most `points` buckets needs of each phase within a window of time: of phases that lie in it as a whole the
  * coarsest stored level that is fine enough, of those that its ends cut, and of those too short for a level, the repeats
- * themselves. Phases outside are not read at all.
+ * themselves. The phase under way is put together in the database. Phases outside are not read at all.
  */
 export async function loadBuckets(phases: readonly SelectedPhase[], { fitRunId, quantity, points, from, to }: Load): Promise<PhaseBuckets[]> {
   const touched = phases.filter((phase) => reach(phase, from, to) !== "outside");
@@ -31,6 +32,7 @@ export async function loadBuckets(phases: readonly SelectedPhase[], { fitRunId, 
       if (buckets) found.set(phase.phaseId, { phase, buckets, leftOut: (phase.n ?? 0) - countOf(buckets) });
     }
   }
+  for (const phase of touched) if (!phase.closed) found.set(phase.phaseId, { phase, ...(await loadOpenPhase(phase, { fitRunId, quantity, parts: FINER * points, from, to })) });
   const rest = touched.filter(({ phaseId }) => !found.has(phaseId));
   for await (const { phase, repeats } of loadRepeats(rest, { fitRunId, quantity })) {
     const [start, end] = [from?.getTime() ?? -Infinity, to?.getTime() ?? Infinity];

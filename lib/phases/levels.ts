@@ -8,7 +8,7 @@ const PARTS = [1, 16, 128, 1024] as const;
 /** Repeats a part has to stand for: a level with more parts would hardly be smaller than the columns. */
 const WORTH = 4;
 /** Stored parts that make one bucket of a plot, at least: fewer would make buckets of uneven length. */
-const FINER = 4;
+export const FINER = 4;
 
 const COURSE_PARTS = 24;
 

@@ -26,7 +26,8 @@ type Given = { repeats: number; points: number; rigs?: number };
 /** PostgreSQL, web and worker in a folder of their own, and rigs with a campaign each of nothing but air. */
 export async function startBenchLaboratory({ rigs = 1, ...given }: Given, later: (undo: () => Promise<void> | void) => void): Promise<{ url: string; tokens: string[]; pids: ReadonlyMap<string, number> }> {
   const root = path.resolve(import.meta.dirname, "../..");
-  await ensureBuild({ root, distDir: ".next", step: (_title, work) => work() });
+  const distDir = process.env.LONGREED_DIST_DIR ?? ".next";
+  await ensureBuild({ root, distDir, step: (_title, work) => work() });
   const home = fs.mkdtempSync(path.join(os.tmpdir(), "longreed-bench-"));
   fs.chmodSync(home, 0o711);
   later(() => fs.rmSync(home, { recursive: true, force: true }));
@@ -44,7 +45,7 @@ export async function startBenchLaboratory({ rigs = 1, ...given }: Given, later:
   const pids = new Map<string, number>();
   const start = (service: Service) =>
     later(supervise(service, { root, logDirectory: data.logDirectory, notice: (line) => console.error(line), onStart: (name, pid) => pids.set(name, pid) }).stop);
-  start(webService({ root, env, port: ports.web, distDir: ".next" }));
+  start(webService({ root, env, port: ports.web, distDir }));
   start(workerService({ root, env }));
   const url = `http://127.0.0.1:${ports.web}`;
   const tokens = await makeCampaigns(given, rigs);

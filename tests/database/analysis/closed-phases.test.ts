@@ -52,25 +52,35 @@ async function exclude(stepId: string, idx: number): Promise<void> {
   await refresh(stepId);
 }
 
-describe("series from levels", () => {
-  const time = (answer: SeriesAnswer, share: number) => answer.buckets[Math.floor(share * (answer.buckets.length - 1))].from;
-
-  test.each(["f0", "q", "temperature"] as const)("%s: every bucket holds the number, extremes and mean of the repeats between its ends", async (quantity) => {
-    const repeats = await readSeries(campaignId, seriesQuery.parse({ quantity, points: 5000 }));
-    const windows = [{}, { from: time(repeats, 0.2), to: time(repeats, 0.9) }, { from: time(repeats, 0.4) }, { to: time(repeats, 0.55) }];
-    for (const points of [10, 24, 60, 300]) {
-      for (const window of windows) {
-        const answer = await readSeries(campaignId, seriesQuery.parse({ quantity, points, ...window }));
-        expect(answer.buckets.length).toBeLessThanOrEqual(points);
-        for (const { phaseId, from, to, min, max, mean, n } of answer.buckets) {
-          const inside = repeats.buckets.filter((one) => one.phaseId === phaseId && one.from >= from && one.to <= to).map((one) => one.mean);
-          expect({ n: inside.length, min: Math.min(...inside), max: Math.max(...inside) }).toEqual({ n, min, max });
-          expect(mean).toBeCloseTo(inside.reduce((sum, value) => sum + value, 0) / n, 9);
-        }
-        const inWindow = repeats.buckets.filter((one) => (!window.from || one.from >= window.from) && (!window.to || one.from <= window.to));
-        expect(answer.n).toBe(inWindow.length);
+/** Asks in few and in many points, of all and of windows: every bucket has to hold what the repeats between its ends say. */
+async function holdToRepeats(repeats: SeriesAnswer, quantity: "f0" | "q" | "temperature"): Promise<void> {
+  const time = (share: number) => repeats.buckets[Math.floor(share * (repeats.buckets.length - 1))].from;
+  const windows = [{}, { from: time(0.2), to: time(0.9) }, { from: time(0.4) }, { to: time(0.55) }];
+  for (const points of [10, 24, 60, 300]) {
+    for (const window of windows) {
+      const answer = await readSeries(campaignId, seriesQuery.parse({ quantity, points, ...window }));
+      expect(answer.buckets.length).toBeLessThanOrEqual(points);
+      for (const { phaseId, from, to, min, max, mean, n } of answer.buckets) {
+        const inside = repeats.buckets.filter((one) => one.phaseId === phaseId && one.from >= from && one.to <= to).map((one) => one.mean);
+        expect({ n: inside.length, min: Math.min(...inside), max: Math.max(...inside) }).toEqual({ n, min, max });
+        expect(mean).toBeCloseTo(inside.reduce((sum, value) => sum + value, 0) / n, 9);
       }
+      const inWindow = repeats.buckets.filter((one) => (!window.from || one.from >= window.from) && (!window.to || one.from <= window.to));
+      expect(answer.n).toBe(inWindow.length);
     }
+  }
+}
+
+describe("series from levels", () => {
+  test.each(["f0", "q", "temperature"] as const)("%s: every bucket holds the number, extremes and mean of the repeats between its ends", async (quantity) => {
+    await holdToRepeats(await readSeries(campaignId, seriesQuery.parse({ quantity, points: 5000 })), quantity);
+  });
+
+  test.each(["f0", "q", "temperature"] as const)("%s of a phase under way, put together in the database, likewise", async (quantity) => {
+    const closed = await readSeries(campaignId, seriesQuery.parse({ quantity, points: 5000 }));
+    await change(`delete from phase_summary where phase_id <> $1`, [steps[0].phaseId]);
+    expect(await readSeries(campaignId, seriesQuery.parse({ quantity, points: 5000 }))).toEqual(closed);
+    await holdToRepeats(closed, quantity);
   });
 
   test("all points of one phase together are near as even as from the repeats", async () => {
