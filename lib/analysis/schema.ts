@@ -1,5 +1,6 @@
 import { z } from "zod";
 import { idSchema } from "@/lib/http/ids";
+import { FLAGS, flagNames, LEFT_OUT, type Flag } from "@/lib/numerics/resonance/flags";
 import { instant } from "@/lib/schema";
 
 const cycles = z
@@ -8,6 +9,21 @@ const cycles = z
   .transform((text) => text.split("-").map(Number))
   .transform(([from, to = from]) => ({ from, to }))
   .refine(({ from, to }) => from <= to, "the range begins after its end");
+
+const DEFAULT_LEAVE_OUT = flagNames(LEFT_OUT).join(",");
+
+const isFlag = (text: string): text is Flag => (FLAGS as readonly string[]).includes(text);
+
+/** Flags that leave a reading out, in the order of their bits: `failed,edge`, or `none`. */
+const leaveOut = z
+  .string()
+  .regex(/^[a-z]+(,[a-z]+)*$/, `is none or a list of ${FLAGS.join(", ")}`)
+  .default(DEFAULT_LEAVE_OUT)
+  .transform((text) => (text === "none" ? [] : text.split(",")))
+  .refine((names) => names.every(isFlag), `is none or a list of ${FLAGS.join(", ")}`)
+  .transform((names) => FLAGS.filter((flag) => names.includes(flag)));
+
+const compensate = z.enum(["none", "temperature"]).default("none");
 
 /** What of a campaign a question is about. */
 export const selection = z.object({
@@ -44,7 +60,28 @@ export const stabilityQuery = selection.extend({
   taus: z.enum(["octave", "decade", "all"]).default("octave"),
   confidence: z.coerce.number().min(0.5).max(0.9999).default(0.683),
   normalise: z.enum(["fractional", "absolute"]).default("fractional"),
+  compensate,
+  leaveOut,
+  /** Whether points within phases are freed of the pauses between repeats, where these are not negligible. */
+  deadTime: z.enum(["stated", "corrected"]).default("stated"),
 });
+
+/** How values were brought to one temperature, or why they could not be. Coefficients at `referenceC`, in values per K, per K², the lag in days. */
+export const compensation = z.object({
+  applied: z.boolean(),
+  model: z.enum(["none", "linear", "quadratic", "linear with lag", "quadratic with lag"]).nullable(),
+  referenceC: z.number().nullable(),
+  terms: z.array(z.object({ name: z.enum(["linear", "quadratic", "lag"]), value: z.number(), u: z.number() })),
+  /** The drift that was fitted together with the coefficients. */
+  driftPerDay: z.number().nullable(),
+  driftU: z.number().nullable(),
+  /** Share by which the thermometer's scatter makes the linear coefficient too small; its doubt is in `u`. */
+  attenuation: z.number().nullable(),
+  n: z.int(),
+  used: z.string(),
+});
+
+const parts = z.object({ white: z.number(), flicker: z.number(), randomWalk: z.number(), driftPerS: z.number() });
 
 export const stabilityAnswer = z.object({
   tau0S: z.number().nullable(),
@@ -61,13 +98,30 @@ export const stabilityAnswer = z.object({
       edf: z.number(),
       noise: z.string(),
       noiseMarked: z.string().optional(),
+      /** What the uncertainty of a temperature compensation can add to the deviation. */
+      compensationU: z.number().optional(),
     }),
   ),
   /** What was used, in words. */
   used: z.string(),
+  /** Parts of the overlapping Allan variance with their standard uncertainties, and the averaging time of least deviation with those as good within 5 %. */
+  parts: parts.extend({ u: parts, best: z.object({ tauS: z.number(), deviation: z.number(), fromS: z.number(), toS: z.number() }) }).nullish(),
+  /** Readings by why they do not count, and flagged ones that do; within phases. */
+  readings: z.object({ n: z.int(), used: z.int(), reasons: z.record(z.string(), z.int()), flaggedButUsed: z.record(z.string(), z.int()) }).nullish(),
+  /** Pauses between repeats: spacing over length of one, share of time without measuring, the largest effect on a point, what was done. */
+  deadTime: z
+    .object({
+      repeatS: z.number(),
+      r: z.number(),
+      deadShare: z.number(),
+      largestEffect: z.number().nullable(),
+      treatment: z.enum(["none", "negligible", "corrected", "stated", "not available"]),
+    })
+    .nullish(),
+  compensation: compensation.nullish(),
 });
 
-export const driftQuery = selection.extend({ quantity: quantity.default("f0"), compensate: z.enum(["none", "temperature"]).default("none") });
+export const driftQuery = selection.extend({ quantity: quantity.default("f0"), compensate });
 
 const slope = z.object({ slopePerDay: z.number(), lower: z.number(), upper: z.number() });
 
@@ -85,9 +139,27 @@ export const driftAnswer = z.object({
   n: z.int(),
   leastSquares: slope.extend({ u: z.number() }).nullable(),
   theilSen: slope.nullable(),
+  /** Mean exponent of the noise about the line: 0 white, −1 flicker, −2 random walk. */
+  alpha: z.number().nullish(),
+  mannKendall: z.object({ s: z.int(), z: z.number(), p: z.number(), exactP: z.number().nullable(), tau: z.number() }).nullish(),
+  /** `a + b ln(1 + t/τ)` from the first value on; its AICc less that of a line is below 0 where it is preferred. */
+  ageing: z.object({ a: z.number(), b: z.number(), tauDays: z.number(), aiccDifference: z.number(), preferred: z.enum(["ageing", "line"]) }).nullish(),
   steps: z.array(z.object({ at: z.string(), size: z.number(), u: z.number() })),
-  values: z.array(z.object({ at: z.string(), value: z.number(), u: z.number().nullable(), cycle: z.int(), phaseId: z.string() })),
+  values: z.array(
+    z.object({
+      at: z.string(),
+      value: z.number(),
+      u: z.number().nullable(),
+      cycle: z.int(),
+      phaseId: z.string(),
+      sequence: z.int().optional(),
+      temperatureC: z.number().nullish(),
+      /** What a compensation adds to the uncertainty of all values together. */
+      commonU: z.number().nullish(),
+    }),
+  ),
   used: z.string(),
+  compensation: compensation.nullish(),
 });
 
 export const backToAirAnswer = z.object({
@@ -119,6 +191,7 @@ export const backToAirAnswer = z.object({
 export type Selection = z.output<typeof selection>;
 export type SeriesQuery = z.output<typeof seriesQuery>;
 export type SeriesAnswer = z.output<typeof seriesAnswer>;
+export type CompensationAnswer = z.output<typeof compensation>;
 export type StabilityQuery = z.output<typeof stabilityQuery>;
 export type StabilityAnswer = z.output<typeof stabilityAnswer>;
 export type DriftQuery = z.output<typeof driftQuery>;

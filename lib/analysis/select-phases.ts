@@ -17,6 +17,9 @@ export type SelectedPhase = {
   f0U: number | null;
   qMean: number | null;
   qU: number | null;
+  /** Thermometer's mean over the phase and the standard deviation about it, °C. */
+  temperatureC: number | null;
+  temperatureSd: number | null;
   closed: boolean;
   /** How many repeats a closed phase has. */
   n: number | null;
@@ -27,14 +30,13 @@ export type SelectedPhase = {
 
 /** The fit run a question is about: the named one of this campaign, else the current. Undefined before the campaign has started. */
 export async function findFitRun(campaignId: string, fitRunId?: string): Promise<string | undefined> {
-  const campaign = await row(`select id from campaign where id = $1`, [campaignId]);
-  if (!campaign) throw notFound("campaign");
-  const run = await row<{ id: string }>(
-    `select id from fit_run where campaign_id = $1 and case when $2::bigint is null then current else id = $2 end`,
+  const found = await row<{ id: string | null }>(
+    `select (select r.id from fit_run r where r.campaign_id = c.id and case when $2::bigint is null then r.current else r.id = $2 end) as id from campaign c where c.id = $1`,
     [campaignId, fitRunId ?? null],
   );
-  if (!run && fitRunId) throw notFound("fit run of this campaign");
-  return run?.id;
+  if (!found) throw notFound("campaign");
+  if (!found.id && fitRunId) throw notFound("fit run of this campaign");
+  return found.id ?? undefined;
 }
 
 const SELECTED = `
@@ -51,7 +53,7 @@ export function selectPhases(campaignId: string, fitRunId: string, selection: Se
   return rows<SelectedPhase>(
     `select p.id as "phaseId", p.step_id as "stepId", p.sequence, p.cycle, p.medium, p.role, p.set_point_c as "setPointC", p.mount_id as "mountId",
             p.discard, p.started_at as "startedAt", s.f0_mean as "f0Mean", s.f0_u as "f0U", s.q_mean as "qMean", s.q_u as "qU",
-            s.phase_id is not null as closed, s.n, s.earliest_at as "earliestAt", s.latest_at as "latestAt"
+            s.temperature_mean as "temperatureC", s.temperature_sd as "temperatureSd", s.phase_id is not null as closed, s.n, s.earliest_at as "earliestAt", s.latest_at as "latestAt"
        ${SELECTED} order by p.sequence`,
     bindOf(campaignId, fitRunId, selection),
   );

@@ -231,4 +231,15 @@ describe("stored answers", () => {
     await forgetOldResults({ now: later(15) });
     expect(await count()).toBe(0);
   });
+
+  test("are kept of two hundred questions a campaign, the last asked", async () => {
+    await change(
+      `insert into analysis_result (campaign_id, question_hash, question, code, content, answer, made_at, asked_at)
+       select $1, convert_to(n::text, 'UTF8'), '{}', '', '', '{}', now(), now() - make_interval(mins => n) from generate_series(1, 205) n`,
+      [campaignId],
+    );
+    await forgetOldResults({ now: new Date() });
+    const left = await rows<{ n: number }>(`select convert_from(question_hash, 'UTF8')::int as n from analysis_result where campaign_id = $1 order by 1`, [campaignId]);
+    expect(left.map(({ n }) => n)).toEqual(Array.from({ length: 200 }, (_, i) => i + 1));
+  });
 });
