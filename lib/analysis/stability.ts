@@ -1,3 +1,4 @@
+import { demandCompensated } from "@/lib/analysis/demand-compensated";
 import { offLoop } from "@/lib/analysis/off-loop";
 import { resultOf } from "@/lib/analysis/results";
 import type { StabilityAnswer, StabilityQuery } from "@/lib/analysis/schema";
@@ -11,6 +12,8 @@ const MOST_HERE = 200_000;
 /**
  * Stability of f0 or Q, over repeats within phases or over phase values from cycle to cycle. The phase under way comes in when
  * it closes, unless it is the only one: an answer then stands, and is kept, until the next phase closes.
+ *
+ * @throws AppError 404, 422 with several set-points and none named, or where there is no temperature coefficient.
  */
 export async function readStability(campaignId: string, query: StabilityQuery, { background = false } = {}): Promise<StabilityAnswer> {
   const fitRunId = await findFitRun(campaignId, query.fitRunId);
@@ -20,13 +23,14 @@ export async function readStability(campaignId: string, query: StabilityQuery, {
   if (query.setPointC === undefined) demandOneSetPoint(setPointsC);
 
   const select = () => selectPhases(campaignId, fitRunId, selection);
-  if (closed === 0 || !content) return stabilityOf({ phases: await select(), fitRunId, query });
+  if (closed === 0 || !content) return demandCompensated(await stabilityOf({ phases: await select(), fitRunId, query }));
   const compute = async () => {
     const given = { phases: (await select()).filter((phase) => phase.closed), fitRunId, query };
     return costOf(given.phases, query) <= MOST_HERE ? stabilityOf(given) : offLoop("stability", given);
   };
   const contentNow = async () => (await contentOf(campaignId, fitRunId, selection)).content;
-  return resultOf({ campaignId, question: { kind: "stability", query }, fitRunId, content, contentNow, background, compute });
+  const answer = await resultOf({ campaignId, question: { kind: "stability", query }, fitRunId, content, contentNow, background, compute });
+  return background ? answer : demandCompensated(answer);
 }
 
 function costOf(phases: readonly SelectedPhase[], { view, taus }: StabilityQuery): number {

@@ -56,6 +56,18 @@ export const partSql = (quantity: "f0" | "q" | "temperature"): string => {
   return `${from(0, 8)} || ${from(OFFSET[quantity], 8)} || ${from(OFFSET.leftOut, 1)}`;
 };
 
+/** SQL for index and flags of the repeats out of `phase_summary.columns`. */
+export const marksSql = `substring(columns from 40 * (length(columns) / ${BYTES_EACH}) + 1 for 6 * (length(columns) / ${BYTES_EACH}))`;
+
+/** @throws RangeError when the length is no whole number of repeats. */
+export function decodeMarks(bytes: Buffer): Pick<PhaseColumns, "idx" | "flags"> {
+  const n = bytes.byteLength / 6;
+  if (!Number.isInteger(n)) throw new RangeError(`${bytes.byteLength} bytes are no whole number of repeats of 6 bytes`);
+  const buffer = new ArrayBuffer(bytes.byteLength);
+  new Uint8Array(buffer).set(bytes);
+  return { idx: new Int32Array(buffer, 0, n), flags: new Uint16Array(buffer, 4 * n, n) };
+}
+
 /** @throws RangeError when the length is no whole number of repeats. */
 export function decodePart(bytes: Buffer): RepeatsOf {
   const n = bytes.byteLength / PART_BYTES_EACH;
