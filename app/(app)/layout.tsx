@@ -5,6 +5,7 @@ import { Toaster } from "@/components/ui/toaster";
 import { env } from "@/lib/env";
 import { currentPerson } from "@/lib/people/current-person";
 import { getMe } from "@/lib/people/me";
+import { FollowChanges } from "./follow-changes";
 import { OutboxProvider } from "./outbox/outbox-provider";
 import { TopOfPage } from "./top-of-page";
 
@@ -12,6 +13,7 @@ export default async function AppLayout({ children }: { children: ReactNode }) {
   const me = await getMe({ by: await currentPerson(), now: new Date() });
   return (
     <QueryProvider>
+      <FollowChanges />
       <OutboxProvider personId={me.id}>
         <Page masthead={<TopOfPage me={me} demo={env().LONGREED_DEMO} />}>{children}</Page>
       </OutboxProvider>

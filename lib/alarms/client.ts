@@ -2,7 +2,7 @@ import { infiniteQueryOptions, queryOptions } from "@tanstack/react-query";
 import { alarmAnswer, alarmDetail, alarmPage, type AlarmAnswer } from "@/lib/alarms/schema";
 import { fetchJson } from "@/lib/http/fetch-json";
 
-const LIVE_MS = 5000;
+const LIVE_MS = 30_000;
 
 type AlarmPage = { items: AlarmAnswer[]; nextCursor: string | null };
 

@@ -8,9 +8,9 @@ import { fetchJson } from "@/lib/http/fetch-json";
 import { sweepAnswer } from "@/lib/readings/schema";
 
 /** How often a page asks again while something runs, and while nothing does. */
-const LIVE_MS = 2000;
+const LIVE_MS = 10_000;
 const STRIPS_MS = 10_000;
-const IDLE_MS = 30_000;
+const IDLE_MS = 60_000;
 
 export type Ask = Readonly<Record<string, string | number | undefined>>;
 

@@ -44,7 +44,9 @@ export async function insertReadings(transaction: Transaction, { stepId, reading
          from input join kept using (idx)),
      counted as (
        update step set stored = stored + (select count(*) from kept), lease_expires_at = coalesce($20, lease_expires_at) where id = $1),
-     told as (select pg_notify($21, 'fit:' || $1::text || ':' || min(idx)) from kept having count(*) > 0)
+     told as (
+       select pg_notify($21, 'fit:' || $1::text || ':' || min(kept.idx)), pg_notify($21, 'changed:campaign:' || min(step.campaign_id))
+         from kept join step on step.id = $1 having count(*) > 0)
      select idx, (select count(*) from told) from kept`,
     [
       stepId,

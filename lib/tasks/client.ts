@@ -2,7 +2,7 @@ import { queryOptions } from "@tanstack/react-query";
 import { fetchJson } from "@/lib/http/fetch-json";
 import { taskPage } from "@/lib/tasks/schema";
 
-const LIVE_MS = 5000;
+const LIVE_MS = 30_000;
 
 export const tasksOptions = () =>
   queryOptions({

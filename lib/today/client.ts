@@ -2,8 +2,8 @@ import { queryOptions } from "@tanstack/react-query";
 import { fetchJson } from "@/lib/http/fetch-json";
 import { todayAnswer } from "@/lib/today/schema";
 
-const LIVE_MS = 2000;
-const IDLE_MS = 15_000;
+const LIVE_MS = 10_000;
+const IDLE_MS = 60_000;
 
 export const todayOptions = () =>
   queryOptions({
