@@ -251,6 +251,7 @@ export const PREPARATIONS: Readonly<Record<string, (example: unknown) => Promise
   "POST /api/alarms/{id}/shelve": anAlarm,
   "GET /api/audit": listOf(aBlockedTime),
   "POST /api/blocked-times/{id}/withdraw": () => made(aBlockedTime()),
+  "GET /api/changes": async () => ({ query: "?forS=1" }),
   "GET /api/campaigns": listOf(measuredCampaign, aLine),
   "POST /api/campaigns": choice,
   "POST /api/campaigns/check": choice,
