@@ -41,7 +41,8 @@ type Point = { tauS: number; deviation: number; edf: number };
  *
  * Least squares relative to the standard deviation of each point, σ² √(2/edf) with σ² of the fitted curve, over every set
  * of parts; of those without a negative coefficient the best counts. The points of one series are correlated: uncertainties
- * follow from that correlation under the noise found, to first order.
+ * follow from that correlation under the noise found, to first order and for the parts found: in long records they may be a
+ * third too small for the doubt about which parts there are.
  *
  * @param points Of an Allan or overlapping Allan deviation, rising τ in seconds; points without deviation are passed over,
  *   and of points closer than a ratio of 1.4 the first is taken.
