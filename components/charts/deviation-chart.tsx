@@ -8,7 +8,7 @@ import { formatDuration } from "@/lib/format-time";
 import { HATCH } from "@/components/strip/tint";
 import { AxisX, AxisY } from "./axes";
 import { isDrawable, logRange, notMeasured, placeLabels, type DeviationCurve, type DeviationPoint } from "./deviation";
-import { acrossShifts, CurveDrawing, labelWishes, NoiseGuides, noiseGuides } from "./deviation-curves";
+import { acrossShifts, CurveDrawing, labelWishes, marksTaken, NoiseGuides, noiseGuides } from "./deviation-curves";
 import { NoiseLanes, NOISE_LANE_PX } from "./noise-lanes";
 import { Plot } from "./plot";
 import { QuantityLabel, quantityText, type PlotQuantity } from "./plot-quantity";
@@ -54,7 +54,7 @@ export function DeviationChart({ label, sentence, file, curves, quantity = ALLAN
   const empty = notMeasured(drawn);
   const shifts = acrossShifts(drawn, x);
   const guides = noiseGuides({ curves: drawn, x, y, right, small });
-  const places = placeLabels(labelWishes(drawn, shifts, x, y), { right, bottom: bottom - 4, taken: guides });
+  const places = placeLabels(labelWishes(drawn, shifts, x, y), { right, bottom: bottom - 4, taken: [...guides, ...marksTaken(drawn, shifts, x, y)] });
 
   function onKeyDown(event: KeyboardEvent) {
     const last = points.length - 1;

@@ -50,6 +50,12 @@ export function labelWishes(curves: readonly DeviationCurve[], shifts: readonly 
   ];
 }
 
+/** What the marks themselves cover, as wide as two letters. */
+export function marksTaken(curves: readonly DeviationCurve[], shifts: readonly number[], x: LogScale, y: LogScale): (LabelPlace & { text: string })[] {
+  const mark = ({ tau, deviation }: DeviationPoint, shift: number) => ({ x: x(tau) + shift - 6, y: y(deviation) + 4, anchor: "start" as const, text: "··" });
+  return curves.flatMap(({ within, across = [] }, i) => [...within.map((point) => mark(point, 0)), ...across.map((point) => mark(point, shifts[i] ?? 0))]);
+}
+
 /** `endShare`: height of the end as a share of the plot; without one the guide hangs under the first points. */
 const GUIDES: readonly { slope: number; text: string; endShare?: number; inSmall?: boolean }[] = [
   { slope: -0.5, text: "white, −½", inSmall: true },

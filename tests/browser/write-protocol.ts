@@ -38,7 +38,7 @@ async function choose(page: Page, trigger: Locator, item: RegExp): Promise<void>
   await page.getByRole("menuitem", { name: item }).click();
 }
 
-async function fillSheet(page: Page, sentence: RegExp, fields: Readonly<Record<string, string>>): Promise<void> {
+export async function fillSheet(page: Page, sentence: RegExp, fields: Readonly<Record<string, string>>): Promise<void> {
   const sheet = page.getByRole("group", { name: sentence }).last();
   for (const [label, value] of Object.entries(fields)) await sheet.getByLabel(label, { exact: true }).fill(value);
   await sheet.getByRole("button", { name: "Done" }).click();

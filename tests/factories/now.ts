@@ -8,6 +8,15 @@ export const DAY_MS = 24 * HOUR_MS;
 export const hours = (h: number): Date => new Date(now.getTime() + h * HOUR_MS);
 
 let count = 0;
+let place = 0;
+
+/** For test files that share a database: the numbers and letters of each begin elsewhere. */
+export function countAtPlace(placeOfFile: number): void {
+  place = placeOfFile;
+  count = place * 1000;
+}
+
+export const placeOfFile = (): number => place;
 
 /** A number that no other record of this test file has: for names that must be unique. */
 export const next = (): number => ++count;

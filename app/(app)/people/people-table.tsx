@@ -59,7 +59,7 @@ export function PeopleTable({ people, myId, zone, now }: { people: readonly Pers
         head: "Since",
         align: "right",
         slot: "d",
-        cell: ({ createdAt, closedAt }) => <span className="num text-ink2">{closedAt ? `closed ${formatDay(closedAt, zone)}` : formatDay(createdAt, zone)}</span>,
+        cell: ({ createdAt, closedAt }) => <span className="num text-ink2">{closedAt ? `closed ${formatDay(closedAt, zone, now)}` : formatDay(createdAt, zone, now)}</span>,
       },
       {
         id: "act",

@@ -15,7 +15,7 @@ import { created } from "@/lib/schema";
 
 /** Tokens of the rig's agent: a new one stands between two ink lines until the page is left, and nowhere afterwards. */
 export function AgentTokens({ rig }: { rig: RigAnswer }) {
-  const { data, error, refetch } = useQuery(tokensOptions(rig.id));
+  const { data, error, refetch, dataUpdatedAt } = useQuery(tokensOptions(rig.id));
   const queries = useQueryClient();
   const [name, setName] = useState("");
   const make = useMutation({
@@ -37,7 +37,7 @@ export function AgentTokens({ rig }: { rig: RigAnswer }) {
           <code className="mt-1 block select-all text-[15px] break-all">{make.data.token}</code>
         </div>
       )}
-      {!data ? error ? <Problem error={error} onRetry={() => void refetch()} /> : <Loading label="the tokens" /> : <TokenList tokens={data.items} rig={rig} />}
+      {!data ? error ? <Problem error={error} onRetry={() => void refetch()} /> : <Loading label="the tokens" /> : <TokenList tokens={data.items} rig={rig} asOf={dataUpdatedAt} />}
       <form className="mt-4 flex max-w-[34em] flex-wrap items-end gap-3" onSubmit={submit}>
         <TextField className="flex-1" label="New token for" hint="The computer or program that will use it" value={name} onChange={(event) => setName(event.target.value)} error={make.error?.message} />
         <Button type="submit" busy={make.isPending} notPossible={name.trim() ? null : "it needs a name"}>Make token</Button>
@@ -46,7 +46,7 @@ export function AgentTokens({ rig }: { rig: RigAnswer }) {
   );
 }
 
-function TokenList({ tokens, rig }: { tokens: readonly TokenAnswer[]; rig: RigAnswer }) {
+function TokenList({ tokens, rig, asOf }: { tokens: readonly TokenAnswer[]; rig: RigAnswer; asOf: number }) {
   const [withdrawing, setWithdrawing] = useState<TokenAnswer | null>(null);
   const queries = useQueryClient();
   const withdraw = useMutation({
@@ -74,9 +74,9 @@ function TokenList({ tokens, rig }: { tokens: readonly TokenAnswer[]; rig: RigAn
             <tr key={token.id} className={token.revokedAt ? "text-ink3" : undefined}>
               <td>{token.name}</td>
               <td className="num">…{token.last4}</td>
-              <td>{formatDay(token.createdAt, rig.timeZone)}{token.createdBy && `, ${token.createdBy}`}</td>
-              <td className="num">{token.lastUsedAt ? formatDayTime(token.lastUsedAt, rig.timeZone) : NO_VALUE}</td>
-              <td className="right">{token.revokedAt ? `withdrawn ${formatDay(token.revokedAt, rig.timeZone)}` : <Button small onClick={() => setWithdrawing(token)}>Withdraw</Button>}</td>
+              <td>{formatDay(token.createdAt, rig.timeZone, asOf)}{token.createdBy && `, ${token.createdBy}`}</td>
+              <td className="num">{token.lastUsedAt ? formatDayTime(token.lastUsedAt, rig.timeZone, asOf) : NO_VALUE}</td>
+              <td className="right">{token.revokedAt ? `withdrawn ${formatDay(token.revokedAt, rig.timeZone, asOf)}` : <Button small onClick={() => setWithdrawing(token)}>Withdraw</Button>}</td>
             </tr>
           ))}
         </tbody>

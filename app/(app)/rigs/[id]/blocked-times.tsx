@@ -17,7 +17,8 @@ const NOTHING = { from: "", to: "", why: "" };
 
 /** When the rig is kept free, in its own time, and a form to block more. */
 export function BlockedTimes({ rig, role }: { rig: RigAnswer; role: Role }) {
-  const { data, error, refetch } = useQuery(blockedTimesOptions(rig.id));
+  const { data, error, refetch, dataUpdatedAt } = useQuery(blockedTimesOptions(rig.id));
+  const now = rig.clock === "simulated" ? (rig.reportedClock ?? undefined) : dataUpdatedAt;
   const queries = useQueryClient();
   const [form, setForm] = useState(NOTHING);
   const mayBlock = may(role, "edit rigs");
@@ -49,7 +50,7 @@ export function BlockedTimes({ rig, role }: { rig: RigAnswer; role: Role }) {
       <ul>
         {data.items.map(({ id, from, to, why, createdBy }) => (
           <li key={id} className="flex flex-wrap items-baseline gap-x-4 border-b border-rule py-1.5">
-            <span className="num">{formatDayTime(from, rig.timeZone)} to {formatDayTime(to, rig.timeZone)}</span>
+            <span className="num">{formatDayTime(from, rig.timeZone, now)} to {formatDayTime(to, rig.timeZone, now)}</span>
             <span className="text-ink2">{why}, {createdBy}</span>
             {mayBlock && <Button className="ml-auto" small busy={unblock.isPending} onClick={() => unblock.mutate(id)}>Unblock</Button>}
           </li>
