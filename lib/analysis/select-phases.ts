@@ -66,11 +66,15 @@ export type SelectedContent = {
   content: Buffer | null;
 };
 
-/** What a selection is made of, in one row: equal contents are equal phases with equal repeats. */
+/**
+ * What a selection is made of, in one row: equal contents are equal phases with equal repeats and the same exclusions, those of
+ * repeats that do not count anyway included.
+ */
 export async function contentOf(campaignId: string, fitRunId: string, selection: Selection): Promise<SelectedContent> {
   const found = await row<SelectedContent>(
     `select count(s.phase_id)::int as closed, coalesce(array_agg(distinct p.set_point_c), '{}') as "setPointsC",
-            sha256(convert_to(string_agg(row(p.id, coalesce(s.digest, sha256(s.columns)), s.f0_mean, s.f0_u, s.q_mean, s.q_u)::text, ' ' order by p.sequence)
+            sha256(convert_to(string_agg(row(p.id, coalesce(s.digest, sha256(s.columns)), s.f0_mean, s.f0_u, s.q_mean, s.q_u,
+                                   (select string_agg(e.idx::text, ',' order by e.idx) from exclusion e where e.step_id = p.step_id and e.undone_at is null))::text, ' ' order by p.sequence)
                                 filter (where s.phase_id is not null), 'UTF8')) as content
        ${SELECTED}`,
     bindOf(campaignId, fitRunId, selection),

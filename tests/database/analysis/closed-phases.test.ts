@@ -7,6 +7,7 @@ import { driftQuery, seriesQuery, stabilityQuery, type SeriesAnswer } from "@/li
 import { readSeries } from "@/lib/analysis/series";
 import { readStability } from "@/lib/analysis/stability";
 import { change, inTransaction, row, rows, sequelize } from "@/lib/db";
+import { flagBits } from "@/lib/numerics/resonance/flags";
 import { refreshPhase } from "@/lib/phases/close-phase";
 import { fillLevels } from "@/lib/phases/fill-levels";
 import { fillCampaign } from "@/scripts/lib/bench-campaign";
@@ -186,6 +187,18 @@ describe("stored answers", () => {
     const after = await all();
     for (const kind of ["within", "phases", "drift"] as const) expect(after[kind]).not.toEqual(before[kind]);
     expect(after).toEqual(await fresh());
+  });
+
+  test("tell an exclusion of a repeat that did not count anyway: it may count where its flag is let in", async () => {
+    const { stepId } = steps[0];
+    await change(`update fit set flags = $2 where step_id = $1 and idx = 50`, [stepId, flagBits(["edge"])]);
+    await refresh(stepId);
+    const before = [await stability(), await stability({ leaveOut: "failed" })];
+    await exclude(stepId, 50);
+    const after = [await stability(), await stability({ leaveOut: "failed" })];
+    expect(after[1]).not.toEqual(before[1]);
+    await change(`delete from analysis_result where campaign_id = $1`, [campaignId]);
+    expect([await stability(), await stability({ leaveOut: "failed" })]).toEqual(after);
   });
 
   test("are brought up to date in the background, without making a question look asked for", async () => {
