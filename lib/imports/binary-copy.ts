@@ -15,7 +15,11 @@ export class BinaryRows {
   private at = 0;
 
   constructor() {
-    this.room(HEADER.length);
+    this.clear();
+  }
+
+  /** Begins anew in the same memory. */
+  clear(): void {
     HEADER.copy(this.bytes, 0);
     this.at = HEADER.length;
   }
@@ -42,9 +46,11 @@ export class BinaryRows {
     return this;
   }
 
-  bigint(value: bigint): this {
+  /** A whole number of at most 2⁵³. */
+  bigint(value: number): this {
     this.field(8);
-    this.at = this.bytes.writeBigInt64BE(value, this.at);
+    this.at = this.bytes.writeInt32BE(Math.floor(value / 2 ** 32), this.at);
+    this.at = this.bytes.writeUInt32BE(value - Math.floor(value / 2 ** 32) * 2 ** 32, this.at);
     return this;
   }
 
@@ -58,7 +64,7 @@ export class BinaryRows {
 
   /** Whole ms since 1970. */
   instant(ms: number): this {
-    return this.bigint(BigInt(ms - SINCE_2000_MS) * 1000n);
+    return this.bigint((ms - SINCE_2000_MS) * 1000);
   }
 
   blob(value: Uint8Array): this {

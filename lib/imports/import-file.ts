@@ -27,8 +27,9 @@ const MOST_PHASES = 20_000;
 const AIR_REFERENCES = 3;
 
 /**
- * Imports a stored file as a finished campaign, all of it or nothing. It is gone through twice: to check every row and to find the
- * phases, then to write what was read; so memory holds a few numbers of each reading and never the file.
+ * Imports a stored file as a finished campaign, all of it or nothing. It is gone through twice: to find the phases, then to check every
+ * row and to write what was read; so memory holds a few numbers of each reading and never the file. Once a row is wrong nothing more
+ * is written, but all rows are checked.
  *
  * @returns undefined when it has more than `mostRows` rows; nothing was written then.
  * @throws Refusal with what is wrong, by line.
@@ -38,8 +39,9 @@ export async function importFile(transaction: Transaction, { file, campaign, mos
   const keys = new Keys();
   const progress: Progress = { rowsRead: 0, rowsStored: 0, phases: 0, readBytes: 0 };
   const tell = (news: Partial<Progress>) => onProgress(Object.assign(progress, news));
-  const { rows, ignored } = await readFile({ file, now, errors, onItem: (item) => keys.add(item), onBatch: (rowsRead, readBytes) => tell({ rowsRead, readBytes }) });
-  errors.demandNone();
+  const onBatch = (rowsRead: number, readBytes: number) => tell({ rowsRead, readBytes });
+  const { rows, ignored } = await readFile({ file, now, keysOnly: true, errors, onItem: (item) => keys.add(item), onBatch });
+  if (errors.count > 0) await demandNoErrors({ file, now, onBatch });
   if (rows > mostRows) return undefined;
 
   const columns = keys.columns();
@@ -54,14 +56,17 @@ export async function importFile(transaction: Transaction, { file, campaign, mos
     file,
     now,
     errors,
-    onItem: (one) => writer.add(one, place(item++)),
+    onItem: (one) => {
+      if (errors.count === 0) writer.add(one, place(item++));
+    },
     onBatch: async () => {
-      if (!writer.isFull) return;
+      if (errors.count > 0 || !writer.isFull) return;
       await writer.write();
       await tell({ rowsStored: Math.round((writer.added / keys.n) * rows) });
     },
   });
-  await writer.write();
+  errors.demandNone();
+  await writer.end();
 
   const references = new Map<number | null, number>();
   for (const [i, stepId] of stepIds.entries()) {
@@ -76,6 +81,13 @@ export async function importFile(transaction: Transaction, { file, campaign, mos
     await tell({ rowsStored: rows, phases: i + 1 });
   }
   return { readings: keys.n, phases: phases.length, rows, ignored };
+}
+
+/** @throws Refusal with everything that is wrong with the rows. */
+async function demandNoErrors(reading: Pick<Parameters<typeof readFile>[0], "file" | "now" | "onBatch">): Promise<void> {
+  const errors = new RowErrors();
+  await readFile({ ...reading, errors, onItem: () => undefined });
+  errors.demandNone();
 }
 
 /** By the place of a reading in the file: its phase, and the repeat in it. */

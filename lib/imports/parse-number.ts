@@ -21,4 +21,8 @@ export function parseNumber(text: string, decimal: Decimal): number {
 const MISSING = new Set(["", "nan", "n/a", "na", "#n/a", "null", "-", "--"]);
 
 /** Whether a cell says that there is no value. */
-export const isMissing = (text: string): boolean => text === "" || (text.length <= 4 && MISSING.has(text.trim().toLowerCase())) || text.trim() === "";
+export function isMissing(text: string): boolean {
+  const first = text.charCodeAt(0);
+  if (first >= 48 && first <= 57) return false;
+  return MISSING.has(text.trim().toLowerCase());
+}

@@ -11,6 +11,8 @@ export type StoredFile = { importRunId: string; sizeBytes: number; mapping: Mapp
 type Options = {
   file: StoredFile;
   now: Date;
+  /** Only what decides about phases is read. */
+  keysOnly?: boolean;
   errors: RowErrors;
   onItem: (item: Item) => void;
   /** After each batch of rows: how many rows and bytes so far. Whatever it throws ends the reading. */
@@ -18,7 +20,7 @@ type Options = {
 };
 
 /** Goes once through a stored file, giving each reading as it is complete. Errors of rows are collected. @throws Refusal for what is wrong with the file as a whole. */
-export async function readFile({ file, now, errors, onItem, onBatch }: Options): Promise<{ rows: number; ignored: string[] }> {
+export async function readFile({ file, now, keysOnly, errors, onItem, onBatch }: Options): Promise<{ rows: number; ignored: string[] }> {
   const head = new HeadReader(file.format);
   let bytes = 0;
   let count = 0;
@@ -26,7 +28,7 @@ export async function readFile({ file, now, errors, onItem, onBatch }: Options):
   for await (const batch of fileRows({ ...file, onRead: (read) => (bytes = read) })) {
     for (const row of batch) {
       if (!head.isData(row)) {
-        if (row === head.header) made = begin(row.cells, { file, now, errors, onItem });
+        if (row === head.header) made = begin(row.cells, { file, now, keysOnly, errors, onItem });
       } else {
         made?.assembler.push(row);
         count++;
@@ -41,9 +43,9 @@ export async function readFile({ file, now, errors, onItem, onBatch }: Options):
   return { rows: count, ignored: made.ignored };
 }
 
-function begin(header: readonly string[], { file: { mapping, format }, now, errors, onItem }: Pick<Options, "file" | "now" | "errors" | "onItem">) {
+function begin(header: readonly string[], { file: { mapping, format }, now, keysOnly, errors, onItem }: Omit<Options, "onBatch">) {
   const columns = columnsOf(header, mapping, format);
   if ("errors" in columns) throw refuse(`${columns.errors.map(({ path, message }) => `${path}: ${message}`).join("; ")}.`, columns.errors);
-  const reader = new RowReader(columns, format, now);
+  const reader = new RowReader(columns, format, { now, keysOnly });
   return { assembler: new Assembler(reader, format.decimal, { item: onItem, error: (error) => errors.add(error) }), ignored: columns.ignored };
 }

@@ -38,9 +38,11 @@ export async function receiveImport({ request, personId, now }: { request: Reque
         texts[name] = "";
         return;
       }
+      // The form may end too early before anybody reads the file; whoever reads it is told then.
+      stream.on("error", () => undefined);
       const file = store(stream, { fileName: filename, personId, now });
       files.push(file);
-      file.catch((error: unknown) => parser.destroy(error as Error));
+      file.catch((error: unknown) => void (parser.destroyed || parser.destroy(error as Error)));
     });
     await drain(request, parser);
     if (files.length === 0) throw invalid([{ path: "file", message: "is missing" }]);

@@ -1,4 +1,4 @@
-import type { Columns, Layout } from "@/lib/imports/columns-of";
+import type { Columns, Layout, UsedColumn } from "@/lib/imports/columns-of";
 import { fieldInfo, unitOf, type Field } from "@/lib/imports/fields";
 import { isMissing, parseNumber, type Decimal } from "@/lib/imports/parse-number";
 import { shortened, TimeParser } from "@/lib/imports/parse-time";
@@ -9,40 +9,57 @@ import type { Format } from "@/lib/imports/schema";
 export type RowError = { line: number; column: string; message: string };
 
 /** One row in our units; NaN where a column is absent or its cell says that there is no value. */
-export type ReadRow = { line: number; at: number; medium: string; numbers: Float64Array; lists: readonly string[] };
+export type ReadRow = { line: number; at: number; medium: string; numbers: readonly number[]; cells: readonly string[] };
 
 /** Fields of a row that are numbers, by their place in `numbers`. */
 export const NUMBERS = ["cycle", "setPointC", "temperatureC", "pressurePa", "humidityPercent", "f0Hz", "q", "f0StdHz", "qStd", "amplitudeV", "frequencyHz", "startHz", "stopHz", "re", "im", "magnitude"] as const satisfies readonly Field[];
 export type NumberField = (typeof NUMBERS)[number];
 export const PLACE = Object.fromEntries(NUMBERS.map((field, i) => [field, i])) as Record<NumberField, number>;
 
-const LISTS = ["re", "im", "magnitude"] as const;
+const LISTS: readonly Field[] = ["re", "im", "magnitude"];
+const KEYS: readonly Field[] = ["cycle", "setPointC"];
 const MOST_MEDIUM = 60;
 const EARLIEST_MS = Date.UTC(1900, 0, 1);
 const AHEAD_MS = 86_400_000;
 const CONTROL = /\p{Cc}/u;
 
-type NumberColumn = { field: NumberField; index: number; name: string; to: (value: number, f0Hz: number) => number; least: number; most: number; needed: boolean; whole: boolean };
+type NumberColumn = { field: NumberField; place: number; index: number; name: string; to: (value: number, f0Hz: number) => number; least: number; most: number; needed: boolean; whole: boolean };
 
-/** Reads rows of one file into our units, and says of every cell that cannot be read where it stands and why. `now`: nothing can have been measured later. */
+export type RowReaderOptions = {
+  /** Nothing can have been measured later. */
+  now: Date;
+  /** Only what decides about phases is read: time, medium, cycle and set-point. */
+  keysOnly?: boolean;
+};
+
+/** Reads rows of one file into our units, and says of every cell that cannot be read where it stands and why. */
 export class RowReader {
   private readonly width: number;
   private readonly time: TimeParser;
   private readonly number: (text: string) => number;
   private readonly numbers: readonly NumberColumn[];
-  private readonly lists: readonly { place: number; index: number }[];
   private readonly timeColumn: { index: number; name: string };
   private readonly ofDay: number | undefined;
   private readonly mediumColumn: { index: number; name: string } | undefined;
   private readonly media = new Map<string, string>();
+  private readonly latestMs: number;
+  readonly keysOnly: boolean;
+  private readonly onlyMedium: string;
   private readonly gaps: boolean;
+  private lastTime: { text: string | undefined; ms: number } = { text: undefined, ms: NaN };
+  private errors: RowError[] | undefined;
+  private line = 0;
   readonly layout: Layout;
+  /** Where lists of values stand in a row that is a sweep. */
+  readonly lists: Readonly<Record<"re" | "im" | "magnitude", UsedColumn | undefined>>;
 
   constructor(
     { layout, used }: Columns,
     private readonly format: Format,
-    private readonly now: Date,
+    { now, keysOnly = false }: RowReaderOptions,
   ) {
+    this.keysOnly = keysOnly;
+    this.latestMs = now.getTime() + AHEAD_MS;
     const decimal: Decimal = format.decimal;
     const find = (field: Field) => used.find((column) => column.field === field);
     this.layout = layout;
@@ -53,69 +70,89 @@ export class RowReader {
     this.ofDay = find("timeOfDay")?.index;
     this.mediumColumn = find("medium");
     this.width = Math.max(...used.map(({ index }) => index)) + 1;
-    const inLists = (field: Field) => layout === "sweeps" && (LISTS as readonly Field[]).includes(field);
-    this.lists = layout === "sweeps" ? LISTS.flatMap((field, place) => (find(field) ? [{ place, index: find(field)?.index ?? -1 }] : [])) : [];
+    this.onlyMedium = mediumName(format.medium ?? "");
+    this.lists = { re: find("re"), im: find("im"), magnitude: find("magnitude") };
     // f0 comes first: other columns may be told relative to it.
     this.numbers = NUMBERS.toSorted((a, b) => Number(b === "f0Hz") - Number(a === "f0Hz")).flatMap((field): NumberColumn[] => {
       const column = find(field);
-      if (!column || inLists(field)) return [];
+      if (!column || (layout === "sweeps" && LISTS.includes(field)) || (keysOnly && !KEYS.includes(field))) return [];
       const { least = -Infinity, most = Infinity } = fieldInfo(field);
-      return [{ field, index: column.index, name: column.name, to: unitOf(field, column.unit).to, least, most, needed: NEEDED[layout].includes(field), whole: field === "cycle" }];
+      return [{ field, place: PLACE[field], index: column.index, name: column.name, to: unitOf(field, column.unit).to, least, most, needed: NEEDED[layout].includes(field), whole: field === "cycle" }];
     });
   }
 
   /** The row, or what is wrong with it: every bad cell. */
   read({ line, cells }: CsvRow): ReadRow | RowError[] {
-    const errors: RowError[] = [];
-    const fail = (column: string, message: string) => void errors.push({ line, column, message });
+    this.errors = undefined;
+    this.line = line;
     if (cells.length < this.width) return [{ line, column: "", message: `has ${cells.length} cells where the header's columns need ${this.width}` }];
 
-    const at = this.readTime(cells, fail);
-    const medium = this.readMedium(cells, fail);
-    const numbers = new Float64Array(NUMBERS.length).fill(NaN);
-    for (const column of this.numbers) numbers[PLACE[column.field]] = this.readNumber(column, cells[column.index], numbers[PLACE.f0Hz], fail);
-    const lists = ["", "", ""];
-    for (const { place, index } of this.lists) lists[place] = cells[index];
-    return errors.length > 0 ? errors : { line, at, medium, numbers, lists };
+    const at = this.readTime(cells);
+    const medium = this.readMedium(cells);
+    const numbers = [NaN, NaN, NaN, NaN, NaN, NaN, NaN, NaN, NaN, NaN, NaN, NaN, NaN, NaN, NaN, NaN];
+    for (const column of this.numbers) numbers[column.place] = this.readNumber(column, cells[column.index], numbers[PLACE.f0Hz]);
+    return this.errors ?? { line, at, medium, numbers, cells };
   }
 
-  private readTime(cells: readonly string[], fail: (column: string, message: string) => void): number {
+  private fail(column: string, message: string): void {
+    (this.errors ??= []).push({ line: this.line, column, message });
+  }
+
+  private readTime(cells: readonly string[]): number {
     const { index, name } = this.timeColumn;
     const text = this.ofDay === undefined ? cells[index] : `${cells[index]} ${cells[this.ofDay]}`;
-    if (text.trim() === "") return fail(name, "has no time"), NaN;
-    const parsed = this.time.parse(text, this.number);
-    if ("reason" in parsed) return fail(name, parsed.reason), NaN;
-    if (parsed.ms < EARLIEST_MS) return fail(name, `“${shortened(text)}” lies before 1900`), NaN;
-    if (parsed.ms > this.now.getTime() + AHEAD_MS) return fail(name, `“${shortened(text)}” lies in the future`), NaN;
-    return parsed.ms;
+    if (text === this.lastTime.text) return this.lastTime.ms;
+    const reason = this.whyNoTime(text);
+    if (reason === undefined) return this.lastTime.ms;
+    this.fail(name, reason);
+    return NaN;
   }
 
-  private readMedium(cells: readonly string[], fail: (column: string, message: string) => void): string {
-    if (!this.mediumColumn) return mediumName(this.format.medium ?? "");
-    const text = cells[this.mediumColumn.index];
+  /** Leaves the time in `lastTime`, where neighbours of the same time find it. */
+  private whyNoTime(text: string): string | undefined {
+    if (text.trim() === "") return "has no time";
+    const parsed = this.time.parse(text, this.number);
+    if ("reason" in parsed) return parsed.reason;
+    if (parsed.ms < EARLIEST_MS) return `“${shortened(text)}” lies before 1900`;
+    if (parsed.ms > this.latestMs) return `“${shortened(text)}” lies in the future`;
+    this.lastTime = { text, ms: parsed.ms };
+    return undefined;
+  }
+
+  private readMedium(cells: readonly string[]): string {
+    if (!this.mediumColumn) return this.onlyMedium;
+    const { index, name: column } = this.mediumColumn;
+    const text = cells[index];
     const known = this.media.get(text);
     if (known !== undefined) return known;
     const name = mediumName(text);
-    if (name === "") fail(this.mediumColumn.name, "names no medium");
-    else if (name.length > MOST_MEDIUM) fail(this.mediumColumn.name, `is longer than ${MOST_MEDIUM} characters`);
-    else if (CONTROL.test(name)) fail(this.mediumColumn.name, "holds a control character");
+    if (name === "") this.fail(column, "names no medium");
+    else if (name.length > MOST_MEDIUM) this.fail(column, `is longer than ${MOST_MEDIUM} characters`);
+    else if (CONTROL.test(name)) this.fail(column, "holds a control character");
     else this.media.set(text, name);
     return name;
   }
 
-  private readNumber(column: NumberColumn, text: string, f0Hz: number, fail: (column: string, message: string) => void): number {
-    const { name, to, least, most, needed, whole } = column;
+  private readNumber({ field, name, to, least, most, needed, whole }: NumberColumn, text: string, f0Hz: number): number {
     if (isMissing(text)) {
-      if (needed && !this.gaps) fail(name, "has no value");
+      if (needed && !this.gaps) this.fail(name, "has no value");
       return NaN;
     }
     const value = this.number(text);
-    if (Number.isNaN(value)) return fail(name, `“${shortened(text)}” is not a number${this.format.decimal === "." && /^[+-]?\d+,\d+$/.test(text.trim()) ? "; is the comma its decimal sign?" : ""}`), NaN;
+    if (Number.isNaN(value)) return this.noNumber(name, text);
     const ours = to(value, f0Hz);
-    if (whole && !Number.isInteger(ours)) return fail(name, `“${shortened(text)}” is not a whole number`), NaN;
-    if (!Number.isFinite(ours) && Number.isNaN(f0Hz) && column.field !== "f0Hz") return NaN;
-    if (!(ours >= least && ours <= most && Number.isFinite(ours))) return fail(name, least === Number.MIN_VALUE ? `“${shortened(text)}” must be above 0` : `“${shortened(text)}” lies outside of ${least} to ${most}`), NaN;
-    return ours;
+    if (ours >= least && ours <= most && Number.isFinite(ours) && (!whole || Number.isInteger(ours))) return ours;
+    // What is told relative to f0 is not wrong by itself where f0 is missing.
+    if (!Number.isFinite(ours) && Number.isNaN(f0Hz) && field !== "f0Hz") return NaN;
+    const shown = `“${shortened(text)}”`;
+    this.fail(name, whole && !Number.isInteger(ours) ? `${shown} is not a whole number` : least === Number.MIN_VALUE ? `${shown} must be above 0` : `${shown} lies outside of ${least} to ${most}`);
+    return NaN;
+  }
+
+  private noNumber(name: string, text: string): number {
+    const comma = this.format.decimal === "." && /^[+-]?\d+,\d+$/.test(text.trim());
+    this.fail(name, `“${shortened(text)}” is not a number${comma ? "; is the comma its decimal sign?" : ""}`);
+    return NaN;
   }
 }
 

@@ -20,6 +20,7 @@ type Run = {
   personId: string;
   person: string;
   role: Role;
+  cancelWanted: boolean;
 };
 
 export type Outcome =
@@ -39,7 +40,7 @@ const TELL_MS = 500;
 
 const RUN = `
   select r.id, r.name, r.sensor_id as "sensorId", s.readout as "sensorReadout", r.file_name as "fileName", r.size_bytes as "sizeBytes", r.mapping, r.format,
-         r.reserved_campaign_id as "campaignId", p.id as "personId", p.name as person, p.role
+         r.reserved_campaign_id as "campaignId", p.id as "personId", p.name as person, p.role, r.cancel_wanted as "cancelWanted"
     from import_run r join person p on p.id = r.created_by left join sensor s on s.id = r.sensor_id
    where r.id = $1 and r.state in ('waiting', 'running')`;
 
@@ -54,6 +55,7 @@ export async function runImport({ importRunId, mostRows, isEnding = () => false,
     const imported = await inTransaction(async (transaction) => {
       const run = (await lockImport(transaction, importRunId)) ? await row<Run>(RUN, [importRunId], transaction) : undefined;
       if (!run) return undefined;
+      if (run.cancelWanted) throw new Cancelled();
       await change(`update import_run set state = 'running', started_at = coalesce(started_at, $2) where id = $1`, [importRunId, now]);
       const { campaignId, name, sensorId, fileName, mapping, format } = run;
       const readout = format.readout ?? run.sensorReadout ?? "velocity";

@@ -1,4 +1,4 @@
-import { createHash } from "node:crypto";
+import { hash } from "node:crypto";
 import type { ReadingInput } from "@/lib/readings/reading";
 
 /** What makes two uploads of one index the same: every field and every number, bit for bit. */
@@ -14,9 +14,6 @@ export function contentHash({ takenAt, durationS, temperatureC, pressurePa, humi
     record.stopHz ?? NaN,
     record.points,
   );
-  return createHash("sha256")
-    .update(new Uint8Array(head.buffer))
-    .update(new Uint8Array(record.data.buffer, record.data.byteOffset, record.data.byteLength))
-    .digest()
-    .subarray(0, 16);
+  const bytes = Buffer.concat([new Uint8Array(head.buffer), new Uint8Array(record.data.buffer, record.data.byteOffset, record.data.byteLength)]);
+  return hash("sha256", bytes, "buffer").subarray(0, 16);
 }
