@@ -4,7 +4,7 @@ import { useId, useRef, useState, type ReactNode } from "react";
 import { classNames } from "@/components/ui/class-names";
 import { PowerOfTen } from "@/components/ui/quantity";
 import { formatNumber } from "@/lib/format";
-import { saveText, svgOf, tableAsCsv } from "./save";
+import { savePng, saveText, svgOf, tableAsCsv } from "./save";
 
 export type TwinColumn = { head: string; right?: boolean };
 export type TwinRow = readonly (string | number | null)[];
@@ -34,7 +34,7 @@ function asShown(value: string | number | null): ReactNode {
   return formatNumber(Number(value.toPrecision(8)));
 }
 
-/** Frame of every plot: the drawing, its sentence, its table, and the offers Table, SVG and CSV. */
+/** Frame of every plot: the drawing, its sentence, its table, and the offers Table, SVG, PNG and CSV. */
 export function Plot({ label, sentence, file, twin, reading, className, children }: PlotProps) {
   const [open, setOpen] = useState(false);
   const drawing = useRef<HTMLDivElement>(null);
@@ -48,6 +48,7 @@ export function Plot({ label, sentence, file, twin, reading, className, children
         <div className="offers" role="group" aria-label={`${label}, as`}>
           <button type="button" aria-expanded={open} aria-controls={tableId} onClick={() => setOpen(!open)}>Table</button>
           <button type="button" onClick={() => saveText(`${file}.svg`, "image/svg+xml", svgOf(drawing.current, label))}>SVG</button>
+          <button type="button" onClick={() => void savePng(`${file}.png`, drawing.current, label)}>PNG</button>
           <button type="button" onClick={() => saveText(`${file}.csv`, "text/csv", tableAsCsv(twin()))}>CSV</button>
         </div>
       </div>

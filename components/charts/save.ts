@@ -12,8 +12,10 @@ function csvCell(value: string | number | null): string {
   return /[",\r\n]/.test(safe) ? `"${safe.replaceAll('"', '""')}"` : safe;
 }
 
-export function saveText(name: string, type: string, text: string): void {
-  const url = URL.createObjectURL(new Blob([text], { type: `${type};charset=utf-8` }));
+export const saveText = (name: string, type: string, text: string): void => save(name, new Blob([text], { type: `${type};charset=utf-8` }));
+
+function save(name: string, content: Blob): void {
+  const url = URL.createObjectURL(content);
   const link = Object.assign(document.createElement("a"), { href: url, download: name });
   link.click();
   setTimeout(() => URL.revokeObjectURL(url), 1000);
@@ -49,4 +51,43 @@ export function svgOf(holder: HTMLElement | null, label: string): string {
   copy.setAttribute("viewBox", `0 0 ${drawing.clientWidth} ${drawing.clientHeight}`);
   copy.style.setProperty("background", getComputedStyle(document.body).backgroundColor);
   return new XMLSerializer().serializeToString(copy);
+}
+
+/** Pixels of the picture to a pixel of the page: sharp in print at the size seen. */
+const PNG_SCALE = 3;
+
+/** The drawing as a picture, as it is seen, with the page's own type. */
+export async function savePng(name: string, holder: HTMLElement | null, label: string): Promise<void> {
+  const drawing = holder?.querySelector("svg");
+  if (!drawing) return;
+  const faces = `<style>${await fontFaces()}</style>`;
+  const svg = svgOf(holder, label).replace(/^(<svg[^>]*>)/, `$1${faces}`);
+  const url = `data:image/svg+xml;charset=utf-8,${encodeURIComponent(svg)}`;
+  const picture = Object.assign(new Image(drawing.clientWidth, drawing.clientHeight), { src: url });
+  await picture.decode();
+  const canvas = Object.assign(document.createElement("canvas"), { width: drawing.clientWidth * PNG_SCALE, height: drawing.clientHeight * PNG_SCALE });
+  const context = canvas.getContext("2d");
+  if (!context) return;
+  context.fillStyle = getComputedStyle(document.body).backgroundColor;
+  context.fillRect(0, 0, canvas.width, canvas.height);
+  context.drawImage(picture, 0, 0, canvas.width, canvas.height);
+  const content = await new Promise<Blob | null>((resolve) => canvas.toBlob(resolve, "image/png"));
+  if (content) save(name, content);
+}
+
+/** A picture reads nothing from outside itself: the page's faces go into it. */
+async function fontFaces(): Promise<string> {
+  const rules = [...document.styleSheets].flatMap((sheet) => [...sheet.cssRules]).filter((rule) => rule instanceof CSSFontFaceRule);
+  const texts = rules.map(async ({ cssText, parentStyleSheet }) => {
+    const address = /url\(["']?([^"')]+)["']?\)/.exec(cssText)?.[1];
+    if (!address) return "";
+    const content = await (await fetch(new URL(address, parentStyleSheet?.href ?? document.baseURI))).blob();
+    const data = await new Promise<string>((resolve) => {
+      const reader = new FileReader();
+      reader.onload = () => resolve(String(reader.result));
+      reader.readAsDataURL(content);
+    });
+    return cssText.replace(address, data);
+  });
+  return (await Promise.all(texts)).join("");
 }

@@ -1,7 +1,8 @@
 "use client";
 
+import { localPoint } from "@visx/event";
 import { scaleLinear, scaleLog } from "@visx/scale";
-import { useState, type KeyboardEvent, type ReactNode } from "react";
+import { useState, type KeyboardEvent, type MouseEvent, type ReactNode } from "react";
 import { HATCH } from "@/components/strip/tint";
 import { formatNumber, formatUncertain } from "@/lib/format";
 import { AxisX, AxisY } from "./axes";
@@ -40,14 +41,18 @@ export type XyChartProps = {
   height?: number;
   /** One unit has the same length on both axes, as in the complex plane; the height follows. */
   equal?: boolean;
+  /** A press on a point, or Enter where the cursor stands, opens what it stands for. */
+  onOpen?: (point: XyPoint) => void;
 };
+
+const NEAR_PX = 14;
 
 const TOP = 22;
 /** A vertical limit is named at its right, nearer to the right end at its left. */
 const LABEL_PX = 110;
 
 /** Any quantity against another: points with bars, models with their band, limits, and what is not claimed. */
-export function XyChart({ label, sentence, file, x, y, series, yLimits = [], xLimits = [], xMarks = [], outside = [], xRange, yRange, logX, logY, zero, height = 168, equal }: XyChartProps) {
+export function XyChart({ label, sentence, file, x, y, series, yLimits = [], xLimits = [], xMarks = [], outside = [], xRange, yRange, logX, logY, zero, height = 168, equal, onOpen }: XyChartProps) {
   const [ref, width] = useWidth();
   const [cursor, setCursor] = useState<number>();
   const left = 50;
@@ -72,10 +77,19 @@ export function XyChart({ label, sentence, file, x, y, series, yLimits = [], xLi
   function onKeyDown(event: KeyboardEvent) {
     const last = stops.length - 1;
     if (event.key === "Escape") setCursor(undefined);
+    if (event.key === "Enter" && onOpen && here) onOpen(here.point);
     const next = { ArrowRight: Math.min(last, (cursor ?? -1) + 1), ArrowLeft: Math.max(0, (cursor ?? last + 1) - 1), Home: 0, End: last }[event.key];
     if (next === undefined || last < 0) return;
     event.preventDefault();
     setCursor(next);
+  }
+
+  function onClick(event: MouseEvent<SVGSVGElement>) {
+    const at = localPoint(event.currentTarget, event);
+    if (!onOpen || !at) return;
+    const distance = ({ point }: (typeof stops)[number]) => Math.hypot(placeX(point.x) - at.x, placeY(point.y) - at.y);
+    const nearest = stops.reduce<(typeof stops)[number] | undefined>((best, stop) => (!best || distance(stop) < distance(best) ? stop : best), undefined);
+    if (nearest && distance(nearest) <= NEAR_PX) onOpen(nearest.point);
   }
 
   const reading = here && (
@@ -88,7 +102,7 @@ export function XyChart({ label, sentence, file, x, y, series, yLimits = [], xLi
     <Plot label={label} sentence={sentence} file={file} twin={() => xyTwin(x, y, series)} reading={reading}>
       <div ref={ref} style={{ minHeight: bottom + 44 }}>
         {width > 0 && (
-          <svg width={width} height={bottom + 44} role="img" aria-label={label} tabIndex={0} onKeyDown={onKeyDown} onBlur={() => setCursor(undefined)}>
+          <svg width={width} height={bottom + 44} role="img" aria-label={label} tabIndex={0} onKeyDown={onKeyDown} onClick={onOpen && onClick} className={onOpen && "cursor-pointer"} onBlur={() => setCursor(undefined)}>
             {outside.map(([from, to]) => {
               const x0 = Math.max(left, placeX(from));
               return <rect key={from} x={x0} y={TOP} width={Math.max(0, Math.min(right, placeX(to)) - x0)} height={bottom - TOP} fill={HATCH} opacity=".6" />;

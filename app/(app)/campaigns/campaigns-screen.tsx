@@ -32,8 +32,8 @@ export function CampaignsScreen({ role }: { role: Role }) {
         <PageTitle>Campaigns</PageTitle>
         <Section label="Campaigns">
           <Empty
-            note={`A campaign is one run of a protocol version with one sensor on one rig.${mayQueue ? " Write a protocol first." : ""}`}
-            actions={mayQueue && <LinkButton look="primary" href="/protocols">Write a protocol</LinkButton>}
+            note="A campaign is one run of a protocol version with one sensor on one rig."
+            actions={mayQueue && <><LinkButton look="primary" href="/protocols/new">Write a protocol</LinkButton><LinkButton href="/campaigns/new">Queue a campaign</LinkButton></>}
           >
             No campaign has been made here yet.
           </Empty>

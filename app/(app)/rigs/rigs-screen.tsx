@@ -28,15 +28,16 @@ export function RigsScreen({ role }: { role: Role }) {
   const [blocking, setBlocking] = useState(false);
   const rigs = data?.pages.flatMap(({ items }) => items);
   const mayEdit = may(role, "edit rigs");
-  const newRig = mayEdit && <LinkButton href="/rigs/new">New rig</LinkButton>;
+  const hasNone = rigs?.length === 0;
+  const newRig = mayEdit && <LinkButton look={hasNone ? "primary" : "plain"} href="/rigs/new">New rig</LinkButton>;
 
-  if (!rigs || rigs.length === 0) {
+  if (!rigs || hasNone) {
     return (
       <>
         <PageTitle actions={newRig}>Rigs</PageTitle>
         <Section label="Rigs">
           {rigs ? (
-            <Empty note={newRig ? undefined : "An administrator makes rigs."}>No rig has been made yet.</Empty>
+            <Empty actions={newRig} note={newRig ? "Its agent gets steps once it has a token; what it can do, it says by itself." : "An administrator makes rigs."}>No rig has been made yet.</Empty>
           ) : error ? (
             <Problem error={error} onRetry={() => void refetch()} />
           ) : (

@@ -14,7 +14,7 @@ export function OpenHolds({ campaign: { holds, timeZone, now, parking } }: { cam
         <li key={id} className="flex flex-wrap items-baseline gap-x-3">
           <StateMark state={stateWord("held", [reason])}>{HOLD_WORDS[reason]}</StateMark>
           <span>{text}</span>
-          <span className="small text-ink2">{by ? `${by}, ` : ""}since {formatRecent(since, timeZone, now)}</span>
+          <span className="small text-ink2">{by ? `${by}, ` : ""}since {formatRecent(since, timeZone, now).replace("Today ", "")}</span>
         </li>
       ))}
       {parking === "running" && <li className="small text-ink2">The cell is being parked.</li>}

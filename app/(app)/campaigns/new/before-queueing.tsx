@@ -1,3 +1,4 @@
+import { LinkButton } from "@/components/ui/button";
 import { Findings, type Finding } from "@/components/ui/tag";
 import type { CheckAnswer, Choices } from "@/lib/campaigns/draft-schema";
 import { ProblemError } from "@/lib/http/fetch-json";
@@ -18,11 +19,11 @@ export function BeforeQueueing({ findings, ready }: { findings: readonly Finding
 type Known = { draft: Draft; choices: Choices; checked: CheckAnswer | undefined; error: Error | null; onChange: (changes: Partial<Draft>) => void };
 
 export function findingsOf({ draft, choices, checked, error, onChange }: Known): Finding[] {
-  const must = (text: string): Finding => ({ kind: "must", text });
+  const must = (text: string, repair?: { label: string; href: string }): Finding => ({ kind: "must", text, repair: repair && <LinkButton small href={repair.href}>{repair.label}</LinkButton> });
   const findings: Finding[] = [];
-  if (!draft.protocolVersionId) findings.push(must("Choose a protocol version."));
-  if (!draft.sensorId) findings.push(must("Choose a sensor."));
-  if (!draft.rigId) findings.push(must("Choose a rig."));
+  if (!draft.protocolVersionId) findings.push(choices.versions.length > 0 ? must("Choose a protocol version.") : must("No protocol has a version yet.", { label: "Write a protocol", href: "/protocols/new" }));
+  if (!draft.sensorId) findings.push(choices.sensors.length > 0 ? must("Choose a sensor.") : must("No sensor has been recorded yet.", { label: "New sensor", href: "/sensors/new" }));
+  if (!draft.rigId) findings.push(must(choices.rigs.length > 0 ? "Choose a rig." : "No rig has been made yet; an administrator makes rigs."));
   const version = choices.versions.find(({ id }) => id === draft.protocolVersionId);
   if (version && draft.rigId)
     for (const slot of version.slots) {
