@@ -1,6 +1,6 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
-import { capitalised, formatCount, formatNumber, formatPower, formatShare, formatUncertain, formatVolume, inWords, listOf, plural, superscript, uncertaintyDecimals } from "@/lib/format";
+import { asSentence, capitalised, formatCount, formatNumber, formatPower, formatShare, formatUncertain, formatVolume, inWords, listOf, plural, superscript, uncertaintyDecimals } from "@/lib/format";
 
 const plain = (text: string) => text.replace(/\u2009/g, "").replace("\u2212", "-");
 
@@ -99,4 +99,9 @@ describe("other quantities", () => {
     expect(plural(1, "rig")).toBe("rig");
     expect(listOf(["a", "b", "c"])).toBe("a, b and c");
   });
+});
+
+it("begins a sentence with a capital, and leaves a quantity's symbol alone", () => {
+  expect(asSentence("air reference: f0 is off")).toBe("Air reference: f0 is off");
+  expect(asSentence("f0 in air drifts")).toBe("f0 in air drifts");
 });
