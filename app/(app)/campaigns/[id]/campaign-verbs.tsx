@@ -6,12 +6,13 @@ import type { CampaignAnswer } from "@/lib/campaigns/answers";
 import { address } from "@/lib/campaigns/client";
 import { campaignCode } from "@/lib/campaigns/code";
 import { may, type Role } from "@/lib/permissions";
+import { ExportDialog } from "./export-dialog";
 import { GoOnDialog } from "./go-on-dialog";
 import { PauseDialog, SetAsideDialog, StopDialog, TakeOverDialog } from "./verb-dialogs";
 import { possible } from "./possible";
 import { useVerb } from "./use-verb";
 
-type Asking = "pause" | "goOn" | "stop" | "setAside" | "takeOver";
+type Asking = "pause" | "goOn" | "stop" | "setAside" | "takeOver" | "export";
 
 /** The verbs of a campaign, for those who may. One that is not possible now stays, dashed, with the reason. */
 export function CampaignVerbs({ campaign, role }: { campaign: CampaignAnswer; role: Role }) {
@@ -43,13 +44,14 @@ export function CampaignVerbs({ campaign, role }: { campaign: CampaignAnswer; ro
         </>
       )}
       {campaign.endedAt && campaign.origin === "protocol" && may(role, "edit campaigns") && <LinkButton href={again}>Run again</LinkButton>}
-      {campaign.progress.repeats > 0 && <a className="button link" href={`/api/campaigns/${id}/readings?format=csv`} download>Export</a>}
+      {campaign.progress.repeats > 0 && <Button look="link" onClick={() => setAsking("export")}>Export</Button>}
       {giveBack.error && <p role="alert" className="small w-full">{giveBack.error.message}</p>}
 
       {asking === "pause" && <PauseDialog {...dialog} />}
       {asking === "goOn" && <GoOnDialog {...dialog} />}
       {asking === "stop" && <StopDialog {...dialog} />}
       {asking === "setAside" && <SetAsideDialog {...dialog} />}
+      {asking === "export" && <ExportDialog {...dialog} />}
       {asking === "takeOver" && <TakeOverDialog {...dialog} />}
     </>
   );

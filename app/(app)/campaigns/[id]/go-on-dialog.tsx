@@ -6,12 +6,9 @@ import { Dialog } from "@/components/ui/dialog";
 import { Option, OptionGroup } from "@/components/ui/field";
 import type { CampaignAnswer } from "@/lib/campaigns/answers";
 import { campaignCode } from "@/lib/campaigns/code";
-import { formatCount } from "@/lib/format";
+import { PLACES, wordsOf, type From } from "./go-on-words";
 import { possible } from "./possible";
 import { useVerb } from "./use-verb";
-
-const PLACES = ["here", "phase", "cycle"] as const;
-type From = (typeof PLACES)[number];
 
 /** Go on here, from this phase or from this cycle: each with what it means. */
 export function GoOnDialog({ campaign, onClose }: { campaign: CampaignAnswer; onClose: () => void }) {
@@ -38,22 +35,3 @@ export function GoOnDialog({ campaign, onClose }: { campaign: CampaignAnswer; on
     </Dialog>
   );
 }
-
-function wordsOf({ step, cycle, parking }: CampaignAnswer): Record<From, { name: string; means: string }> {
-  const stored = step?.kind === "measure" ? step.stored : 0;
-  return {
-    here: { name: "Here", means: step?.repeats && stored < step.repeats ? `Goes on with repeat ${formatCount(stored + 1)} of ${formatCount(step.repeats)}.` : "Goes on with the next step." },
-    phase: !step || step.kind === "measure" ? phaseWords(stored) : stepWords(step, parking),
-    cycle: { name: "This cycle", means: cycle > 0 ? `Begins cycle ${formatCount(cycle)} again, with its reference.` : "Begins the cycle again." },
-  };
-}
-
-const phaseWords = (stored: number) => ({
-  name: "This phase",
-  means: `Measures the phase again from its beginning${stored > 0 ? `; its ${formatCount(stored)} repeats stay beside` : ""}.`,
-});
-
-const stepWords = ({ label, state }: NonNullable<CampaignAnswer["step"]>, parking: CampaignAnswer["parking"]) => ({
-  name: "This step",
-  means: state === "done" && parking === "none" ? `“${label}” is done: goes on with the next step.` : `Makes “${label}” again, with the cell as it needs it.`,
-});

@@ -21,7 +21,7 @@ function pensOf(media: readonly Medium[]): Map<string, { pen: Pen; dash?: Dash }
   return pens;
 }
 
-const toPoint = ({ tauS, deviation, lower, upper, n, noise, noiseMarked }: StabilityAnswer["points"][number]): DeviationPoint => ({
+export const toDeviationPoint = ({ tauS, deviation, lower, upper, n, noise, noiseMarked }: StabilityAnswer["points"][number]): DeviationPoint => ({
   tau: tauS,
   deviation,
   low: lower,
@@ -38,7 +38,7 @@ export function curvesOf(media: readonly Medium[], within: readonly (StabilityAn
     const inside = within[i]?.points ?? [];
     const between = across[i]?.points ?? [];
     if (inside.length + between.length === 0) return [];
-    return [{ id: medium, label: medium === "air" ? "air" : name, ...(pens.get(medium) ?? { pen: "ink" as const }), within: inside.map(toPoint), across: between.map(toPoint) }];
+    return [{ id: medium, label: medium === "air" ? "air" : name, ...(pens.get(medium) ?? { pen: "ink" as const }), within: inside.map(toDeviationPoint), across: between.map(toDeviationPoint) }];
   });
 }
 
