@@ -26,10 +26,17 @@ export async function loadMarks(phases: readonly SelectedPhase[], fitRunId: stri
     for (const phase of some) {
       const { idx, flags } = marksOf.get(phase.phaseId) ?? (await openMarks(phase, fitRunId));
       const out = outOf.get(phase.stepId);
-      found.set(phase.phaseId, { flags, discarded: Uint8Array.from(idx, (one) => (one < phase.discard ? 1 : 0)), excluded: Uint8Array.from(idx, (one) => (out?.has(one) ? 1 : 0)) });
+      found.set(phase.phaseId, { flags, discarded: marked(idx, phase.discard > 0 && ((one) => one < phase.discard)), excluded: marked(idx, out !== undefined && ((one) => out.has(one))) });
     }
   }
   return found;
+}
+
+/** 1 where it holds; most phases have nothing to mark, and are not gone through. */
+function marked(idx: Int32Array, holds: ((one: number) => boolean) | false): Uint8Array {
+  const marks = new Uint8Array(idx.length);
+  if (holds) for (let i = 0; i < idx.length; i++) marks[i] = holds(idx[i]) ? 1 : 0;
+  return marks;
 }
 
 async function openMarks({ stepId }: SelectedPhase, fitRunId: string): Promise<{ idx: Int32Array; flags: Uint16Array }> {
