@@ -18,7 +18,7 @@ const config = {
     { source: "/:path*", headers: everywhere },
     { source: "/api/:path*", headers: [{ key: "Content-Security-Policy", value: "default-src 'none'; frame-ancestors 'none'" }] },
   ],
-  serverExternalPackages: ["sequelize", "pg", "pg-hstore", "pg-boss", "umzug", "pino", "@node-rs/argon2", "nodemailer"],
+  serverExternalPackages: ["exceljs", "sequelize", "pg", "pg-hstore", "pg-boss", "umzug", "pino", "@node-rs/argon2", "nodemailer"],
 };
 
 export default config;

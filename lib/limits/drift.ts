@@ -1,10 +1,14 @@
 import { say, stateOf, type LimitFacts, type Verdict } from "@/lib/limits/verdict";
+import { blockMeans } from "@/lib/numerics/drift/block-means";
 import { drift } from "@/lib/numerics/drift/drift";
 import type { Limit } from "@/lib/protocol/schema";
 
 type DriftLimit = Extract<Limit, { kind: "drift" }>;
 
 const FEWEST_PHASES = 5;
+
+/** Beyond these, neighbours are judged by their mean: the next step waits for the judgement, which takes the square of them. */
+const MOST_VALUES = 100;
 
 /**
  * Slope of the phase values since the baseline, in ppm a day of their mean. Only what is beyond doubt counts: the slope less
@@ -16,7 +20,8 @@ export function judgeDrift(limit: DriftLimit, { phase, series }: LimitFacts): Ve
   if (values.length < FEWEST_PHASES) return undefined;
 
   const mean = values.reduce((sum, value) => sum + value, 0) / values.length;
-  const line = drift({ atDays: series.atDays, values: values.map((value) => (value / mean - 1) * 1e6) });
+  const { x: atDays, y: ppm } = blockMeans({ x: series.atDays, y: values.map((value) => (value / mean - 1) * 1e6) }, MOST_VALUES);
+  const line = drift({ atDays, values: ppm });
   if (!line) return undefined;
   const certain = Math.max(0, Math.abs(line.slopePerDay) - 2 * line.u);
   const name = limit.quantity === "f0" ? "f0" : "Q";

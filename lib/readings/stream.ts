@@ -1,6 +1,7 @@
 import { findFitRun } from "@/lib/analysis/select-phases";
 import { rows } from "@/lib/db";
 import { flagNames } from "@/lib/numerics/resonance/flags";
+import { streamOf } from "@/lib/http/stream-of";
 import type { ReadingsQuery } from "@/lib/readings/schema";
 
 type ReadingRow = {
@@ -34,8 +35,8 @@ export const COLUMNS = [
 ] as const;
 
 /** Readings in batches by key, ordered by (sequence, index): a million rows pass in constant memory. */
-async function* batches(campaignId: string, query: ReadingsQuery): AsyncGenerator<ReadingRow[]> {
-  const fitRunId = await findFitRun(campaignId);
+export async function* readingBatches(campaignId: string, query: Omit<ReadingsQuery, "format">, fitRun?: string): AsyncGenerator<ReadingRow[]> {
+  const fitRunId = await findFitRun(campaignId, fitRun);
   let sequence = 0;
   let index = -1;
   for (;;) {
@@ -67,19 +68,7 @@ async function* batches(campaignId: string, query: ReadingsQuery): AsyncGenerato
 export async function streamReadings(campaignId: string, query: ReadingsQuery): Promise<Response> {
   await findFitRun(campaignId);
   const isCsv = query.format === "csv";
-  const chunks = isCsv ? csv(campaignId, query) : json(campaignId, query);
-  const encoder = new TextEncoder();
-  const body = new ReadableStream<Uint8Array>({
-    async pull(controller) {
-      const { done, value } = await chunks.next();
-      if (done) controller.close();
-      else controller.enqueue(encoder.encode(value));
-    },
-    async cancel() {
-      await chunks.return(undefined);
-    },
-  });
-  return new Response(body, {
+  return new Response(streamOf(isCsv ? csv(campaignId, query) : json(campaignId, query)), {
     headers: {
       "content-type": isCsv ? "text/csv; charset=utf-8; header=present" : "application/json",
       "content-disposition": `attachment; filename="C-${campaignId}-readings.${isCsv ? "csv" : "json"}"`,
@@ -90,29 +79,30 @@ export async function streamReadings(campaignId: string, query: ReadingsQuery): 
 
 async function* csv(campaignId: string, query: ReadingsQuery): AsyncGenerator<string> {
   yield `${COLUMNS.join(",")}\n`;
-  for await (const batch of batches(campaignId, query)) {
-    yield batch.map(plain).map((reading) => `${COLUMNS.map((column) => field(reading[column])).join(",")}\n`).join("");
+  for await (const batch of readingBatches(campaignId, query)) {
+    yield batch.map(plainReading).map((reading) => `${COLUMNS.map((column) => csvField(reading[column])).join(",")}\n`).join("");
   }
 }
 
 async function* json(campaignId: string, query: ReadingsQuery): AsyncGenerator<string> {
   let separator = "";
   yield '{"items":[';
-  for await (const batch of batches(campaignId, query)) {
-    yield separator + batch.map((reading) => JSON.stringify({ ...plain(reading), flags: flagNames(reading.flags) })).join(",");
+  for await (const batch of readingBatches(campaignId, query)) {
+    yield separator + batch.map((reading) => JSON.stringify({ ...plainReading(reading), flags: flagNames(reading.flags) })).join(",");
     separator = ",";
   }
   yield "]}\n";
 }
 
-const plain = ({ stepId: _stepId, takenAt, flags, ...reading }: ReadingRow): Record<(typeof COLUMNS)[number], string | number | boolean | null> => ({
+/** A reading as its columns carry it. */
+export const plainReading = ({ stepId: _stepId, takenAt, flags, ...reading }: ReadingRow): Record<(typeof COLUMNS)[number], string | number | boolean | null> => ({
   ...reading,
   takenAt: takenAt.toISOString(),
   flags: flagNames(flags).join(";"),
 });
 
 /** Numbers as their shortest text that reads back the same; text quoted where RFC 4180 asks for it. A leading =, +, - or @ of a text is shielded, so that no spreadsheet runs it. */
-function field(value: string | number | boolean | null): string {
+export function csvField(value: string | number | boolean | null): string {
   if (value === null) return "";
   if (typeof value !== "string") return String(value);
   const safe = /^[=+\-@\t\r]/.test(value) ? `'${value}` : value;

@@ -24,16 +24,22 @@ function renamed(text: string): string {
   }, text);
 }
 
+/** What a reader could make nothing of. */
+export const isBinary = (type: string): boolean => type.startsWith("application/vnd.");
+
 const recorded: Record<string, Record<string, unknown>> = {};
 
 /** Keeps the first answer of a call for the reference. */
 export function recordAnswer(call: string, type: string, text: string): void {
+  if (isBinary(type)) return;
   const answer: unknown = type === "application/json" ? shortened(JSON.parse(renamed(text))) : renamed(text).split("\n").slice(0, 3).join("\n");
   (recorded[call] ??= {})[type] ??= answer;
 }
 
+/** Calls that were not sent this time keep what they had. */
 export function writeRecorded(): void {
-  const sorted = Object.fromEntries(Object.entries(recorded).toSorted(([a], [b]) => (a < b ? -1 : 1)));
+  const before = JSON.parse(fs.readFileSync(FILE, "utf8")) as typeof recorded;
+  const sorted = Object.fromEntries(Object.entries({ ...before, ...recorded }).toSorted(([a], [b]) => (a < b ? -1 : 1)));
   fs.writeFileSync(FILE, `${JSON.stringify(sorted, null, 1)}\n`);
 }
 

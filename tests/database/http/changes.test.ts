@@ -20,7 +20,8 @@ async function follow(query = "") {
   const { cookie } = await signedInAs("viewer");
   const answer = await GET(new Request(`${ORIGIN}/api/changes${query}`, { headers: { cookie }, signal: ending.signal }), context);
   expect(answer.headers.get("content-type")).toBe("text/event-stream; charset=utf-8");
-  const reader = (answer.body as ReadableStream<Uint8Array>).pipeThrough(new TextDecoderStream()).getReader();
+  const reader = (answer.body as ReadableStream<Uint8Array>).getReader();
+  const decoder = new TextDecoder();
   let text = "";
   const names = async (): Promise<string[]> => {
     for (;;) {
@@ -31,10 +32,10 @@ async function follow(query = "") {
       }
       const { done, value } = await reader.read();
       if (done) return [];
-      text += value;
+      text += decoder.decode(value, { stream: true });
     }
   };
-  return { names, reader, ending };
+  return { names, ending };
 }
 
 test("names what others commit, together what came together, and nothing that was rolled back or is not for pages", async () => {
