@@ -15,6 +15,7 @@ export const MORE_PLACES: readonly Place[] = [
   { label: "Find", href: "/find", key: "f" },
   { label: "Alarms", href: "/alarms", key: "a" },
   { label: "Tasks", href: "/tasks", key: "k" },
+  { label: "Import", href: "/import", key: "i" },
   { label: "People", href: "/people", key: "e" },
   { label: "Audit log", href: "/audit", key: "u" },
   { label: "API reference", href: "/api-reference" },

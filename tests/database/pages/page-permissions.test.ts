@@ -12,6 +12,7 @@ import { newToken } from "@/lib/tokens";
 import { buildCampaign } from "@/tests/factories/campaign";
 import { openAlarm } from "@/lib/alarms/open-alarm";
 import { inTransaction } from "@/lib/db";
+import { buildImportRun } from "@/tests/factories/import-run";
 import { buildLot } from "@/tests/factories/lot";
 import { now } from "@/tests/factories/now";
 import { buildPerson } from "@/tests/factories/person";
@@ -53,6 +54,7 @@ beforeAll(async () => {
     "/alarms/[id]": { id: alarmId },
     "/api-reference/[group]": { group: "rigs" },
     "/campaigns/[id]": { id: `C-${campaignId}` },
+    "/import/[id]": { id: (await buildImportRun()).id },
     "/invitation/[token]": { token },
     "/liquids/[id]": liquid,
     "/liquids/[id]/edit": liquid,

@@ -28,12 +28,12 @@ function read(text: string, given: { mapping?: object; format?: object } = {}) {
     if (head.isData(row)) assembler?.push(row);
     else if (row === head.header) {
       const columns = columnsOf(row.cells, mappingSchema.parse(given.mapping ?? {}), format);
-      if ("errors" in columns) return { items, errors: columns.errors };
+      if ("errors" in columns) return { items, errors, columnErrors: columns.errors };
       assembler = new Assembler(new RowReader(columns, format, { now }), format.decimal, { item: (item) => items.push(item), error: (error) => errors.push(error) });
     }
   }
   assembler?.end();
-  return { items, errors };
+  return { items, errors, columnErrors: [] };
 }
 
 const one = ({ items: [item] }: ReturnType<typeof read>) => ({ at: new Date(item.at).toISOString(), medium: item.medium, f0Hz: item.numbers[PLACE.f0Hz], q: item.numbers[PLACE.q], temperatureC: item.numbers[PLACE.temperatureC] });
@@ -172,8 +172,8 @@ describe("values", () => {
   });
 
   it("says which columns are missing, and which names of the mapping are not in the file", () => {
-    expect(read("takenAt,f0Hz\n", { mapping: { Freq: "q" } }).errors.map((error) => ("path" in error ? error.path : ""))).toEqual(["mapping.Freq", "medium", "q"]);
-    expect(read("a,b\n", { mapping: { a: "f0Hz", b: "f0Hz" } }).errors.map(({ message }) => message)).toContain("“a” is f0Hz already");
+    expect(read("takenAt,f0Hz\n", { mapping: { Freq: "q" } }).columnErrors.map(({ path }) => path)).toEqual(["mapping.Freq", "medium", "q"]);
+    expect(read("a,b\n", { mapping: { a: "f0Hz", b: "f0Hz" } }).columnErrors.map(({ message }) => message)).toContain("“a” is f0Hz already");
   });
 });
 
