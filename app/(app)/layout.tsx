@@ -5,7 +5,9 @@ import { Toaster } from "@/components/ui/toaster";
 import { env } from "@/lib/env";
 import { currentPerson } from "@/lib/people/current-person";
 import { getMe } from "@/lib/people/me";
+import { may } from "@/lib/permissions";
 import { FollowChanges } from "./follow-changes";
+import { OfflineLine } from "./offline-line";
 import { OutboxProvider } from "./outbox/outbox-provider";
 import { TopOfPage } from "./top-of-page";
 
@@ -15,7 +17,10 @@ export default async function AppLayout({ children }: { children: ReactNode }) {
     <QueryProvider>
       <FollowChanges />
       <OutboxProvider personId={me.id}>
-        <Page masthead={<TopOfPage me={me} demo={env().LONGREED_DEMO} />}>{children}</Page>
+        <Page masthead={<TopOfPage me={me} demo={env().LONGREED_DEMO} />}>
+          <OfflineLine zone={me.laboratory.timeZone} kept={may(me.role, "answer tasks")} />
+          {children}
+        </Page>
       </OutboxProvider>
       <Toaster />
     </QueryProvider>

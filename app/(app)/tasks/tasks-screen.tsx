@@ -3,7 +3,7 @@
 import { useQuery } from "@tanstack/react-query";
 import { PageSentence, Section } from "@/components/ui/page";
 import { Slips } from "@/components/ui/slip";
-import { Empty, Loading, NoNetwork, Offline, Problem } from "@/components/ui/states";
+import { Empty, Loading, Offline, Problem } from "@/components/ui/states";
 import { useOfflineSince } from "@/components/ui/use-offline-since";
 import { openAlarmsOptions } from "@/lib/alarms/client";
 import type { AlarmAnswer } from "@/lib/alarms/schema";
@@ -44,7 +44,7 @@ export function TasksScreen({ role, name, zone, asOf }: TasksScreenProps) {
       <div className="page-row">
         <div className="margin" />
         <div className="body tasks-column">
-          {offlineSince ? <NoNetwork since={formatTime(offlineSince, zone)} kept /> : error && <Offline asOf={formatTime(now, zone)} onTryNow={retry} />}
+          {error && !offlineSince && <Offline asOf={formatTime(now, zone)} onTryNow={retry} />}
           {nobodyHas.length + items.length + gone.length > 0 ? (
             <Slips column>
               {nobodyHas.map((alarm) => <AlarmSlip key={alarm.id} alarm={alarm} now={now} may={may(role, "handle alarms")} />)}
