@@ -10,10 +10,21 @@ os.setPriority(os.constants.priority.PRIORITY_BELOW_NORMAL);
 
 async function answer(asked: Asked): Promise<Answered> {
   try {
-    return { id: asked.id, value: await (asked.name === "drift" ? heavy.drift(asked.input) : heavy.stability(asked.input)) };
+    return { id: asked.id, value: await valueOf(asked) };
   } catch (error) {
     const { name, message } = error instanceof Error ? error : new Error(String(error));
     return { id: asked.id, error: { name, message } };
+  }
+}
+
+function valueOf(asked: Asked) {
+  switch (asked.name) {
+    case "drift":
+      return heavy.drift(asked.input);
+    case "stability":
+      return heavy.stability(asked.input);
+    case "airReturn":
+      return heavy.airReturn(asked.input);
   }
 }
 

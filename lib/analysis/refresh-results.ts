@@ -1,6 +1,7 @@
+import { readAirReturn } from "@/lib/analysis/air-return";
 import { readDrift } from "@/lib/analysis/drift";
 import { findQuestions } from "@/lib/analysis/results";
-import type { DriftQuery, StabilityQuery } from "@/lib/analysis/schema";
+import type { AirReturnQuery, DriftQuery, StabilityQuery } from "@/lib/analysis/schema";
 import { readStability } from "@/lib/analysis/stability";
 
 /**
@@ -10,6 +11,7 @@ import { readStability } from "@/lib/analysis/stability";
 export async function refreshResults({ campaignId }: { campaignId: string }): Promise<void> {
   for (const { kind, query } of await findQuestions(campaignId)) {
     if (kind === "drift") await readDrift(campaignId, query as DriftQuery, { background: true });
+    else if (kind === "airReturn") await readAirReturn(campaignId, query as AirReturnQuery, { background: true });
     else await readStability(campaignId, query as StabilityQuery, { background: true });
   }
 }

@@ -8,7 +8,7 @@ const KEPT_DAYS = 14;
 /** Questions kept of one campaign, the last asked first: a script that tries every confidence level must not fill the disk. */
 const MOST_A_CAMPAIGN = 200;
 
-export type Question = { kind: "stability" | "drift"; query: object };
+export type Question = { kind: "stability" | "drift" | "airReturn"; query: object };
 
 type Ask<Answer> = {
   campaignId: string;

@@ -188,6 +188,43 @@ export const backToAirAnswer = z.object({
   limitPpm: z.number().nullable(),
 });
 
+export const airReturnQuery = selection.omit({ medium: true });
+
+/** Whether the air reference comes back and what keeps it away, and how the sensor cools after drying. */
+export const airReturnAnswer = z.object({
+  verdict: z.enum(["none", "residue", "ageing", "undecided", "step", "too few"]),
+  n: z.int(),
+  /** Growth over the record: of f0 in ppm, of Q in percent, and the loss factor of what grew. */
+  growth: z
+    .object({
+      f0PpmPerDay: z.number(),
+      f0U: z.number(),
+      qPercentPerDay: z.number(),
+      qU: z.number(),
+      totalPpm: z.number(),
+      lossFactor: z.number().nullable(),
+      lossFactorU: z.number().nullable(),
+      q: z.enum(["falls", "quiet", "rises", "unclear"]),
+    })
+    .nullable(),
+  steps: z.array(z.object({ at: z.string(), f0Ppm: z.number(), f0U: z.number(), qPercent: z.number(), qU: z.number() })),
+  cleanedAgain: z.object({ times: z.int(), takesOff: z.enum(["yes", "no", "unclear", "untried"]), share: z.number().nullable(), shareU: z.number().nullable() }),
+  cooling: z
+    .object({
+      preferred: z.enum(["none", "line", "exponential", "exponential and line"]),
+      /** Of the exponential return at the end of drying, Hz; its time constant in s. */
+      transient: z.object({ amplitude: z.number(), amplitudeU: z.number(), tauS: z.number(), tauU: z.number(), isSignificant: z.boolean() }).nullable(),
+      /** Leading repeats to leave out; null where half a phase would not be enough. */
+      discard: z.object({ repeats: z.int().nullable(), waitS: z.number(), biasLeft: z.number(), tolerance: z.number() }),
+      phases: z.int(),
+      n: z.int(),
+    })
+    .nullable(),
+  used: z.string(),
+});
+
+export type AirReturnQuery = z.output<typeof airReturnQuery>;
+export type AirReturnAnswer = z.output<typeof airReturnAnswer>;
 export type Selection = z.output<typeof selection>;
 export type SeriesQuery = z.output<typeof seriesQuery>;
 export type SeriesAnswer = z.output<typeof seriesAnswer>;

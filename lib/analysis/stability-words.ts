@@ -3,6 +3,8 @@ import { formatDuration } from "@/lib/format-time";
 
 type Point = { tauS: number; deviation: number };
 
+type Words = { name: string; within: readonly Point[]; across: readonly Point[]; unit?: string };
+
 /** Beyond this ratio of phase to phase over within, what limits lies between the phases; our choice. */
 const MUCH_MORE = 1.5;
 
@@ -12,15 +14,17 @@ const MUCH_MORE = 1.5;
  *
  * @param within Points over repeats inside phases, by rising averaging time.
  * @param across Points over phase values, by rising averaging time.
+ * @param unit Of the deviations; none where they are fractions.
  */
-export function stabilityWords({ name, within, across }: { name: string; within: readonly Point[]; across: readonly Point[] }): string | undefined {
+export function stabilityWords({ name, within, across, unit = "" }: Words): string | undefined {
   const steadiest = within.reduce<Point | undefined>((least, point) => (point.deviation > 0 && (!least || point.deviation < least.deviation) ? point : least), undefined);
   if (!steadiest) return undefined;
+  const size = `${formatPower(steadiest.deviation)}${unit && `\u00a0${unit}`}`;
   const longest = within[within.length - 1];
   const still = steadiest === longest && within.length > 1;
   const inside = still
-    ? `Within a phase ${name} is still getting steadier at ${formatDuration(steadiest.tauS)}, the longest time that can be told: ${formatPower(steadiest.deviation)}.`
-    : `Within a phase ${name} is steadiest over ${formatDuration(steadiest.tauS)}: ${formatPower(steadiest.deviation)}.`;
+    ? `Within a phase ${name} is still getting steadier at ${formatDuration(steadiest.tauS)}, the longest time that can be told: ${size}.`
+    : `Within a phase ${name} is steadiest over ${formatDuration(steadiest.tauS)}: ${size}.`;
   const first = across.find(({ deviation }) => deviation > 0);
   if (!first) return `${inside} ${still ? "Longer phases would still help." : "Longer phases would gain nothing."}`;
 

@@ -1,5 +1,5 @@
 import { infiniteQueryOptions, keepPreviousData, queryOptions } from "@tanstack/react-query";
-import { backToAirAnswer, driftAnswer, seriesAnswer, stabilityAnswer } from "@/lib/analysis/schema";
+import { airReturnAnswer, backToAirAnswer, driftAnswer, seriesAnswer, stabilityAnswer } from "@/lib/analysis/schema";
 import { campaignAnswer, campaignPage, eventPage, type CampaignItem } from "@/lib/campaigns/answers";
 import { notePage } from "@/lib/campaigns/notes-schema";
 import { overviewAnswer } from "@/lib/campaigns/overview-schema";
@@ -90,6 +90,13 @@ export const backToAirOptions = (campaignId: string) =>
   queryOptions({
     queryKey: [...ofPhasesKey(campaignId), "back-to-air"],
     queryFn: ({ signal }) => fetchJson(`/api/campaigns/${campaignId}/back-to-air`, { answer: backToAirAnswer, signal }),
+    staleTime: IDLE_MS,
+  });
+
+export const airReturnOptions = (campaignId: string, ask: Ask) =>
+  queryOptions({
+    queryKey: [...ofPhasesKey(campaignId), "air-return", ask],
+    queryFn: ({ signal }) => fetchJson(address(`/api/campaigns/${campaignId}/air-return`, ask), { answer: airReturnAnswer, signal }),
     staleTime: IDLE_MS,
   });
 

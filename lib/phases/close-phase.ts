@@ -70,6 +70,18 @@ export async function closeMeasured(transaction: Transaction, { stepId, measured
   return phase && close(transaction, phase, measured, now);
 }
 
+type ValuesIf = { stepId: string; fitRunId?: string; /** Repeats that people would have left out. */ excluded: ReadonlySet<number> };
+
+/** The repeats of a phase, closed or under way, and what its value would be with these left out; changes nothing. Undefined for a step without a phase. */
+export async function valuesIf({ stepId, fitRunId, excluded }: ValuesIf): Promise<{ columns: PhaseColumns; values: PhaseSummaryValues } | undefined> {
+  const phase = await row<PhaseRow>(PHASE, [stepId, fitRunId ?? null]);
+  if (!phase) return undefined;
+  const { columns } = await readColumns(undefined, phase);
+  markLeftOut(columns, { discard: phase.discard, excluded });
+  const summary = summarise(columns, { medianR1: await medianR1(undefined, phase) });
+  return { columns, values: isWithoutValue(phase, summary) ? withoutValue(summary) : summary };
+}
+
 async function close(transaction: Transaction, phase: PhaseRow, { columns, pressurePa }: Measured, now: Date): Promise<ClosedPhase> {
   const excluded = await rows<{ idx: number }>(`select idx from exclusion where step_id = $1 and undone_at is null`, [phase.stepId], transaction);
   markLeftOut(columns, { discard: phase.discard, excluded: new Set(excluded.map(({ idx }) => idx)) });
@@ -88,7 +100,7 @@ const withoutValue = (summary: PhaseSummaryValues): PhaseSummaryValues => ({ ...
 
 type ReadingRow = Repeat & { pressurePa: number | null };
 
-async function readColumns(transaction: Transaction, { stepId, fitRunId }: PhaseRow): Promise<Measured> {
+async function readColumns(transaction: Transaction | undefined, { stepId, fitRunId }: PhaseRow): Promise<Measured> {
   const readings = await rows<ReadingRow>(
     `select r.idx, r.at, r.temperature_c as "temperatureC", r.pressure_pa as "pressurePa", f.f0_hz as "f0Hz", f.q, f.f0_std_hz as "f0StdHz",
             coalesce(f.flags, r.flags) as flags
@@ -103,7 +115,7 @@ async function readColumns(transaction: Transaction, { stepId, fitRunId }: Phase
 }
 
 /** Median lag-1 autocorrelation of this medium's earlier phases in the campaign: the floor for short phases. */
-async function medianR1(transaction: Transaction, { campaignId, medium, sequence, fitRunId }: PhaseRow) {
+async function medianR1(transaction: Transaction | undefined, { campaignId, medium, sequence, fitRunId }: PhaseRow) {
   const median = await row<{ f0: number | null; q: number | null }>(
     `select percentile_cont(0.5) within group (order by s.f0_r1) as f0, percentile_cont(0.5) within group (order by s.q_r1) as q
        from phase p join phase_summary s on s.phase_id = p.id and s.fit_run_id = $4

@@ -1,13 +1,17 @@
 import { row } from "@/lib/db";
 import { notFound } from "@/lib/errors";
-import { fitResonance } from "@/lib/numerics/resonance/fit-resonance";
 import { flagNames } from "@/lib/numerics/resonance/flags";
-import { evaluateResonance } from "@/lib/numerics/resonance/model";
 import type { Readout } from "@/lib/numerics/resonance/types";
-import type { SweepAnswer } from "@/lib/readings/schema";
 import { decodeSweep, type StoredSweep } from "@/lib/readings/decode-sweep";
+import { describeSweep } from "@/lib/readings/describe-sweep";
+import { readSweepPlace } from "@/lib/readings/read-sweep-place";
+import type { SweepAnswer, SweepQuery } from "@/lib/readings/schema";
+import type { FitSettings } from "@/models/json";
 
 type Found = StoredSweep & {
+  stepId: string;
+  fitRunId: string | null;
+  settings: FitSettings | null;
   sequence: number;
   index: number;
   medium: string;
@@ -17,39 +21,50 @@ type Found = StoredSweep & {
   f0StdHz: number | null;
   q: number | null;
   qStd: number | null;
+  amplitudeV: number | null;
+  noiseV: number | null;
   flags: number;
-  readout: Readout;
+  readout: Readout | null;
   dwellS: number | null;
+  driveV: number | null;
+  durationS: number | null;
+  temperatureC: number | null;
+  pressurePa: number | null;
+  humidityPercent: number | null;
 };
 
-/** The newest sweep of a campaign, or the one named, with its fitted curve. @throws AppError 404 when there is none. */
-export async function readSweep({ campaignId, sequence, index }: { campaignId: string; sequence?: number; index?: number }): Promise<SweepAnswer> {
+const FORMS = { 1: "sweep", 2: "magnitude", 3: "ringDown", 4: "fitted" } as const;
+
+/** The newest sweep of a campaign, or the one named, with its fitted curve; of a named one also its place in the phase. @throws AppError 404 when there is none. */
+export async function readSweep({ campaignId, sequence, index, fitRunId }: { campaignId: string } & SweepQuery): Promise<SweepAnswer> {
   const found = await row<Found>(
-    `select s.sequence, r.idx as index, s.medium, s.cycle, r.at, r.kind, w.start_hz as "startHz", w.stop_hz as "stopHz", w.points, w.data,
-            f.f0_hz as "f0Hz", f.f0_std_hz as "f0StdHz", f.q, f.q_std as "qStd", coalesce(f.flags, r.flags) as flags,
-            coalesce(v.definition->>'readout', (select readout from phase where step_id = s.id)) as readout, (s.params->'sweep'->>'dwellS')::float8 as "dwellS"
+    `select s.id as "stepId", run.id as "fitRunId", run.settings, s.sequence, r.idx as index, s.medium, s.cycle, r.at, r.kind, w.start_hz as "startHz", w.stop_hz as "stopHz",
+            w.points, w.data, f.f0_hz as "f0Hz", f.f0_std_hz as "f0StdHz", f.q, f.q_std as "qStd", f.amplitude_v as "amplitudeV", f.noise_v as "noiseV",
+            coalesce(f.flags, r.flags) as flags, coalesce(v.definition->>'readout', (select readout from phase where step_id = s.id)) as readout,
+            (s.params->'sweep'->>'dwellS')::float8 as "dwellS", (s.params->'sweep'->>'driveV')::float8 as "driveV", r.duration_s as "durationS",
+            r.temperature_c as "temperatureC", r.pressure_pa as "pressurePa", r.humidity_percent as "humidityPercent"
        from (select * from step where campaign_id = $1 and kind = 'measure' and stored > 0 and ($2::int is null or sequence = $2)
               order by sequence desc limit 1) s
        left join protocol_version v on v.id = s.protocol_version_id
        join lateral (select * from reading where step_id = s.id and ($3::int is null or idx = $3) order by idx desc limit 1) r on true
        join sweep w on w.step_id = r.step_id and w.idx = r.idx
-       left join fit_run run on run.campaign_id = $1 and run.current
+       left join fit_run run on run.campaign_id = $1 and case when $4::bigint is null then run.current else run.id = $4 end
        left join fit f on f.fit_run_id = run.id and f.step_id = r.step_id and f.idx = r.idx`,
-    [campaignId, sequence ?? null, index ?? null],
+    [campaignId, sequence ?? null, index ?? null, fitRunId ?? null],
   );
   if (!found) throw notFound("sweep");
-  const { f0Hz, f0StdHz, q, qStd, medium, cycle, points } = found;
-  const about = { sequence: found.sequence, index: found.index, medium, cycle, points, f0Hz, f0StdHz, q, qStd };
-  return { ...about, takenAt: found.at.toISOString(), flags: flagNames(found.flags), curve: curveOf(found) };
-}
-
-function curveOf(found: Found): SweepAnswer["curve"] {
-  const record = decodeSweep(found);
-  if (record.form !== "sweep") return null;
-  const { sweep } = record;
-  const measured = sweep.kind === "complex" ? sweep.re.map((re, i) => Math.hypot(re, sweep.im[i])) : sweep.magnitude;
-  const fit = fitResonance(sweep, { readout: found.readout, dwellS: found.dwellS ?? undefined });
-  if (fit.flags.includes("failed")) return { frequencyHz: [...sweep.frequencyHz], measuredV: [...measured], fittedV: [] };
-  const { re, im } = evaluateResonance(sweep.frequencyHz, { readout: found.readout, f0Hz: fit.f0Hz, q: fit.q, a: fit.a, b: fit.b, c: fit.c });
-  return { frequencyHz: [...sweep.frequencyHz], measuredV: [...measured], fittedV: [...re.map((value, i) => Math.hypot(value, im[i]))] };
+  const { stepId, settings, at, flags, kind, amplitudeV, noiseV, startHz: _start, stopHz: _stop, data: _data, ...about } = found;
+  const readout = settings?.readout ?? found.readout ?? "velocity";
+  const named = sequence !== undefined && index !== undefined;
+  return {
+    ...about,
+    readout,
+    takenAt: at.toISOString(),
+    flags: flagNames(flags),
+    form: FORMS[kind as keyof typeof FORMS],
+    snr: amplitudeV !== null && noiseV ? amplitudeV / noiseV : null,
+    noiseV,
+    ...describeSweep(decodeSweep(found), { readout, offsetSlope: settings?.offsetSlope ?? true, dwellS: found.dwellS ?? undefined }),
+    ...(named && { place: await readSweepPlace({ campaignId, stepId, sequence: found.sequence, index: found.index, fitRunId: found.fitRunId }) }),
+  };
 }

@@ -1,8 +1,6 @@
 import type { Complex, Readout } from "@/lib/numerics/resonance/types";
 import { regression } from "@/lib/numerics/statistics/regression";
 
-export const PARAMETERS = ["f0Hz", "q", "aRe", "aIm", "bRe", "bIm", "cRe", "cIm"] as const;
-
 type Fit = { f0Hz: number; q: number; a: Complex; noise: number };
 
 /**
@@ -14,7 +12,7 @@ type Fit = { f0Hz: number; q: number; a: Complex; noise: number };
  * @param frequencyHz Frequencies of the sweep in Hz, positive.
  * @param fit f0 in Hz, Q, a and the noise in each quadrature, in one unit of voltage.
  * @param offsetSlope Whether c was fitted; without it c has no place in the matrix.
- * @returns Of `PARAMETERS` in their order, rows one after another, in products of their units; six of them without c.
+ * @returns Of `RESONANCE_PARAMETERS` in their order, rows one after another, in products of their units; six of them without c.
  *   Undefined where the parameters cannot be told apart.
  *
  * Source: as `evaluateResonance`; JCGM 102:2011, linear propagation through least squares.

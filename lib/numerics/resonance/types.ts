@@ -25,6 +25,9 @@ export type FitOptions = {
   guess?: { f0Hz: number; q: number };
 };
 
+/** Parameters of a complex sweep in their order: resonance a, offset b and its slope c have a part in phase and one in quadrature. */
+export const RESONANCE_PARAMETERS = ["f0Hz", "q", "aRe", "aIm", "bRe", "bIm", "cRe", "cIm"] as const;
+
 /** Variances in Hz² and 1, covariance in Hz. */
 export type FitCovariance = { f0f0: number; f0q: number; qq: number };
 

@@ -11,7 +11,8 @@ import { Invitation } from "@/models/invitation";
 import { newToken } from "@/lib/tokens";
 import { buildCampaign } from "@/tests/factories/campaign";
 import { openAlarm } from "@/lib/alarms/open-alarm";
-import { inTransaction } from "@/lib/db";
+import { inTransaction, row } from "@/lib/db";
+import { Bench } from "@/tests/factories/bench";
 import { buildImportRun } from "@/tests/factories/import-run";
 import { buildLot } from "@/tests/factories/lot";
 import { now } from "@/tests/factories/now";
@@ -50,10 +51,21 @@ beforeAll(async () => {
   const protocol = { id: (await buildProtocolVersion()).protocolId };
   const sensor = { id: (await buildSensor()).id };
   const liquid = { id: lot.liquidId, lotId: lot.id };
+  const bench = await Bench.make();
+  await bench.hello();
+  for (let step = await bench.next(); step; step = await bench.next()) {
+    await bench.carryOut(step);
+    if (step.kind === "measure") break;
+  }
+  const measured = await row<{ sequence: number }>(`select sequence from step where campaign_id = $1 and stored > 0 limit 1`, [bench.campaign.id]);
+  const reading = { id: `C-${bench.campaign.id}`, sequence: String(measured?.sequence), index: "0" };
   Object.assign(parts, {
     "/alarms/[id]": { id: alarmId },
     "/api-reference/[group]": { group: "rigs" },
     "/campaigns/[id]": { id: `C-${campaignId}` },
+    "/campaigns/[id]/fits": { id: `C-${campaignId}` },
+    "/campaigns/[id]/readings/[sequence]/[index]": reading,
+    "/campaigns/[id]/stability": { id: `C-${campaignId}` },
     "/import/[id]": { id: (await buildImportRun()).id },
     "/invitation/[token]": { token },
     "/liquids/[id]": liquid,

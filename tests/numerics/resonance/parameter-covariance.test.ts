@@ -1,8 +1,8 @@
 import { expect, test } from "vitest";
 import { fitResonance } from "@/lib/numerics/resonance/fit-resonance";
 import { evaluateResonance } from "@/lib/numerics/resonance/model";
-import { PARAMETERS, parameterCovariance } from "@/lib/numerics/resonance/parameter-covariance";
-import { linearGrid, type Readout } from "@/lib/numerics/resonance/types";
+import { parameterCovariance } from "@/lib/numerics/resonance/parameter-covariance";
+import { linearGrid, RESONANCE_PARAMETERS, type Readout } from "@/lib/numerics/resonance/types";
 
 const truth = { f0Hz: 1098.42, q: 21.84, a: { re: 0.97, im: -0.23 }, b: { re: 0.06, im: 0.04 }, c: { re: -0.012, im: 0.019 } };
 const frequencyHz = linearGrid(980, 1220, 401);
@@ -36,9 +36,9 @@ test("standard uncertainties and correlations of all eight are those of the scat
   const noise = 2e-3;
   const fits = Array.from({ length: 600 }, () => fitted("velocity", true, noise, normal)).map(({ f0Hz, q, a, b, c }) => [f0Hz, q, a.re, a.im, b.re, b.im, c.re, c.im]);
   const covariance = parameterCovariance(frequencyHz, { ...truth, noise }, { readout: "velocity" }) as Float64Array;
-  const means = PARAMETERS.map((_, j) => fits.reduce((sum, fit) => sum + fit[j] / fits.length, 0));
+  const means = RESONANCE_PARAMETERS.map((_, j) => fits.reduce((sum, fit) => sum + fit[j] / fits.length, 0));
   const scatter = (i: number, j: number) => fits.reduce((sum, fit) => sum + ((fit[i] - means[i]) * (fit[j] - means[j])) / (fits.length - 1), 0);
-  PARAMETERS.forEach((_, j) => {
+  RESONANCE_PARAMETERS.forEach((_, j) => {
     expect(Math.sqrt(scatter(j, j) / covariance[j * 8 + j])).toBeGreaterThan(0.88);
     expect(Math.sqrt(scatter(j, j) / covariance[j * 8 + j])).toBeLessThan(1.12);
     const correlation = scatter(0, j) / Math.sqrt(scatter(0, 0) * scatter(j, j));

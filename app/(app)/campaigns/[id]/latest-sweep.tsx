@@ -1,6 +1,7 @@
 "use client";
 
 import { useQuery } from "@tanstack/react-query";
+import Link from "next/link";
 import { SweepChart } from "@/components/charts/sweep-chart";
 import { Head } from "@/components/ui/page";
 import { WordTag } from "@/components/ui/tag";
@@ -28,7 +29,7 @@ export function LatestSweep({ campaign }: { campaign: CampaignAnswer }) {
   const [unit, scale] = unitFor(residuals ?? []);
   return (
     <div aria-busy={isFetching}>
-      <Head remark={`${formatRecent(takenAt, campaign.timeZone, campaign.now)}, repeat ${formatCount(index + 1)}, ${formatCount(points)} points`}>Latest sweep</Head>
+      <Head remark={`${formatRecent(takenAt, campaign.timeZone, campaign.now)}, repeat ${formatCount(index + 1)}, ${formatCount(points)} points`}><Link href={`/campaigns/${campaignCode(campaign.id)}/readings/${sweep.sequence}/${index}`}>Latest sweep</Link></Head>
       {error && <Problem error={error} onRetry={() => void refetch()} />}
       {curve ? (
         <SweepChart

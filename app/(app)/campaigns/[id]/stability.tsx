@@ -1,6 +1,7 @@
 "use client";
 
 import { useQueries } from "@tanstack/react-query";
+import Link from "next/link";
 import { useMemo } from "react";
 import { DeviationChart } from "@/components/charts/deviation-chart";
 import { ChoiceWord } from "@/components/ui/choice-sentence";
@@ -9,7 +10,7 @@ import { Symbol } from "@/components/ui/quantity";
 import { Empty, Loading, Problem } from "@/components/ui/states";
 import { stabilityWords } from "@/lib/analysis/stability-words";
 import type { CampaignAnswer } from "@/lib/campaigns/answers";
-import { stabilityOptions } from "@/lib/campaigns/client";
+import { address, stabilityOptions } from "@/lib/campaigns/client";
 import { campaignCode } from "@/lib/campaigns/code";
 import { curvesOf, STATISTICS } from "./stability-curves";
 import { setPointOf, type Statistic, type View } from "./view";
@@ -48,7 +49,8 @@ export function Stability({ campaign, view, set }: StabilityProps) {
         </span>
       </Head>
       <p className="small mb-2 text-ink2">
-        <ChoiceWord label="Points" value={points} options={POINTS} onChoose={(value) => set({ points: value === "both" ? null : value })} />, 68 % band
+        <ChoiceWord label="Points" value={points} options={POINTS} onChoose={(value) => set({ points: value === "both" ? null : value })} />, 68 % band.{" "}
+        <Link href={address(`/campaigns/${campaignCode(campaign.id)}/stability`, { quantity: quantity === "q" ? "q" : undefined, statistic: statistic === "oadev" ? undefined : statistic, setPointC: view.setPointC })}>Analysis</Link>
       </p>
       {failed && <Problem error={failed.error} onRetry={() => void Promise.all(wanted.filter(({ error }) => error).map((one) => one.refetch()))} />}
       {curves.length > 0 ? (

@@ -45,13 +45,13 @@ export function StabilityTab({ campaign, view, set }: AnalysisProps) {
   const besideLabel = beside && `${campaignCode(beside.campaignId)}, ${beside.medium === "air" ? "air" : (other.data?.media.find(({ medium }) => medium === beside.medium)?.name ?? beside.medium)}`;
   const besideCurve = beside && besideLabel ? [{ id: "beside", label: besideLabel, pen: "third" as const, within: (besideWithin.data?.points ?? []).map(toDeviationPoint), across: (besideAcross.data?.points ?? []).map(toDeviationPoint) }] : [];
   const curves = [...curvesOf(media, insideData, betweenData), ...besideCurve.filter((curve) => curve.within.length + curve.across.length > 0)];
-  const said = media.flatMap(({ medium, name }, i) => stabilityWords({ name: medium === "air" ? "air" : name, within: insideData[i]?.points ?? [], across: betweenData[i]?.points ?? [] }) ?? [])[0];
+  const inHz = normalise === "absolute" && quantity === "f0";
+  const said = statistic === "tdev" ? undefined : media.flatMap(({ medium, name }, i) => stabilityWords({ name: medium === "air" ? "air" : name, within: insideData[i]?.points ?? [], across: betweenData[i]?.points ?? [], unit: inHz ? "Hz" : "" }) ?? [])[0];
   const { label, quantity: axis } = STATISTICS[statistic];
   const code = campaignCode(campaign.id);
   const band = `${Math.round(Number(confidence) * 100)} %`;
   const named = media.map(({ medium, name }, i) => ({ id: medium, name: medium === "air" ? "Air" : name, within: insideData[i], across: betweenData[i] }));
   const all = beside && besideLabel ? [...named, { id: "beside", name: besideLabel, within: besideWithin.data, across: besideAcross.data }] : named;
-  const inHz = normalise === "absolute" && quantity === "f0";
   return (
     <>
       <Section
