@@ -3,11 +3,11 @@ import { SHIFT_U } from "@/lib/phases/shift-uncertainty";
 /** Everything a list row shows, in one query whatever the page's length; $1 is the present. `CAMPAIGNS_FROM` follows. */
 export const CAMPAIGNS = `
   select c.id, c.name, c.rig_number as number, c.state, c.set_aside as "setAside", c.origin, c.priority, c.parking, c.rig_id as "rigId",
-         rig.name as rig, coalesce(rig.time_zone, 'UTC') as "timeZone", rig.clock, rig.last_contact_at as "lastContactAt",
+         rig.name as rig, coalesce(rig.time_zone, (select format->>'timeZone' from import_run where campaign_id = c.id), 'UTC') as "timeZone", rig.clock, rig.last_contact_at as "lastContactAt",
          c.sensor_id as "sensorId", s.serial as sensor, v.protocol_id as "protocolId", c.protocol_version_id as "protocolVersionId",
          p.name as protocol, v.version, c.start_at as "startAt", c.created_at as "createdAt", c.started_at as "startedAt", c.ended_at as "endedAt",
          c.started_clock as "startedClock", c.ended_clock as "endedClock", c.end_text as "endText", c.cursor, c.cursor_text as "cursorText",
-         c.planned, person.name as "createdBy", coalesce(h.reasons, '{}') as "holdReasons", coalesce(done.repeats, 0)::int as repeats,
+         c.planned, case when c.origin = 'import' then (select max(cycle) from step where campaign_id = c.id) end as "importedCycles", person.name as "createdBy", coalesce(h.reasons, '{}') as "holdReasons", coalesce(done.repeats, 0)::int as repeats,
          case when rig.clock = 'simulated' then rig.reported_clock else $1::timestamptz end as "rigNow", open.kind as "stepKind",
          air.hz / air.baseline * 1e6 as "shiftPpm", air.hz as "shiftHz", air.u as "shiftU",
          (select min((l->>'tolerancePpm')::float8) from jsonb_array_elements(v.definition->'limits') l where l->>'kind' = 'return') * 1e-6 * air.baseline as "limitHz",

@@ -36,6 +36,7 @@ export type CampaignRecord = {
   cursor: Cursor | null;
   cursorText: string | null;
   planned: PlannedCampaign | null;
+  importedCycles: number | null;
   createdBy: string | null;
   holdReasons: HoldReason[];
   repeats: number;
@@ -85,7 +86,7 @@ export function presentCampaign(found: CampaignRecord): CampaignItem {
     startedClock: iso(found.startedClock),
     endedClock: iso(found.endedClock),
     cursor: found.cursorText,
-    cycle: cursor?.cyclesBegun ?? 0,
+    cycle: found.importedCycles ?? cursor?.cyclesBegun ?? 0,
     progress: { repeats: found.repeats, repeatsPlanned: planned?.repeats ?? null, cycles: planned?.cycles ?? null },
     expectedEnd: expectedEnd(found),
     shiftPpm: found.shiftPpm,

@@ -1,6 +1,7 @@
 import type { CampaignAnswer, CampaignItem, CampaignQuery } from "@/lib/campaigns/answers";
 import { CAMPAIGNS, CAMPAIGNS_FROM } from "@/lib/campaigns/campaigns-query";
 import { campaignWhere } from "@/lib/campaigns/filter";
+import { importedLiquids } from "@/lib/campaigns/imported-liquids";
 import { orderOf } from "@/lib/campaigns/order";
 import { iso, presentCampaign, type CampaignRecord } from "@/lib/campaigns/present";
 import { slotLiquids } from "@/lib/campaigns/slot-liquids";
@@ -48,7 +49,7 @@ export async function getCampaign({ campaignId, now }: { campaignId: string; now
     holds,
     amendments,
     slots: slots.map(({ slot, port, lotId, lot, liquidId, name, letter }) => ({ slot, port, lotId, lot, liquidId, liquid: name, letter })),
-    media: mediaOf(phases, slots),
+    media: mediaOf(phases, found.origin === "import" ? importedLiquids([...new Set(phases.map(({ medium }) => medium))]) : slots),
     setPointsC: [...new Set(phases.flatMap(({ setPointC }) => setPointC ?? []))],
     step: step ? { ...step, dueAt: iso(step.dueAt) } : null,
     lastContactAt: iso(found.lastContactAt),

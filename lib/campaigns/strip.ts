@@ -1,3 +1,4 @@
+import { importedLiquids } from "@/lib/campaigns/imported-liquids";
 import { slotLiquids, type SlotLiquid } from "@/lib/campaigns/slot-liquids";
 import { pastSegment, readPastSteps, type PastStep } from "@/lib/campaigns/strip-past";
 import { plannedSegments, type Track } from "@/lib/campaigns/strip-planned";
@@ -11,6 +12,7 @@ import type { Cursor, RigAbilities } from "@/lib/protocol/types";
 
 type Head = {
   id: string;
+  origin: "protocol" | "import";
   state: "draft" | "queued" | "running" | "held" | "finished" | "stopped" | "failed";
   definition: Definition | null;
   cursor: Cursor | null;
@@ -73,7 +75,7 @@ function byCampaign<Part extends { campaignId: string }>(parts: readonly Part[])
 
 const readHeads = (campaignIds: readonly string[], now: Date) =>
   rows<Head>(
-    `select c.id, c.state, v.definition, c.cursor, c.started_clock as "startedClock", c.ended_clock as "endedClock",
+    `select c.id, c.origin, c.state, v.definition, c.cursor, c.started_clock as "startedClock", c.ended_clock as "endedClock",
             case when rig.clock = 'simulated' then rig.reported_clock else $2::timestamptz end as clock, rig.time_zone as "timeZone", rig.abilities,
             s.nominal_f0_hz as "nominalF0Hz", s.nominal_q as "nominalQ"
        from campaign c left join protocol_version v on v.id = c.protocol_version_id left join rig on rig.id = c.rig_id left join sensor s on s.id = c.sensor_id
@@ -101,7 +103,7 @@ function stripOf(head: Head, now: Date, { past, holds, air, tracks, liquids }: P
     to: new Date(Math.max(last, from.getTime() + 60_000)).toISOString(),
     ...(begun && !ended ? { now: clock.toISOString() } : {}),
     segments,
-    liquids: liquids.map(({ slot, name, letter, tint }) => ({ slot, name, letter, tint })),
+    liquids: (head.origin === "import" ? importedLiquids([...new Set(past.flatMap(({ medium }) => medium ?? []))]) : liquids).map(({ slot, name, letter, tint }) => ({ slot, name, letter, tint })),
     ...(halted ? { halt: { at: halted.from.toISOString(), open: halted.to === null } } : {}),
     trace: air.map(({ at, phaseId, f0Hz, u, shiftU, baselineHz: baseline }) => ({
       at: at.toISOString(),

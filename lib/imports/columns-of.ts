@@ -75,7 +75,8 @@ export function suggestMapping(header: readonly string[]): Mapping {
     if (name === "" || name in mapping) continue;
     const unitText = /[([/]\s*([^()[\]/]+?)\s*[)\]]?$/.exec(name)?.[1] ?? /_(Hz|kHz|MHz|mHz|K|C|F|Pa|hPa|mbar|bar|V|mV)$/.exec(name)?.[1];
     const bare = plain(name.replace(/\s*[([/].*$/, "").replace(/_(Hz|kHz|MHz|mHz|K|C|F|Pa|hPa|mbar|bar|V|mV)$/, ""));
-    const found = FIELD_NAMES.find((field) => plain(field) === plain(name)) ?? FIELD_NAMES.find((field) => !taken.has(field) && fieldInfo(field).names.includes(bare));
+    // A bare T is a time unless it is told in degrees.
+    const found = bare === "t" && inDegrees(unitText) ? "temperatureC" : FIELD_NAMES.find((field) => plain(field) === plain(name)) ?? FIELD_NAMES.find((field) => !taken.has(field) && fieldInfo(field).names.includes(bare));
     if (!found || taken.has(found)) continue;
     taken.add(found);
     const units = fieldInfo(found).units;
@@ -84,5 +85,7 @@ export function suggestMapping(header: readonly string[]): Mapping {
   }
   return mapping;
 }
+
+const inDegrees = (unit: string | undefined): boolean => unit !== undefined && /^°?[CKF]$/.test(unit);
 
 const plain = (name: string): string => name.toLowerCase().replaceAll("₀", "0").replaceAll(/[^a-zäöü0-9]/g, "");

@@ -7,7 +7,7 @@ type Row = { name: string; shown: string; use: Mapping[string]; taken: ReadonlyS
 
 const COLUMNS: readonly TableColumn<Row>[] = [
   { id: "name", head: "Column", slot: "a", cell: ({ name }) => <b>{name}</b> },
-  { id: "shown", head: "First values", slot: "w", cell: ({ shown }) => <span className="num text-ink2">{shown}</span> },
+  { id: "shown", head: "First values", slot: "w", cell: ({ shown }) => <span className="num block overflow-hidden text-ellipsis text-ink2">{shown}</span> },
   {
     id: "field",
     head: "Is",

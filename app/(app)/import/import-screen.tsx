@@ -14,6 +14,7 @@ import { sendFile, type ToSend } from "@/lib/imports/client";
 import { suggestMapping } from "@/lib/imports/columns-of";
 import { previewOf } from "@/lib/imports/preview";
 import { formatSchema, type Format, type Mapping } from "@/lib/imports/schema";
+import { suggestFormat } from "@/lib/imports/suggest-format";
 import { ColumnsTable } from "./columns-table";
 import { FormatFields } from "./format-fields";
 import { ImportsTable } from "./imports-table";
@@ -34,6 +35,7 @@ export function ImportScreen({ sensors, zone, now }: Props) {
   const [format, setFormat] = useState<Format>(() => formatSchema.parse({ timeZone: zone }));
   const [chosen, setChosen] = useState<{ header: string; mapping: Mapping }>();
   const [share, setShare] = useState(0);
+  const [suggestedFor, setSuggestedFor] = useState<File>();
   const { beginning, problem, reading } = useBeginning(file, format);
 
   const header = beginning?.header.cells.join("\n") ?? "";
@@ -42,6 +44,10 @@ export function ImportScreen({ sensors, zone, now }: Props) {
     () => (beginning && formatSchema.safeParse(format).success ? previewOf(beginning, { mapping, format, now: new Date(now) }) : undefined),
     [beginning, mapping, format, now],
   );
+  if (beginning && file && suggestedFor !== file) {
+    setSuggestedFor(file);
+    setFormat({ ...format, ...suggestFormat(beginning, mapping, new Date(now)) });
+  }
   const has = (...fields: string[]) => Object.values(mapping).some((use) => use && fields.includes(use.field));
 
   const send = useMutation({
@@ -66,7 +72,7 @@ export function ImportScreen({ sensors, zone, now }: Props) {
                 {...bound}
                 type="file"
                 accept=".csv,.txt,.tsv,.dat,.xlsx,text/csv"
-                className="control"
+                className="control py-1.5"
                 onChange={({ target }) => {
                   const next = target.files?.[0];
                   setFile(next);

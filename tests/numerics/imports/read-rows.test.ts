@@ -10,6 +10,7 @@ import { HeadReader } from "@/lib/imports/read-head";
 import { PLACE, RowReader, type RowError } from "@/lib/imports/row-reader";
 import { formatSchema, mappingSchema } from "@/lib/imports/schema";
 import { sniffDelimiter, sniffEncoding } from "@/lib/imports/sniff";
+import { suggestFormat } from "@/lib/imports/suggest-format";
 import { textRows } from "@/lib/imports/text-rows";
 import { linearGrid } from "@/lib/numerics/resonance/types";
 import { KIND } from "@/lib/readings/reading";
@@ -251,5 +252,26 @@ describe("how a file is written", () => {
       Liquid: { field: "medium" },
       Cycle: { field: "cycle" },
     });
+  });
+});
+
+describe("suggestFormat", () => {
+  const beginning = (header: string, ...lines: string[]) => ({ header: { line: 1, cells: header.split(";") }, rows: lines.map((line, i) => ({ line: i + 2, cells: line.split(";") })), whole: true });
+  const suggest = (header: string, ...lines: string[]) => suggestFormat(beginning(header, ...lines), suggestMapping(header.split(";")), now);
+
+  it.each([
+    ["time;f0;q", "2026-05-01 08:00;2400.5;1800", { decimal: ".", timeFormat: "iso" }],
+    ["time;f0;q", "01.05.2026 08:00;2400,5;1800", { decimal: ",", timeFormat: "dayFirst" }],
+    ["time;f0;q", "5/13/2026 8:00 AM;2400.5;1800", { decimal: ".", timeFormat: "monthFirst" }],
+    ["time;f0;q", "1777622400.25;2400.5;1800", { decimal: ".", timeFormat: "unixS" }],
+    ["time;f0;q", "1777622400250;2400.5;1800", { decimal: ".", timeFormat: "unixMs" }],
+    ["time;f0;q", "46143.5;2400.5;1800", { decimal: ".", timeFormat: "days1900" }],
+    ["time;f0;q", "soon;2400.5;1800", { decimal: ".", timeFormat: "iso" }],
+  ])("%s: %s", (header, line, format) => {
+    expect(suggest(header, line)).toEqual(format);
+  });
+
+  it("takes a bare T in degrees for a temperature", () => {
+    expect(suggestMapping(["t", "T (K)"])).toEqual({ t: { field: "takenAt" }, "T (K)": { field: "temperatureC", unit: "K" } });
   });
 });
