@@ -30,6 +30,8 @@ export type TimeSeriesChartProps = {
   onWindow?: (from: string, to: string) => void;
   /** The whole there is; offered when the window is less. */
   whole?: { from: string; to: string };
+  /** A press, or Enter at the cursor, opens what stands there. */
+  onOpen?: (at: number) => void;
 };
 
 const LEFT = 52;
@@ -38,7 +40,7 @@ const HEADROOM = 22;
 const HEIGHTS = [202, 64, 64];
 
 /** Quantities against time, smooth at tens of thousands of repeats: what is drawn is one column a pixel. */
-export function TimeSeriesChart({ label, sentence, file, panels, from, to, zone, phases, closeGaps, onWindow, whole }: TimeSeriesChartProps) {
+export function TimeSeriesChart({ label, sentence, file, panels, from, to, zone, phases, closeGaps, onWindow, whole, onOpen }: TimeSeriesChartProps) {
   const [ref, width] = useWidth();
   const [cursor, setCursor] = useState<number>();
   const left = width < 500 ? 42 : LEFT;
@@ -59,12 +61,17 @@ export function TimeSeriesChart({ label, sentence, file, panels, from, to, zone,
   const height = axisY + (closed ? 40 : 24);
 
   const window = (a: number, b: number) => onWindow?.(new Date(a).toISOString(), new Date(b).toISOString());
+  const open = (place: number | undefined) => {
+    const at = place === undefined ? undefined : stops[place]?.at;
+    if (at !== undefined) onOpen?.(at);
+  };
   const drag = useDragWindow({
     left,
     width: right - left,
     onWindow: onWindow && axis && ((x0, x1) => window(axis.invert(x0), axis.invert(x1))),
     onMove: (x) => setCursor(nearestStop(stops, x)),
     onLeave: () => setCursor(undefined),
+    onPress: () => open(cursor),
   });
 
   function onKeyDown(event: KeyboardEvent) {
@@ -74,6 +81,7 @@ export function TimeSeriesChart({ label, sentence, file, panels, from, to, zone,
       event.preventDefault();
       setCursor(next);
     } else if (event.key === "Escape") setCursor(undefined);
+    else if (event.key === "Enter") open(cursor);
     else if ((event.key === "+" || event.key === "-") && onWindow) {
       const middle = stops[here]?.at ?? (Date.parse(from) + Date.parse(to)) / 2;
       const half = ((Date.parse(to) - Date.parse(from)) / 2) * (event.key === "+" ? 0.5 : 2);

@@ -13,10 +13,12 @@ type DragWindow = {
   /** Pointer without a button, in pixels from the left of the drawing. */
   onMove?: (x: number) => void;
   onLeave?: () => void;
+  /** A press that was no drag. */
+  onPress?: () => void;
 };
 
-/** A drag along x that ends as a window; shorter than 6 px it is a press and does nothing. Escape is the caller's. */
-export function useDragWindow({ left = 0, width, onWindow, onMove, onLeave }: DragWindow) {
+/** A drag along x that ends as a window; shorter than 6 px it is a press. Escape is the caller's. */
+export function useDragWindow({ left = 0, width, onWindow, onMove, onLeave, onPress }: DragWindow) {
   const [drag, setDrag] = useState<{ from: number; to: number }>();
   const clamp = (x: number) => Math.max(left, Math.min(left + width, x));
   const at = (event: PointerEvent<SVGSVGElement>) => clamp(localPoint(event.currentTarget, event)?.x ?? left);
@@ -33,6 +35,7 @@ export function useDragWindow({ left = 0, width, onWindow, onMove, onLeave }: Dr
       onMove?.(x);
     },
     onPointerUp: () => {
+      if (drag && Math.abs(drag.to - drag.from) < SHORTEST_DRAG_PX) onPress?.();
       if (drag && Math.abs(drag.to - drag.from) >= SHORTEST_DRAG_PX) onWindow?.(Math.min(drag.from, drag.to), Math.max(drag.from, drag.to));
       setDrag(undefined);
     },

@@ -43,7 +43,7 @@ function parametersOf(sweep: Sweep, fit: ResonanceFit, { readout, offsetSlope = 
   const size = values.length;
   return values.map((value, j) => {
     const u = covariance ? Math.sqrt(covariance[j * (size + 1)]) : null;
-    return { name: RESONANCE_PARAMETERS[j], value, u, correlationWithF0: covariance && u ? covariance[j] / (u * Math.sqrt(covariance[0])) : null };
+    return { name: RESONANCE_PARAMETERS[j], value, u, correlationWithF0: j === 0 ? 1 : covariance && u ? covariance[j] / (u * Math.sqrt(covariance[0])) : null };
   });
 }
 

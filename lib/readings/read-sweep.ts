@@ -36,7 +36,8 @@ type Found = StoredSweep & {
 const FORMS = { 1: "sweep", 2: "magnitude", 3: "ringDown", 4: "fitted" } as const;
 
 /** The newest sweep of a campaign, or the one named, with its fitted curve; of a named one also its place in the phase. @throws AppError 404 when there is none. */
-export async function readSweep({ campaignId, sequence, index, fitRunId }: { campaignId: string } & SweepQuery): Promise<SweepAnswer> {
+export async function readSweep({ campaignId, medium, at: taken, ...asked }: { campaignId: string } & SweepQuery): Promise<SweepAnswer> {
+  const { sequence, index, fitRunId } = taken ? { ...asked, ...(await takenAt({ campaignId, medium, at: taken })) } : asked;
   const found = await row<Found>(
     `select s.id as "stepId", run.id as "fitRunId", run.settings, s.sequence, r.idx as index, s.medium, s.cycle, r.at, r.kind, w.start_hz as "startHz", w.stop_hz as "stopHz",
             w.points, w.data, f.f0_hz as "f0Hz", f.f0_std_hz as "f0StdHz", f.q, f.q_std as "qStd", f.amplitude_v as "amplitudeV", f.noise_v as "noiseV",
@@ -67,4 +68,19 @@ export async function readSweep({ campaignId, sequence, index, fitRunId }: { cam
     ...describeSweep(decodeSweep(found), { readout, offsetSlope: settings?.offsetSlope ?? true, dwellS: found.dwellS ?? undefined }),
     ...(named && { place: await readSweepPlace({ campaignId, stepId, sequence: found.sequence, index: found.index, fitRunId: found.fitRunId }) }),
   };
+}
+
+type TakenAt = { campaignId: string; medium?: string; at: Date };
+
+/** The repeat nearest to a time, of the phase that it lies in, or that began last before it. */
+async function takenAt({ campaignId, medium, at }: TakenAt): Promise<{ sequence: number; index: number }> {
+  const found = await row<{ sequence: number; index: number }>(
+    `select p.sequence, r.idx as index
+       from (select step_id, sequence from phase where campaign_id = $1 and started_at is not null and ($2::text is null or medium = $2)
+              order by started_at <= $3 desc, abs(extract(epoch from started_at - $3)) limit 1) p
+       join lateral (select idx from reading where step_id = p.step_id order by abs(extract(epoch from at - $3)), idx limit 1) r on true`,
+    [campaignId, medium ?? null, at],
+  );
+  if (!found) throw notFound("repeat");
+  return found;
 }

@@ -16,6 +16,9 @@ export type ReadingsQuery = z.output<typeof readingsQuery>;
 export const sweepQuery = z.object({
   sequence: z.coerce.number().int().min(1).optional(),
   index: z.coerce.number().int().min(0).optional(),
+  /** In place of sequence and index: the repeat of a medium that was taken nearest to that time. */
+  medium: z.string().min(1).max(60).optional(),
+  at: instant.optional(),
   fitRunId: idSchema.optional(),
 });
 

@@ -12,6 +12,7 @@ import { campaignCode } from "@/lib/campaigns/code";
 import { formatCount } from "@/lib/format";
 import { DriftWords } from "./drift-words";
 import { panelsOf, phasesOf, referenceOf } from "./repeats-data";
+import { useOpenRepeat } from "./use-open-repeat";
 import { setPointOf, type View } from "./view";
 
 type RepeatsProps = {
@@ -39,6 +40,7 @@ export function Repeats({ campaign, view, set, onWindow, onWhole, companion }: R
   const strip = useQuery(stripOptions(campaign.id));
   const name = campaign.media.find((one) => one.medium === medium)?.name ?? medium;
   const isAir = medium === "air";
+  const openRepeat = useOpenRepeat(campaign.id, medium);
 
   const letterOf = useMemo(() => lettersBefore(strip.data, medium), [strip.data, medium]);
   const phases = useMemo(() => (f0.data ? phasesOf(f0.data, (phaseId) => letterOf.get(phaseId)) : []), [f0.data, letterOf]);
@@ -76,6 +78,7 @@ export function Repeats({ campaign, view, set, onWindow, onWhole, companion }: R
               closeGaps={!openGaps}
               onWindow={(a, b) => (whole && a === whole.from && b === whole.to ? onWhole() : onWindow(a, b))}
               whole={window ? whole : undefined}
+              onOpen={openRepeat}
             />
           ) : (
             !error && (f0.isPending || waits ? <Loading label="the repeats" height={460} /> : <Empty>{window ? `No repeat in ${name} lies in this stretch of time.` : `No repeat in ${name} has been fitted yet.`}</Empty>)

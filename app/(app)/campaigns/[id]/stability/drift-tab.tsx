@@ -8,6 +8,7 @@ import { formatCount, formatNumber, formatUncertain } from "@/lib/format";
 import type { DriftAnswer } from "@/lib/analysis/schema";
 import { useView } from "../use-view";
 import { phasesOf } from "../repeats-data";
+import { useOpenRepeat } from "../use-open-repeat";
 import type { AnalysisProps } from "./analysis-screen";
 import { ChoiceList, CompensationChoice, FitRunChoice, MediaChoice, QuantityChoice, SetPointChoice, TypedChoices } from "./choices";
 import { driftPanels, shownAs } from "./drift-data";
@@ -18,7 +19,8 @@ import { useDrift } from "./use-drift";
 export function DriftTab(props: AnalysisProps) {
   const { campaign, view, set } = props;
   const { onWindow, onWhole } = useView();
-  const { name, setPointC, drift: asked, series, temperature } = useDrift(props);
+  const { medium, name, setPointC, drift: asked, series, temperature } = useDrift(props);
+  const openRepeat = useOpenRepeat(campaign.id, medium);
   const drift = asked.error ? undefined : asked.data;
   const shown = shownAs(view.quantity, drift?.values ?? []);
   const phases = series.data ? phasesOf(series.data, () => undefined) : [];
@@ -30,7 +32,7 @@ export function DriftTab(props: AnalysisProps) {
     <>
       <Section
         head="Choose"
-        note="Phase values, bars k = 2; the line holds under correlated noise, its band is 95 %. Drag to zoom in; at the cursor + and − do."
+        note="Phase values, bars k = 2; the line holds under correlated noise, its band is 95 %. Drag to zoom in; at the cursor + and − do, and Enter opens the repeat."
         controls={
           <>
             <QuantityChoice view={view} set={set} />
@@ -58,6 +60,7 @@ export function DriftTab(props: AnalysisProps) {
               closeGaps={!view.openGaps && phases.length > 0}
               onWindow={(a, b) => (whole && a === whole.from && b === whole.to ? onWhole() : onWindow(a, b))}
               whole={view.window ? whole : undefined}
+              onOpen={openRepeat}
               sentence={drift.used ? `From ${drift.used}.` : undefined}
             />
           ) : (
