@@ -45,7 +45,7 @@ test("each call can be tried by hand, with its token and its body", () => {
   for (const { method, path, curl, who, body } of calls()) {
     expect(curl, path).toMatch(new RegExp(`^curl ${method === "GET" ? "" : `-X ${method} `}http\\S+`));
     expect(curl.includes("$TOKEN"), path).toBe(who !== "anybody");
-    expect(curl.includes(" -d '"), path).toBe(body !== undefined && body.examples.length > 0);
+    expect(/ -(d|F) '/.test(curl), path).toBe(body !== undefined && body.examples.length > 0);
     expect(curl, path).not.toContain("{id}");
   }
 });
