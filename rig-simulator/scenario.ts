@@ -148,6 +148,8 @@ const faults = z.strictObject({
   pump: z
     .array(z.strictObject({ ...atStep, kind: z.enum(["fill", "rinse", "drain", "dry"]).default("fill"), times: z.int().min(1).default(1), retry: z.boolean().default(false) }))
     .default([]),
+  /** The bath does not come to temperature. */
+  thermostat: z.array(z.strictObject({ ...atStep, times: z.int().min(1).default(1), retry: z.boolean().default(true) })).default([]),
   /** Chances per request. */
   network: z
     .strictObject({

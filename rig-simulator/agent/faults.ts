@@ -23,9 +23,17 @@ export function crashIfDue(scenario: Scenario, world: World, step: Step, index: 
 }
 
 /** The pump failure that is due at this step, counted. */
-export function pumpFailure(scenario: Scenario, world: World, step: Step): { retry: boolean } | undefined {
-  for (const [i, failure] of scenario.faults.pump.entries()) {
-    const name = `pump ${i}`;
+export const pumpFailure = ({ faults }: Scenario, world: World, step: Step): { retry: boolean } | undefined => dueFailure("pump", faults.pump, world, step);
+
+/** The same of the thermostat. */
+export const thermostatFailure = ({ faults }: Scenario, world: World, step: Step): { retry: boolean } | undefined =>
+  dueFailure("thermostat", faults.thermostat.map((failure) => ({ ...failure, kind: "settle" })), world, step);
+
+type Failure = AtStep & { times: number; retry: boolean };
+
+function dueFailure(what: string, failures: readonly Failure[], world: World, step: Step): { retry: boolean } | undefined {
+  for (const [i, failure] of failures.entries()) {
+    const name = `${what} ${i}`;
     const done = world.faultsDone[name] ?? 0;
     if (!matches(failure, step) || done >= failure.times) continue;
     world.faultsDone[name] = done + 1;

@@ -1,6 +1,6 @@
 import type { Done, DrainStep, DryStep, FailureCode, FillStep, Outcome, RinseStep, SettleStep } from "../contract";
 import { pumpingS, rinseOnceS, settleS, type World } from "../world";
-import { crashIfDue, pumpFailure } from "./faults";
+import { crashIfDue, pumpFailure, thermostatFailure } from "./faults";
 import { Interrupted, type Session } from "./session";
 
 type LiquidStep = FillStep | RinseStep | DrainStep | DryStep;
@@ -53,6 +53,11 @@ export async function settle(session: Session, step: SettleStep, start: World): 
   if (temperatureC < minTemperatureC || temperatureC > maxTemperatureC)
     return failed("thermostat", `The thermostat goes from ${minTemperatureC} to ${maxTemperatureC} °C, not to ${temperatureC} °C`, false);
 
+  const failure = thermostatFailure(rig.scenario, rig.world, step);
+  if (failure) {
+    rig.save();
+    return failed("thermostat", `The bath does not come to ${temperatureC} °C`, failure.retry);
+  }
   crashIfDue(rig.scenario, rig.world, step, 0);
   const seconds = settleS(start, step, rig.scenario);
   try {

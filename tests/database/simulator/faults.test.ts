@@ -2,11 +2,12 @@ import { afterAll, beforeAll, describe, expect, test } from "vitest";
 import { startFastPath } from "@/jobs/fast-path";
 import { row, rows, sequelize } from "@/lib/db";
 import { listener } from "@/lib/listener";
+import type { Definition } from "@/lib/protocol/schema";
 import { runAgent } from "@/rig-simulator/agent/run-agent";
 import { httpTransport, NoAnswer, type Request, type Transport } from "@/rig-simulator/agent/transport";
 import { memoryStore, Rig } from "@/rig-simulator/rig";
 import { serveAgentRoutes } from "./agent-routes";
-import { hasty, operator, restless, runCampaign, type Disturbance, type Left, type Place } from "./run-campaign";
+import { hasty, operator, restless, runCampaign, sweep, type Disturbance, type Left, type Place } from "./run-campaign";
 
 let server: Awaited<ReturnType<typeof serveAgentRoutes>>;
 let stopFastPath: () => Promise<void>;
@@ -133,6 +134,47 @@ describe("a disturbed run ends as the undisturbed one", { timeout: 90_000 }, () 
       },
     });
     expect(told.some((text) => text.includes("other-agent"))).toBe(true);
+  });
+});
+
+describe("what goes wrong at the rig itself", { timeout: 90_000 }, () => {
+  const badNetwork = { network: { dropRequest: 0.05, dropAnswer: 0.05, duplicate: 0.1, reorder: 0.1, delay: 0.05, delayMs: 20 } };
+
+  test("a bubble on the wire: seen in the repeats that it was there for, and the same on a bad network with a lost memory", async () => {
+    const scenario = { changes: { bubbles: [{ cycle: 2, repeats: 3, share: 0.05 }] } };
+    const quiet = await runCampaign(server.url, { scenario });
+    const inLiquid = (quiet.readings as { medium: string; cycle: number; idx: number; f0_hz: number }[]).filter(({ medium, cycle }) => medium === "sample" && cycle === 2);
+    const mean = (list: { f0_hz: number }[]) => list.reduce((sum, { f0_hz }) => sum + f0_hz, 0) / list.length;
+    const shift = mean(inLiquid.filter(({ idx }) => idx < 3)) / mean(inLiquid.filter(({ idx }) => idx >= 3)) - 1;
+    // Less liquid moves with the wire, so it is faster.
+    expect(shift).toBeGreaterThan(1e-3);
+    expect(await runCampaign(server.url, { scenario, faults: { ...badNetwork, crashes: [{ cycle: 2, kind: "fill" }, { cycle: 2, index: 2 }] }, rig: { repeatable: ["fill", "rinse", "drain", "dry"] } })).toEqual(quiet);
+  });
+
+  test("a thermostat that does not come to temperature, tried again, then held until a person lets it go on", async () => {
+    const protocol = [25, 30].flatMap((temperatureC, i): Definition["blocks"] => [
+      { id: `bath-${i}`, kind: "settle", temperatureC, toleranceC: 0.05, holdS: 60, timeoutS: 36_000 },
+      { id: `air-${i}`, kind: "measure", medium: "air", role: "reference", repeats: 8, discard: 0, pauseS: 2, sweep },
+    ]);
+    const quiet = await runCampaign(server.url, { protocol });
+    expect(quiet).toMatchObject({ state: "finished", phases: [{ n: 8 }, { n: 8 }] });
+    const thermostat = [{ sequence: 1, times: 1, retry: true }, { sequence: 4, times: 1, retry: false }];
+    expect(await runCampaign(server.url, { protocol, faults: { thermostat }, person: remember(operator) })).toEqual(quiet);
+    expect(await rows(`select id from hold where campaign_id = $1 and reason = 'failure'`, [campaignId])).toHaveLength(1);
+  });
+
+  test("a clock that is eight seconds ahead: people are told, and readings get the time at which they were taken", async () => {
+    const protocol: Definition["blocks"] = [{ id: "air", kind: "measure", medium: "air", role: "reference", repeats: 6, discard: 0, pauseS: 0.4, sweep: { ...sweep, dwell: { s: 0.002 } } }];
+    const quiet = await runCampaign(server.url, { protocol, clock: "real" });
+    const off = await runCampaign(server.url, { protocol, clock: "real", faults: { clockOffsetS: 8 }, person: remember() });
+    type Timed = { idx: number; role: string; taken_at: Date; at: Date; f0_hz: number; q: number };
+    const values = ({ readings }: Left) => (readings as Timed[]).map(({ role, idx, f0_hz, q }) => ({ role, idx, f0_hz, q }));
+    expect(values(off)).toEqual(values(quiet));
+    for (const { taken_at, at } of off.readings as Timed[]) expect(taken_at.getTime() - at.getTime()).toBeCloseTo(8000, -3);
+    for (const { taken_at, at } of quiet.readings as Timed[]) expect(Math.abs(taken_at.getTime() - at.getTime())).toBeLessThan(1000);
+    const alarms = await rows<{ value: number }>(`select a.value from alarm a join campaign c on c.rig_id = a.rig_id where c.id = $1 and a.kind = 'clock'`, [campaignId]);
+    expect(alarms).toHaveLength(1);
+    expect(alarms[0].value).toBeCloseTo(8, 0);
   });
 });
 

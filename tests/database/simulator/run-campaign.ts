@@ -24,7 +24,7 @@ import { aDefinition, buildProtocolVersion } from "../../factories/protocol";
 import { buildRig } from "../../factories/rig";
 import { buildSensor } from "../../factories/sensor";
 
-const sweep = { centre: "track" as const, span: { halfWidths: 8 }, points: 61, dwell: { ringDowns: 5.2 }, driveV: 0.5 };
+export const sweep = { centre: "track" as const, span: { halfWidths: 8 }, points: 61, dwell: { ringDowns: 5.2 }, driveV: 0.5 };
 const blocks: Definition["blocks"] = [
   {
     id: "cycles",
@@ -53,6 +53,10 @@ export type Disturbance = {
   rig?: object;
   scenario?: object;
   readout?: Definition["readout"];
+  /** In place of the three cycles of air and liquid. */
+  protocol?: Definition["blocks"];
+  /** `real`: rig and server keep the time of day, and measuring takes as long as it takes. */
+  clock?: "simulated" | "real";
   /** Is told the truth behind every reading. */
   onTruth?: (record: TruthRecord) => void;
   /** Faults of the way to the server that the scenario does not know. */
@@ -69,20 +73,21 @@ export type Left = { state: string; readings: object[]; phases: object[]; alarms
 /** Runs a seeded campaign of three cycles on a rig of its own to its end. */
 export async function runCampaign(
   url: string,
-  { faults = {}, rig: part = {}, scenario: replaced = {}, readout = "velocity", onTruth, network = (inner) => inner, beside, person }: Disturbance = {},
+  { faults = {}, rig: part = {}, scenario: replaced = {}, readout = "velocity", protocol = blocks, clock = "simulated", onTruth, network = (inner) => inner, beside, person }: Disturbance = {},
 ): Promise<Left> {
   const quick = loadScenario("quick");
   const scenario = scenarioSchema.parse({ ...quick, rig: { ...quick.rig, ...part }, sensor: { ...quick.sensor, readout }, changes, faults, ...replaced });
   const { f0Hz, q } = nominalInAir(scenario);
-  const rig = await buildRig({ clock: "simulated" });
+  const rig = await buildRig({ clock });
   const sensor = await buildSensor({ nominalF0Hz: f0Hz, nominalQ: q });
   const { token, hash, last4 } = newToken("agent");
   await AgentToken.create({ rigId: rig.id, name: "simulator", tokenHash: hash, last4, createdAt: now });
-  const version = await buildProtocolVersion({ definition: aDefinition({ blocks, limits, readout, baseline: { airReferences: 1 } }) });
+  const version = await buildProtocolVersion({ definition: aDefinition({ blocks: protocol, limits, readout, baseline: { airReferences: 1 } }) });
   await buildMount({ rigId: rig.id, sensorId: sensor.id });
   const campaign = await buildCampaign({ rigId: rig.id, sensorId: sensor.id, protocolVersionId: version.id, state: "queued" });
 
-  const simulated = new Rig({ scenario, seed: 5, speed: { kind: "fast" }, store: memoryStore(), clockStartMs: Date.parse("2026-01-05T03:00:00Z"), onTruth });
+  const time = clock === "real" ? { speed: { kind: "real" as const } } : { speed: { kind: "fast" as const }, clockStartMs: Date.parse("2026-01-05T03:00:00Z") };
+  const simulated = new Rig({ scenario, seed: 5, store: memoryStore(), onTruth, ...time });
   const place: Place = { url, token, campaignId: campaign.id, rigId: rig.id, simulated };
   const ending = new AbortController();
   const signal = AbortSignal.any([ending.signal, AbortSignal.timeout(60_000)]);
