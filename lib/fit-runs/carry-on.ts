@@ -3,7 +3,7 @@ import type { Transaction } from "sequelize";
 import { change, inTransaction, row, rows } from "@/lib/db";
 import { judgePhase } from "@/lib/limits/judge";
 import { notify } from "@/lib/notify";
-import { updateBaseline } from "@/lib/phases/baseline";
+import { IMPORTED_AIR_REFERENCES, updateBaseline } from "@/lib/phases/baseline";
 import { closePhase } from "@/lib/phases/close-phase";
 import { limitFacts } from "@/lib/phases/limit-facts";
 import type { Definition } from "@/lib/protocol/schema";
@@ -36,13 +36,13 @@ export async function carryOn({ fitRunId, now, hasTime }: CarryOn): Promise<bool
   }
 }
 
-type Next = { stepId: string; campaignId: string; definition: Definition };
+type Next = { stepId: string; campaignId: string; definition: Definition | null };
 
 const nextStep = (fitRunId: string): Promise<Next | undefined> =>
   row<Next>(
     `select p.step_id as "stepId", p.campaign_id as "campaignId", v.definition
        from fit_run run join phase p on p.campaign_id = run.campaign_id and p.closed_at is not null
-       join step s on s.id = p.step_id join protocol_version v on v.id = s.protocol_version_id
+       join step s on s.id = p.step_id left join protocol_version v on v.id = s.protocol_version_id
       where run.id = $1 and run.state = 'waiting'
         and not exists (select 1 from phase_summary where phase_id = p.id and fit_run_id = run.id)
       order by p.sequence limit 1`,
@@ -66,7 +66,8 @@ async function close(transaction: Transaction, { stepId, fitRunId, campaignId, d
   await takeUpPhase(transaction, { stepId, fitRunId, campaignId, definition, now });
 }
 
-type TakeUp = { stepId: string; fitRunId: string; campaignId: string; definition: Definition; now: Date };
+/** The definition is null for a phase that was imported. */
+type TakeUp = { stepId: string; fitRunId: string; campaignId: string; definition: Definition | null; now: Date };
 
 /** Makes a closed phase part of a fit run: what is left to fit, its value, the run's baseline, and limits that it breaks. The run's row is locked. */
 export async function takeUpPhase(transaction: Transaction, { stepId, fitRunId, campaignId, definition, now }: TakeUp): Promise<void> {
@@ -74,10 +75,10 @@ export async function takeUpPhase(transaction: Transaction, { stepId, fitRunId, 
   const phase = await closePhase(transaction, { stepId, fitRunId, now });
   if (!phase || phase.columns.n === 0) return;
   const { mountId, setPointC, readout, phaseId, cycle } = phase;
-  const { airReferences } = definition.baseline;
-  const present = mountId ? await updateBaseline(transaction, { campaignId, mountId, setPointC, readout, fitRunId }, { airReferences, now }) : undefined;
+  const airReferences = definition?.baseline.airReferences ?? IMPORTED_AIR_REFERENCES;
+  const present = mountId || !definition ? await updateBaseline(transaction, { campaignId, mountId, setPointC, readout, fitRunId }, { airReferences, now }) : undefined;
   const facts = await limitFacts(transaction, { campaignId, phase, baseline: present });
-  const found = judgePhase(definition.limits, facts)
+  const found = judgePhase(definition?.limits ?? [], facts)
     .filter(({ state }) => state === "breach")
     .map(({ limitId, kind, value, limit, unit, text }): FoundOnRefit => ({ limitId, kind, phaseId, stepId, cycle, value, limit, unit, text }));
   for (const one of found) {

@@ -45,8 +45,8 @@ type About = { fitRunId: string; campaignId: string; now: Date };
 
 /** Phases that closed since the run was made: a few, while the campaign goes on. */
 async function catchUp(transaction: Transaction, { fitRunId, campaignId, now }: About): Promise<void> {
-  const since = await rows<{ stepId: string; definition: Definition }>(
-    `select p.step_id as "stepId", v.definition from phase p join step s on s.id = p.step_id join protocol_version v on v.id = s.protocol_version_id
+  const since = await rows<{ stepId: string; definition: Definition | null }>(
+    `select p.step_id as "stepId", v.definition from phase p join step s on s.id = p.step_id left join protocol_version v on v.id = s.protocol_version_id
       where p.campaign_id = $2 and p.closed_at is not null and not exists (select 1 from phase_summary where phase_id = p.id and fit_run_id = $1)
       order by p.sequence`,
     [fitRunId, campaignId],

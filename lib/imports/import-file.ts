@@ -5,7 +5,7 @@ import { refuse, RowErrors } from "@/lib/imports/refusal";
 import { orderByTime, splitPhases, type PhaseRows } from "@/lib/imports/split-phases";
 import { writeCampaign, type CampaignToWrite } from "@/lib/imports/write-campaign";
 import { ReadingsWriter, type Place } from "@/lib/imports/write-readings";
-import { updateBaseline } from "@/lib/phases/baseline";
+import { IMPORTED_AIR_REFERENCES, updateBaseline } from "@/lib/phases/baseline";
 import { closeMeasured } from "@/lib/phases/close-phase";
 
 export type Progress = { rowsRead: number; rowsStored: number; phases: number; readBytes: number };
@@ -24,7 +24,6 @@ export type Imported = { readings: number; phases: number; rows: number; ignored
 
 /** A phase costs a few milliseconds to close: a cycle column that counts rows must not keep a worker for hours. */
 const MOST_PHASES = 20_000;
-const AIR_REFERENCES = 3;
 
 /**
  * Imports a stored file as a finished campaign, all of it or nothing. It is gone through twice: to find the phases, then to check every
@@ -73,9 +72,9 @@ export async function importFile(transaction: Transaction, { file, campaign, mos
     const { sum, n } = writer.pressures[i];
     const closed = await closeMeasured(transaction, { stepId, measured: { columns: writer.columns[i], pressurePa: n > 0 ? sum / n : null }, now });
     const before = closed && references.get(closed.setPointC);
-    if (closed?.role === "reference" && (before ?? 0) < AIR_REFERENCES) {
+    if (closed?.role === "reference" && (before ?? 0) < IMPORTED_AIR_REFERENCES) {
       const { mountId, setPointC, readout } = closed;
-      const baseline = await updateBaseline(transaction, { campaignId: campaign.campaignId, mountId, setPointC, readout, fitRunId }, { airReferences: AIR_REFERENCES, now });
+      const baseline = await updateBaseline(transaction, { campaignId: campaign.campaignId, mountId, setPointC, readout, fitRunId }, { airReferences: IMPORTED_AIR_REFERENCES, now });
       references.set(setPointC, baseline?.n ?? 0);
     }
     await tell({ rowsStored: rows, phases: i + 1 });

@@ -10,6 +10,9 @@ export type BaselineKey = {
   fitRunId: string;
 };
 
+/** Of a campaign without a protocol, which would say how many. */
+export const IMPORTED_AIR_REFERENCES = 3;
+
 export type Baseline = { f0Hz: number; q: number; n: number; complete: boolean };
 
 /**

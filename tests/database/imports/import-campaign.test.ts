@@ -9,12 +9,16 @@ import { findPhases } from "@/lib/campaigns/phases";
 import { findCampaigns, getCampaign } from "@/lib/campaigns/read";
 import { readStrip } from "@/lib/campaigns/strip";
 import { rows, sequelize } from "@/lib/db";
+import { carryOn } from "@/lib/fit-runs/carry-on";
+import { refitBody } from "@/lib/fit-runs/schema";
+import { startRefit } from "@/lib/fit-runs/start-refit";
 import { meanAndSd } from "@/lib/numerics/statistics/mean-and-sd";
 import { readSweep } from "@/lib/readings/read-sweep";
 import { readingsQuery } from "@/lib/readings/schema";
 import { streamReadings } from "@/lib/readings/stream";
 import { auditedActions } from "../../factories/audit";
 import { now } from "../../factories/now";
+import { actor } from "../../factories/person";
 import { aCampaign, csvOf, upload } from "../../factories/upload";
 
 afterAll(() => sequelize.close());
@@ -78,6 +82,15 @@ describe("an imported campaign", () => {
     const item = items.find((one) => one.id === id);
     const air = [0, 1, 2, 3, 4, 5].map((cycle) => meanAndSd(Float64Array.from(given.slice(40 * cycle, 40 * cycle + 20), ({ f0Hz }) => f0Hz)).mean);
     expect(item?.air?.shiftMHz).toBeCloseTo(1e3 * (air[5] - (air[0] + air[1] + air[2]) / 3), 6);
+  });
+
+  test("can be fitted again, beside what there is, with a baseline of its own", async () => {
+    const id = await imported();
+    const { id: fitRunId } = await startRefit({ by: await actor("researcher"), campaignId: id, body: refitBody.parse({ why: "To see", offsetSlope: false }), now });
+    expect(await carryOn({ fitRunId, now, hasTime: () => true })).toBe(false);
+    const [own, again] = await Promise.all([findPhases({ campaignId: id, query: phaseQuery.parse({}) }), findPhases({ campaignId: id, query: phaseQuery.parse({ fitRunId }) })]);
+    expect(again.items.map(({ f0 }) => f0)).toEqual(own.items.map(({ f0 }) => f0));
+    expect(await rows(`select n from baseline where fit_run_id = $1`, [fitRunId])).toEqual([{ n: 3 }]);
   });
 
   test("has nothing that only a rig can have: the database refuses a step of a protocol without a rig", async () => {
