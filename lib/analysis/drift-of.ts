@@ -20,7 +20,7 @@ export function driftOf({ phases, query: { quantity, compensate } }: { phases: r
   const unit = quantity === "f0" ? "Hz" : "1";
   const measured = valuesOf(phases, quantity);
   const newestMount = measured[measured.length - 1]?.mountId;
-  const wanted = compensate === "temperature" ? temperatureOf(ownOf(measured, newestMount)) : undefined;
+  const wanted = compensate === "temperature" ? temperatureOf(withTemperature(measured)) : undefined;
   const { values, compensated } = wanted?.fit ? compensatedOf(measured, wanted) : { values: measured, compensated: undefined };
 
   const ofMount = values.filter(({ mountId }) => mountId === newestMount);
@@ -72,10 +72,10 @@ function valuesOf(phases: readonly SelectedPhase[], quantity: DriftQuery["quanti
   });
 }
 
-/** Values of one mount that have a temperature, by rising time. */
-function ownOf(values: readonly Value[], mount: string | null | undefined) {
-  const own = values.flatMap(({ temperatureC, time, ...rest }) => (typeof temperatureC === "number" && rest.mountId === mount ? [{ ...rest, at: time, temperatureC }] : []));
-  return own.filter(({ at }, i) => i === 0 || at > own[i - 1].at);
+/** Values that have a temperature, by rising time; of all mounts, as the coefficient is the sensor's and each mount has a level of its own. */
+function withTemperature(values: readonly Value[]) {
+  const known = values.flatMap(({ temperatureC, time, ...rest }) => (typeof temperatureC === "number" ? [{ ...rest, at: time, temperatureC }] : []));
+  return known.filter(({ at }, i) => i === 0 || at > known[i - 1].at);
 }
 
 /** All values that have a temperature, brought to the reference, with what that adds to their uncertainty; the others are left out. */

@@ -54,18 +54,33 @@ export async function readSweep({ campaignId, medium, at: taken, ...asked }: { c
     [campaignId, sequence ?? null, index ?? null, fitRunId ?? null],
   );
   if (!found) throw notFound("sweep");
-  const { stepId, settings, at, flags, kind, amplitudeV, noiseV, startHz: _start, stopHz: _stop, data: _data, ...about } = found;
+  const { stepId, settings, at, flags, kind, amplitudeV, noiseV, medium: of, cycle, points, f0Hz, f0StdHz, q, qStd, dwellS, driveV, durationS, temperatureC, pressurePa, humidityPercent } = found;
   const readout = settings?.readout ?? found.readout ?? "velocity";
   const named = sequence !== undefined && index !== undefined;
   return {
-    ...about,
+    sequence: found.sequence,
+    index: found.index,
+    medium: of,
+    cycle,
+    points,
+    f0Hz,
+    f0StdHz,
+    q,
+    qStd,
+    fitRunId: found.fitRunId,
+    dwellS,
+    driveV,
+    durationS,
+    temperatureC,
+    pressurePa,
+    humidityPercent,
     readout,
     takenAt: at.toISOString(),
     flags: flagNames(flags),
     form: FORMS[kind as keyof typeof FORMS],
     snr: amplitudeV !== null && noiseV ? amplitudeV / noiseV : null,
     noiseV,
-    ...describeSweep(decodeSweep(found), { readout, offsetSlope: settings?.offsetSlope ?? true, dwellS: found.dwellS ?? undefined }),
+    ...describeSweep(decodeSweep(found), { readout, offsetSlope: settings?.offsetSlope ?? true, dwellS: dwellS ?? undefined }),
     ...(named && { place: await readSweepPlace({ campaignId, stepId, sequence: found.sequence, index: found.index, fitRunId: found.fitRunId }) }),
   };
 }

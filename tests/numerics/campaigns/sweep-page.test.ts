@@ -1,6 +1,6 @@
 import { describe, expect, test } from "vitest";
 import { flagWords, wellWords } from "@/app/(app)/campaigns/[id]/readings/[sequence]/[index]/flag-words";
-import { halfPowerPoints, sweepViews, unitFor } from "@/app/(app)/campaigns/[id]/readings/[sequence]/[index]/sweep-views";
+import { halfPowerPoints, resonanceArc, sweepViews, unitFor } from "@/app/(app)/campaigns/[id]/readings/[sequence]/[index]/sweep-views";
 import { evaluateResonance } from "@/lib/numerics/resonance/model";
 import { FLAGS } from "@/lib/numerics/resonance/flags";
 import { linearGrid, RESONANCE_PARAMETERS } from "@/lib/numerics/resonance/types";
@@ -30,6 +30,13 @@ describe("what the plots of a sweep show", () => {
     for (const { re: x, im: y } of [above, below]) expect(Math.hypot(x, y)).toBeCloseTo(1 / Math.SQRT2, 12);
     const after = evaluateResonance(Float64Array.of(truth.f0Hz * (Math.sqrt(1 + 1 / (4 * truth.q ** 2)) + 1 / (2 * truth.q))), { ...truth, b: undefined, c: undefined });
     expect(above).toMatchObject({ re: expect.closeTo(after.re[0], 9), im: expect.closeTo(after.im[0], 9) });
+  });
+
+  test("the arc lies on the circle and begins and ends where the fitted curve does", () => {
+    const { phase, plane } = sweepViews(curve, parameters);
+    const arc = resonanceArc(parameters, phase?.fitted ?? []);
+    for (const { x, y } of arc) expect(Math.hypot(x - 0.3, y + 0.4)).toBeCloseTo(0.5, 9);
+    for (const [end, at] of [[arc[0], 0], [arc[arc.length - 1], 400]] as const) expect(end).toEqual({ x: expect.closeTo(plane?.fitted.re[at] ?? NaN, 9), y: expect.closeTo(plane?.fitted.im[at] ?? NaN, 9) });
   });
 
   test("a magnitude has residuals only, a sweep without a fit nothing", () => {

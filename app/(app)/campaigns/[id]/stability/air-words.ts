@@ -11,7 +11,7 @@ export function airWords({ verdict, growth, steps, n }: AirReturnAnswer): string
     case "too few":
       return `${n === 0 ? "No air reference has" : `${formatCount(n)} air ${plural(n, "reference has", "references have")}`} followed an ordinary clean; ten are needed to tell residue from ageing.`;
     case "none":
-      return "The air reference comes back: nothing grows beyond the noise.";
+      return "Nothing that keeps the air reference away can be told from its noise.";
     case "residue":
       return `Residue builds up: the air reference moves by ${total}, and loss comes with it.`;
     case "ageing":
@@ -33,7 +33,7 @@ export function growthWords({ growth, cleanedAgain, used }: AirReturnAnswer): st
   }
   const { times, takesOff, share, shareU } = cleanedAgain;
   if (takesOff === "untried") parts.push("Cleaning once more was never tried; it would help to tell.");
-  else parts.push(`Cleaned again ${formatCount(times)} ${plural(times, "time")}: it ${takesOff === "yes" ? "takes off" : takesOff === "no" ? "does not take off" : "may or may not take off"} what had grown${share !== null && shareU !== null ? `, a share of ${formatUncertain(share, shareU)}` : ""}.`);
+  else parts.push(`Cleaned again ${times === 1 ? "once" : `${formatCount(times)} times`}: it ${takesOff === "yes" ? "takes off" : takesOff === "no" ? "does not take off" : "may or may not take off"} what had grown${share !== null && shareU !== null ? `, a share of ${formatUncertain(share, shareU)}` : ""}.`);
   return parts.join(" ");
 }
 

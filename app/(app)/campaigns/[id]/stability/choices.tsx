@@ -143,7 +143,7 @@ export function TypedChoices({ view, set, beside = false }: Pick<AnalysisProps, 
   return (
     <>
       <Typed key={view.cycles} label="Cycles" hint="all, or 1-20" value={view.cycles ?? ""} valid={(text) => /^\d{1,7}(-\d{1,7})?$/.test(text)} onDone={(text) => set({ cycles: text || null })} />
-      {beside && <Typed key={besideText} label="Another campaign beside it" hint="C-102, or C-102:W for its medium W" value={besideText} valid={(text) => campaignIdOf(text.split(":")[0]) !== undefined} onDone={(text) => set({ with: text ? text.replace(/^(\d)/, "C-$1") : null })} />}
+      {beside && <Typed key={besideText} label="Another campaign beside it" hint="C-102 or C-102:W" value={besideText} valid={(text) => campaignIdOf(text.split(":")[0]) !== undefined} onDone={(text) => set({ with: text ? text.replace(/^(\d)/, "C-$1") : null })} />}
     </>
   );
 }
@@ -156,7 +156,7 @@ function Typed({ label, hint, value, valid, onDone }: TypedProps) {
   const wrong = given !== "" && !valid(given);
   const done = () => !wrong && given !== value && onDone(given);
   return (
-    <label className="mt-3 block">
+    <label className="my-3 block">
       <span className="choices-head block">{label}</span>
       <input className="control mt-1 w-full" value={text} placeholder={hint} aria-invalid={wrong || undefined} onChange={(event) => setText(event.target.value)} onBlur={done} onKeyDown={(event) => event.key === "Enter" && done()} />
       {wrong && <span className="small">Write {hint}.</span>}

@@ -18,17 +18,29 @@ export function lineAt({ slopePerDay, intercept, from }: DriftAnswer, at: number
   return slopePerDay === null || intercept === null || from === null ? undefined : intercept + (slopePerDay * (at - Date.parse(from))) / DAY_MS;
 }
 
-type Input = { name: string; drift: DriftAnswer; temperature: SeriesAnswer | undefined; phases: readonly AxisPhase[]; shown: Shown };
+type Input = { name: string; drift: DriftAnswer; series: SeriesAnswer | undefined; temperature: SeriesAnswer | undefined; phases: readonly AxisPhase[]; shown: Shown };
+
+/** A phase value stands at the middle of the repeats that made it; where these are not known, at the phase's beginning. */
+export function middlesOf(series: SeriesAnswer | undefined): ReadonlyMap<string, string> {
+  const spans = new Map<string, { from: number; to: number }>();
+  for (const { phaseId, from, to } of series?.buckets ?? []) {
+    const span = spans.get(phaseId);
+    if (span) span.to = Date.parse(to);
+    else spans.set(phaseId, { from: Date.parse(from), to: Date.parse(to) });
+  }
+  return new Map([...spans].map(([phaseId, { from, to }]) => [phaseId, new Date((from + to) / 2).toISOString()]));
+}
 
 /** Phase values with their drift line and steps, what is left about the line, and the cell's temperature: one time base. */
-export function driftPanels({ name, drift, temperature, phases, shown }: Input): TimePanel[] {
+export function driftPanels({ name, drift, series, temperature, phases, shown }: Input): TimePanel[] {
   const { symbol, sub, scale, unit, reference } = shown;
   const shift = (value: number) => (value - reference) * scale;
   const start = drift.from === null ? Infinity : Date.parse(drift.from);
-  const points = drift.values.map(({ at, value, u }): SeriesPoint => ({ at, value: shift(value), u: (u ?? 0) * scale, left: Date.parse(at) < start }));
-  const residuals = drift.values.flatMap(({ at, value, u }): SeriesPoint[] => {
+  const middles = middlesOf(series);
+  const points = drift.values.map(({ at, value, u, phaseId }): SeriesPoint => ({ at: middles.get(phaseId) ?? at, value: shift(value), u: (u ?? 0) * scale, left: Date.parse(at) < start }));
+  const residuals = drift.values.flatMap(({ at, value, u, phaseId }): SeriesPoint[] => {
     const line = lineAt(drift, Date.parse(at));
-    return line === undefined || Date.parse(at) < start ? [] : [{ at, value: (value - line) * scale, u: (u ?? 0) * scale }];
+    return line === undefined || Date.parse(at) < start ? [] : [{ at: middles.get(phaseId) ?? at, value: (value - line) * scale, u: (u ?? 0) * scale }];
   });
   const model: ModelPoint[] | undefined = driftLine(drift, phases, shift);
   const less = `${formatNumber(reference, { decimals: symbol === "f" ? 4 : 1 })}${unit ? "\u00a0Hz" : ""}`;

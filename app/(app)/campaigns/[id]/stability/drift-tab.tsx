@@ -52,7 +52,7 @@ export function DriftTab(props: AnalysisProps) {
             <TimeSeriesChart
               label={`Phase values of ${code} in ${name} against time`}
               file={`${code}-drift-${view.quantity}`}
-              panels={driftPanels({ name, drift, temperature: temperature.data, phases, shown })}
+              panels={driftPanels({ name, drift, series: series.data, temperature: temperature.data, phases, shown })}
               from={from}
               to={to}
               zone={campaign.timeZone}

@@ -1,15 +1,14 @@
 import type { DriftAnswer } from "@/lib/analysis/schema";
-import { formatNumber, formatUncertain, NO_VALUE } from "@/lib/format";
+import { formatNumber, formatUncertain, NO_VALUE, uncertaintyDecimals } from "@/lib/format";
 import { formatDayTime, formatDuration } from "@/lib/format-time";
 import type { Shown } from "./drift-data";
 
 type TableProps = { drift: DriftAnswer; shown: Shown };
 
-const inThree = (value: number) => formatNumber(Number(value.toPrecision(3)), { signed: true });
-
 /** The slope to quote, and the ordinary and the robust one beside it. */
 export function SlopeTable({ drift, shown: { scale, unit } }: TableProps) {
   const { slopePerDay, u, lower, upper, leastSquares, theilSen, alpha } = drift;
+  const inThree = (value: number) => formatNumber(value, { decimals: u !== null && u > 0 ? Math.max(0, uncertaintyDecimals(u * scale, 2)) : 3, signed: true });
   const rows = [
     { name: "Generalised least squares", slope: slopePerDay, u, lower, upper, note: alpha == null ? "" : `noise exponent ${formatNumber(alpha, { decimals: 1 })}` },
     ...(leastSquares ? [{ name: "Ordinary least squares", slope: leastSquares.slopePerDay, u: leastSquares.u, lower: leastSquares.lower, upper: leastSquares.upper, note: "white noise assumed" }] : []),

@@ -4,19 +4,19 @@ import type { DeviationCurve, DeviationPoint } from "@/components/charts/deviati
 import { quantityText, type PlotQuantity } from "@/components/charts/plot-quantity";
 import { saveText, tableAsCsv } from "@/components/charts/save";
 import { Button } from "@/components/ui/button";
-import { PowerOfTen } from "@/components/ui/quantity";
-import { formatCount, formatNumber } from "@/lib/format";
+import { PowerOfTen, Symbol } from "@/components/ui/quantity";
+import { capitalised, formatCount, formatNumber } from "@/lib/format";
 import { formatDuration } from "@/lib/format-time";
 
 type StabilityNumbersProps = { curves: readonly DeviationCurve[]; band: string; file: string; quantity: PlotQuantity };
 
 const six = (value: number) => formatNumber(Number(value.toPrecision(6)));
 
-/** One row an averaging time, one group of columns a curve; from phase to phase below. */
+/** A group of columns a curve, by its own rising averaging times; from phase to phase below. */
 export function StabilityNumbers({ curves, band, file, quantity }: StabilityNumbersProps) {
   const parts = [
-    { head: "within phases", of: (curve: DeviationCurve) => curve.within },
-    { head: "phase to phase", of: (curve: DeviationCurve) => curve.across ?? [] },
+    { head: "Within phases", of: (curve: DeviationCurve) => curve.within },
+    { head: "From phase to phase", of: (curve: DeviationCurve) => curve.across ?? [] },
   ];
   const save = () => saveText(`${file}.csv`, "text/csv", tableAsCsv(asTable(curves, band, quantity)));
   return (
@@ -24,30 +24,27 @@ export function StabilityNumbers({ curves, band, file, quantity }: StabilityNumb
       <div className="table-box">
         <table className="data-table" aria-label="Deviation by averaging time">
           <thead>
+            <tr>{curves.map(({ id, label }) => <th key={id} colSpan={5} scope="colgroup"><b>{capitalised(label)}</b></th>)}</tr>
             <tr>
-              <th />
-              {curves.map(({ id, label }) => <th key={id} colSpan={4} scope="colgroup"><b>{label}</b></th>)}
-            </tr>
-            <tr>
-              <th scope="col">τ / s</th>
               {curves.flatMap(({ id }) => [
+                <th key={`${id}-t`} scope="col">τ / s</th>,
                 <th key={`${id}-n`} scope="col" className="right">Terms</th>,
-                <th key={`${id}-d`} scope="col" className="right">{quantityText(quantity)}</th>,
+                <th key={`${id}-d`} scope="col" className="right">{quantity.words} {quantity.symbol && <Symbol name={quantity.symbol} sub={quantity.sub} />}{quantity.unit && ` / ${quantity.unit}`}</th>,
                 <th key={`${id}-b`} scope="col" className="right">{band}</th>,
                 <th key={`${id}-k`} scope="col">Noise</th>,
               ])}
             </tr>
           </thead>
-          {parts.map(({ head, of }) => (
-            <tbody key={head}>
-              {timesOf(curves.flatMap(of)).map((tau, i) => (
-                <tr key={tau}>
-                  <td className="num whitespace-nowrap">{six(tau)}&ensp;<span className="text-ink2">{formatDuration(tau)}{i === 0 && head !== "within phases" && `, ${head}`}</span></td>
-                  {curves.flatMap((curve) => cellsOf(curve.id, of(curve).find((point) => point.tau === tau)))}
-                </tr>
-              ))}
-            </tbody>
-          ))}
+          {parts.map(({ head, of }) => {
+            const rows = curves.reduce((most, curve) => Math.max(most, of(curve).length), 0);
+            if (rows === 0) return null;
+            return (
+              <tbody key={head}>
+                <tr><th scope="rowgroup" colSpan={5 * curves.length}>{head}</th></tr>
+                {Array.from({ length: rows }, (_, i) => <tr key={i}>{curves.flatMap((curve) => cellsOf(curve.id, of(curve)[i]))}</tr>)}
+              </tbody>
+            );
+          })}
         </table>
       </div>
       <div className="table-foot"><Button small onClick={save}>CSV</Button></div>
@@ -55,12 +52,11 @@ export function StabilityNumbers({ curves, band, file, quantity }: StabilityNumb
   );
 }
 
-const timesOf = (points: readonly DeviationPoint[]): number[] => [...new Set(points.map(({ tau }) => tau))].sort((a, b) => a - b);
-
 function cellsOf(id: string, point: DeviationPoint | undefined) {
-  if (!point) return ["n", "d", "b", "k"].map((cell) => <td key={`${id}-${cell}`} />);
-  const { n, deviation, low, high, noise, assumed } = point;
+  if (!point) return ["t", "n", "d", "b", "k"].map((cell) => <td key={`${id}-${cell}`} />);
+  const { tau, n, deviation, low, high, noise, assumed } = point;
   return [
+    <td key={`${id}-t`} className="num whitespace-nowrap">{six(tau)}&ensp;<span className="text-ink2">{formatDuration(tau)}</span></td>,
     <td key={`${id}-n`} className="right num">{formatCount(n)}</td>,
     <td key={`${id}-d`} className="right num whitespace-nowrap"><PowerOfTen value={deviation} decimals={2} /></td>,
     <td key={`${id}-b`} className="right num whitespace-nowrap">{bandText(deviation, low, high)}</td>,

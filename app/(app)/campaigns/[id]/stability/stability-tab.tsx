@@ -2,7 +2,7 @@
 
 import { keepPreviousData, useQueries, useQuery } from "@tanstack/react-query";
 import { DeviationChart } from "@/components/charts/deviation-chart";
-import { Section } from "@/components/ui/page";
+import { Head, Section } from "@/components/ui/page";
 import { Empty, Loading, Problem } from "@/components/ui/states";
 import { stabilityWords } from "@/lib/analysis/stability-words";
 import { campaignOptions, stabilityOptions } from "@/lib/campaigns/client";
@@ -48,6 +48,7 @@ export function StabilityTab({ campaign, view, set }: AnalysisProps) {
   const inHz = normalise === "absolute" && quantity === "f0";
   const said = statistic === "tdev" ? undefined : media.flatMap(({ medium, name }, i) => stabilityWords({ name: medium === "air" ? "air" : name, within: insideData[i]?.points ?? [], across: betweenData[i]?.points ?? [], unit: inHz ? "Hz" : "" }) ?? [])[0];
   const { label, quantity: axis } = STATISTICS[statistic];
+  const shownAxis = inHz ? { ...axis, sub: statistic === "tdev" ? axis.sub : undefined, unit: statistic === "tdev" ? "Hz\u00a0s" : "Hz" } : axis;
   const code = campaignCode(campaign.id);
   const band = `${Math.round(Number(confidence) * 100)} %`;
   const named = media.map(({ medium, name }, i) => ({ id: medium, name: medium === "air" ? "Air" : name, within: insideData[i], across: betweenData[i] }));
@@ -76,7 +77,7 @@ export function StabilityTab({ campaign, view, set }: AnalysisProps) {
               label={`${capitalised(label)} of ${quantity === "f0" ? "f0" : "Q"}, ${code}`}
               file={`${code}-${statistic}-${quantity}`}
               curves={curves}
-              quantity={inHz ? { ...axis, sub: statistic === "tdev" ? axis.sub : undefined, unit: statistic === "tdev" ? "Hz s" : "Hz" } : axis}
+              quantity={shownAxis}
               band={band}
               sentence={`${band} bands by chi-squared with the noise of each averaging time; dotted: slopes of the noise types. Within phases no term reaches across a hole.`}
             />
@@ -85,13 +86,16 @@ export function StabilityTab({ campaign, view, set }: AnalysisProps) {
           ) : (
             failed.length === 0 && <Empty>A phase needs at least three repeats before its stability can be told.</Empty>
           )}
+          {curves.length > 0 && (
+            <div className="mt-7">
+              <Head remark="an asterisk: fewer than 30 averages, noise from the last stretch that had them, or assumed">Numbers</Head>
+              <StabilityNumbers curves={curves} band={band} file={`${code}-${statistic}-${quantity}-numbers`} quantity={shownAxis} />
+            </div>
+          )}
         </div>
       </Section>
       {curves.length > 0 && (
         <>
-          <Section head="Numbers" note="The same as a table. An asterisk: fewer than 30 averages, noise taken from the last stretch that had them, or assumed.">
-            <StabilityNumbers curves={curves} band={band} file={`${code}-${statistic}-${quantity}-numbers`} quantity={axis} />
-          </Section>
           <Section head="Noise" note="Parts of the overlapping Allan variance, fitted together, none below nothing, with standard uncertainties.">
             <NoiseTable curves={all} unit={inHz ? "Hz" : ""} />
           </Section>

@@ -8,7 +8,7 @@ import { Head, Section } from "@/components/ui/page";
 import { F0 } from "@/components/ui/quantity";
 import { Empty } from "@/components/ui/states";
 import type { SweepAnswer } from "@/lib/readings/schema";
-import { halfPowerPoints, sweepViews, unitFor, type SweepViews } from "./sweep-views";
+import { halfPowerPoints, resonanceArc, sweepViews, unitFor, type SweepViews } from "./sweep-views";
 
 type SweepAndFitProps = { sweep: SweepAnswer; code: string; name: string };
 
@@ -66,7 +66,7 @@ export function SweepAndFit({ sweep, code, name }: SweepAndFitProps) {
               file={`${file}-plane`}
               x={{ words: "in phase", unit: "V" }}
               y={{ words: "quadrature", unit: "V" }}
-              series={planeSeries(plane, readout === "velocity" ? halfPowerPoints(parameters) : [])}
+              series={planeSeries(plane, readout === "velocity" && phase ? { marks: halfPowerPoints(parameters), arc: resonanceArc(parameters, phase.fitted) } : { marks: [] })}
               equal
             />
           </div>
@@ -76,10 +76,12 @@ export function SweepAndFit({ sweep, code, name }: SweepAndFitProps) {
   );
 }
 
-function planeSeries({ measured, fitted }: NonNullable<SweepViews["plane"]>, marks: ReturnType<typeof halfPowerPoints>): XySeries[] {
+type Drawn = { marks: ReturnType<typeof halfPowerPoints>; arc?: ReturnType<typeof resonanceArc> };
+
+function planeSeries({ measured, fitted }: NonNullable<SweepViews["plane"]>, { marks, arc }: Drawn): XySeries[] {
   return [
     { id: "measured", label: "measured", pen: "points", points: measured.re.map((x, i) => ({ x, y: measured.im[i] })) },
-    { id: "fit", label: "fit", pen: "ink", line: fitted.re.map((x, i) => ({ x, y: fitted.im[i] })) },
+    { id: "fit", label: "fit", pen: "ink", line: arc ?? fitted.re.map((x, i) => ({ x, y: fitted.im[i] })) },
     { id: "marks", label: "f₀ and half power", pen: "ink", points: marks.map(({ name, re, im }) => ({ x: re, y: im, hollow: true, name })) },
   ];
 }

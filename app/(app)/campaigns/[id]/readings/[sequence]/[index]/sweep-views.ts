@@ -39,6 +39,20 @@ export function sweepViews(curve: Curve, parameters: Parameters): SweepViews {
 
 const less = (one: readonly number[], other: readonly number[]) => one.map((value, i) => value - other[i]);
 
+const ARC_POINTS = 120;
+
+/** The resonance circle of a velocity readout between the phases of the fitted curve's ends, V: smooth however few points the sweep has. */
+export function resonanceArc(parameters: Parameters, fittedPhase: readonly number[]): { x: number; y: number }[] {
+  const of = (name: Parameters[number]["name"]) => parameters.find((parameter) => parameter.name === name)?.value ?? NaN;
+  const [re, im] = [of("aRe"), of("aIm")];
+  const [first = 0, last = 0] = [fittedPhase[0], fittedPhase[fittedPhase.length - 1]];
+  return Array.from({ length: ARC_POINTS + 1 }, (_, k) => {
+    const turn = ((first + ((last - first) * k) / ARC_POINTS) * Math.PI) / 180;
+    const [c, s] = [Math.cos(turn) ** 2, Math.cos(turn) * Math.sin(turn)];
+    return { x: re * c - im * s, y: re * s + im * c };
+  });
+}
+
 /** Place of the resonance term at f0 and at the two half-power points, without offset, V; of a velocity readout. */
 export function halfPowerPoints(parameters: Parameters): { name: string; re: number; im: number }[] {
   const of = (name: Parameters[number]["name"]) => parameters.find((parameter) => parameter.name === name)?.value;
