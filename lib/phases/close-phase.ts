@@ -20,7 +20,12 @@ export type ClosedPhase = {
 };
 
 /** The repeats of a phase with their fits, and the mean pressure. */
-export type Measured = { columns: PhaseColumns; pressurePa: number | null };
+export type Measured = {
+  columns: PhaseColumns;
+  pressurePa: number | null;
+  /** Standard errors of Q, repeat by repeat, where the fits gave them: a phase of one repeat has no other uncertainty. */
+  qStd?: Float64Array;
+};
 
 type PhaseRow = Omit<ClosedPhase, "columns" | "values"> & {
   stepId: string;
@@ -76,16 +81,16 @@ type ValuesIf = { stepId: string; fitRunId?: string; /** Repeats that people wou
 export async function valuesIf({ stepId, fitRunId, excluded }: ValuesIf): Promise<{ columns: PhaseColumns; values: PhaseSummaryValues } | undefined> {
   const phase = await row<PhaseRow>(PHASE, [stepId, fitRunId ?? null]);
   if (!phase) return undefined;
-  const { columns } = await readColumns(undefined, phase);
+  const { columns, qStd } = await readColumns(undefined, phase);
   markLeftOut(columns, { discard: phase.discard, excluded });
-  const summary = summarise(columns, { medianR1: await medianR1(undefined, phase) });
+  const summary = summarise(columns, { qStd, medianR1: await medianR1(undefined, phase) });
   return { columns, values: isWithoutValue(phase, summary) ? withoutValue(summary) : summary };
 }
 
-async function close(transaction: Transaction, phase: PhaseRow, { columns, pressurePa }: Measured, now: Date): Promise<ClosedPhase> {
+async function close(transaction: Transaction, phase: PhaseRow, { columns, pressurePa, qStd }: Measured, now: Date): Promise<ClosedPhase> {
   const excluded = await rows<{ idx: number }>(`select idx from exclusion where step_id = $1 and undone_at is null`, [phase.stepId], transaction);
   markLeftOut(columns, { discard: phase.discard, excluded: new Set(excluded.map(({ idx }) => idx)) });
-  const summary = summarise(columns, { medianR1: await medianR1(transaction, phase) });
+  const summary = summarise(columns, { qStd, medianR1: await medianR1(transaction, phase) });
   const values = isWithoutValue(phase, summary) ? withoutValue(summary) : summary;
   await writeSummary(transaction, phase, columns, values, pressurePa, now);
   return { ...phase, columns, values };
@@ -98,11 +103,11 @@ const NO_VALUE = { n: 0, mean: NaN, sd: NaN, u: NaN, r1: NaN };
 
 const withoutValue = (summary: PhaseSummaryValues): PhaseSummaryValues => ({ ...summary, nUsed: 0, f0: NO_VALUE, q: NO_VALUE });
 
-type ReadingRow = Repeat & { pressurePa: number | null };
+type ReadingRow = Repeat & { pressurePa: number | null; qStd: number | null };
 
 async function readColumns(transaction: Transaction | undefined, { stepId, fitRunId }: PhaseRow): Promise<Measured> {
   const readings = await rows<ReadingRow>(
-    `select r.idx, r.at, r.temperature_c as "temperatureC", r.pressure_pa as "pressurePa", f.f0_hz as "f0Hz", f.q, f.f0_std_hz as "f0StdHz",
+    `select r.idx, r.at, r.temperature_c as "temperatureC", r.pressure_pa as "pressurePa", f.f0_hz as "f0Hz", f.q, f.f0_std_hz as "f0StdHz", f.q_std as "qStd",
             coalesce(f.flags, r.flags) as flags
        from reading r left join lateral (select * from fit where fit_run_id = $2 and step_id = $1 and idx = r.idx offset 0) f on true
       where r.step_id = $1 order by r.idx`,
@@ -111,7 +116,7 @@ async function readColumns(transaction: Transaction | undefined, { stepId, fitRu
   );
   const pressures = readings.flatMap(({ pressurePa }) => pressurePa ?? []);
   const pressurePa = pressures.length > 0 ? pressures.reduce((sum, pressure) => sum + pressure, 0) / pressures.length : null;
-  return { columns: columnsOf(readings), pressurePa };
+  return { columns: columnsOf(readings), pressurePa, qStd: Float64Array.from(readings, ({ qStd }) => qStd ?? NaN) };
 }
 
 /** Median lag-1 autocorrelation of this medium's earlier phases in the campaign: the floor for short phases. */

@@ -15,18 +15,18 @@ export type PhaseSummaryValues = {
   flagCounts: Record<string, number>;
 };
 
-type Options = { medianR1?: { f0: number; q: number } };
+type Options = { /** Standard errors of Q, by repeat. */ qStd?: Float64Array; medianR1?: { f0: number; q: number } };
 
 const UNUSABLE = flagBits(["failed", "edge"]);
 
 /** The phase's values from its columns, over what is not left out. Marks nothing: `leftOut` is set before. */
-export function summarise(columns: PhaseColumns, { medianR1 }: Options = {}): PhaseSummaryValues {
+export function summarise(columns: PhaseColumns, { qStd, medianR1 }: Options = {}): PhaseSummaryValues {
   const { n, f0Hz, q, f0StdHz, temperatureC, flags, leftOut } = columns;
   const f0 = new Float64Array(n);
   const qs = new Float64Array(n);
   let nUsed = 0;
   let unusable = 0;
-  let fitStd = NaN;
+  let last = 0;
   const bitCounts = new Map<number, number>();
   for (let i = 0; i < n; i++) {
     if (flags[i] & UNUSABLE) unusable++;
@@ -34,16 +34,16 @@ export function summarise(columns: PhaseColumns, { medianR1 }: Options = {}): Ph
     if (leftOut[i] || !Number.isFinite(f0Hz[i]) || !Number.isFinite(q[i])) continue;
     f0[nUsed] = f0Hz[i];
     qs[nUsed] = q[i];
-    fitStd = f0StdHz[i];
+    last = i;
     nUsed++;
   }
-  const std = nUsed === 1 && Number.isFinite(fitStd) ? fitStd : undefined;
+  const ofOne = (std: number | undefined) => (nUsed === 1 && Number.isFinite(std) ? std : undefined);
   return {
     n,
     nUsed,
     unusable,
-    f0: phaseValue(f0.subarray(0, nUsed), { fitStd: std, medianR1: medianR1?.f0 }),
-    q: phaseValue(qs.subarray(0, nUsed), { medianR1: medianR1?.q }),
+    f0: phaseValue(f0.subarray(0, nUsed), { fitStd: ofOne(f0StdHz[last]), medianR1: medianR1?.f0 }),
+    q: phaseValue(qs.subarray(0, nUsed), { fitStd: ofOne(qStd?.[last]), medianR1: medianR1?.q }),
     temperatureC: spread(temperatureC),
     flagCounts: countFlags(bitCounts),
   };

@@ -61,3 +61,17 @@ test("the baseline is the mean of the first three references", async () => {
   expect(baseline).toMatchObject({ n: 3, complete: true });
   expect(baseline?.f0Hz).toBeCloseTo(mean?.f0 ?? NaN, 9);
 });
+
+test("a phase of one repeat has the standard errors of its fit, of f0 and of Q", async () => {
+  const single = await Bench.make({ definition: { blocks: [{ id: "one", kind: "measure", medium: "air", role: "reference", repeats: 1, discard: 0, pauseS: 0, sweep: { centre: "track", span: { halfWidths: 8 }, points: 101, dwell: { s: 0.1 }, driveV: 0.1 } }] } });
+  await single.hello();
+  await single.run();
+  const found = await row<{ f0U: number; f0Std: number; qU: number; qStd: number }>(
+    `select s.f0_u as "f0U", f.f0_std_hz as "f0Std", s.q_u as "qU", f.q_std as "qStd" from phase p join phase_summary s on s.phase_id = p.id
+       join fit f on f.step_id = p.step_id and f.fit_run_id = s.fit_run_id where p.campaign_id = $1`,
+    [single.campaign.id],
+  );
+  expect(found?.f0U).toBe(found?.f0Std);
+  expect(found?.qU).toBe(found?.qStd);
+  expect(found?.qU).toBeGreaterThan(0);
+});
