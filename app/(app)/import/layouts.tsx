@@ -17,6 +17,7 @@ export function Layouts() {
           <dd>takenAt, medium, frequencyHz and re, im or magnitude; rows of one time are one sweep of 11 to 4001 points</dd>
         </div>
       </dl>
+      <p className="small mt-2"><a className="link" href="/import-format.txt" target="_blank">Every column, its units and bounds</a></p>
     </details>
   );
 }
