@@ -45,6 +45,7 @@ test("noise parts are written with their uncertainty in the last digits, absent 
   expect(partText(1.2345e-13, 8e-15)).toBe("1.23(8)\u2009×\u200910⁻¹³");
   expect(partText(5.6e-4, 2e-4)).toBe("6(2)\u2009×\u200910⁻⁴");
   expect(partText(0, 3e-14)).toBe("below 6.0\u2009×\u200910⁻¹⁴");
+  expect(partText(2e-14, 2.13e-12)).toBe("below 4.3\u2009×\u200910⁻¹²");
   expect(partText(0, NaN)).toBe("none");
 });
 

@@ -13,6 +13,7 @@ import type { AnalysisProps } from "./analysis-screen";
 import { ChoiceList, CompensationChoice, FitRunChoice, MediaChoice, QuantityChoice, SetPointChoice, TypedChoices } from "./choices";
 import { driftPanels, shownAs } from "./drift-data";
 import { AgeingAndTrend, SlopeTable, StepTable } from "./drift-tables";
+import { Folded } from "./folded";
 import { useDrift } from "./use-drift";
 
 /** Drift of the phase values of one medium: line with band, residuals, steps and temperature on one time base, and the numbers. */
@@ -34,7 +35,7 @@ export function DriftTab(props: AnalysisProps) {
         head="Choose"
         note="Phase values, bars k = 2; the line holds under correlated noise, its band is 95 %. Drag to zoom in; at the cursor + and − do, and Enter opens the repeat."
         controls={
-          <>
+          <Folded sentence={`${view.quantity === "f0" ? "f₀" : "Q"} in ${name}${view.compensate === "temperature" ? ", compensated for temperature" : ""}`}>
             <QuantityChoice view={view} set={set} />
             <MediaChoice {...props} one />
             <SetPointChoice {...props} chosen={setPointC} />
@@ -42,7 +43,7 @@ export function DriftTab(props: AnalysisProps) {
             <TypedChoices view={view} set={set} />
             <ChoiceList label="Time" name="gaps" set={set} items={[{ value: null, label: "Gaps closed", pressed: !view.openGaps }, { value: "open", label: "True to scale", pressed: view.openGaps }]} />
             <FitRunChoice {...props} />
-          </>
+          </Folded>
         }
       >
         <div aria-busy={asked.isFetching}>

@@ -9,10 +9,10 @@ type Parts = NonNullable<StabilityAnswer["parts"]>;
 
 const DAY_S = 86_400;
 
-/** `1.24(8) × 10⁻¹³`; a part that is not there as what it may be at most, k = 2. */
+/** `1.24(8) × 10⁻¹³`; a part that is not there, or less than its uncertainty, as what it may be at most, k = 2. */
 export function partText(value: number, u: number): string {
   if (!Number.isFinite(value)) return "";
-  if (value === 0) return u > 0 && Number.isFinite(u) ? `below ${formatPower(2 * u)}` : "none";
+  if (value === 0 || value < u) return u > 0 && Number.isFinite(u) ? `below ${formatPower(value + 2 * u)}` : "none";
   const power = Math.floor(Math.log10(value));
   if (!(u > 0) || !Number.isFinite(u)) return formatPower(value);
   const decimals = Math.max(0, Math.min(3, power - Math.floor(Math.log10(u))));
@@ -44,12 +44,12 @@ export function NoiseTable({ curves, unit }: { curves: readonly NamedAnswers[]; 
         <tbody>
           {rows.map(({ id, name, view, parts }) => (
             <tr key={id}>
-              <td>{name} <span className="text-ink2">{view}</span></td>
+              <td className="whitespace-nowrap">{name} <span className="text-ink2">{view}</span></td>
               <td className="right num whitespace-nowrap">{partText(parts.white, parts.u.white)}</td>
               <td className="right num whitespace-nowrap">{partText(parts.flicker, parts.u.flicker)}</td>
               <td className="right num whitespace-nowrap">{partText(parts.randomWalk, parts.u.randomWalk)}</td>
               <td className="right num whitespace-nowrap">{partText(parts.driftPerS * DAY_S, parts.u.driftPerS * DAY_S)}</td>
-              <td>{bestText(parts, unit)}</td>
+              <td className="min-w-[230px]">{bestText(parts, unit)}</td>
             </tr>
           ))}
         </tbody>

@@ -7,11 +7,12 @@ import { Empty, Loading, Problem } from "@/components/ui/states";
 import { stabilityWords } from "@/lib/analysis/stability-words";
 import { campaignOptions, stabilityOptions } from "@/lib/campaigns/client";
 import { campaignCode } from "@/lib/campaigns/code";
-import { capitalised } from "@/lib/format";
+import { capitalised, listOf } from "@/lib/format";
 import { curvesOf, STATISTICS, toDeviationPoint } from "../stability-curves";
 import type { AnalysisProps } from "./analysis-screen";
 import { selectionOf } from "./analysis-view";
 import { CompensationChoice, DeadTimeChoice, FitRunChoice, FlagChoice, MediaChoice, QuantityChoice, SetPointChoice, shownMedia, StatisticChoice, TypedChoices } from "./choices";
+import { Folded } from "./folded";
 import { NoiseTable } from "./noise-table";
 import { StabilityNumbers } from "./stability-numbers";
 import { WhatWasUsed } from "./what-was-used";
@@ -58,7 +59,7 @@ export function StabilityTab({ campaign, view, set }: AnalysisProps) {
       <Section
         head="Choose"
         controls={
-          <>
+          <Folded sentence={`${quantity === "f0" ? "f₀" : "Q"}${normalise === "absolute" ? "" : ", fractional"}, in ${listOf(media.map(({ medium, name }) => (medium === "air" ? "air" : name)))}, ${label}${compensate === "temperature" ? ", compensated for temperature" : ""}`}>
             <QuantityChoice view={view} set={set} absolute />
             <MediaChoice campaign={campaign} view={view} set={set} />
             <SetPointChoice campaign={campaign} view={view} set={set} chosen={setPointC} />
@@ -66,7 +67,7 @@ export function StabilityTab({ campaign, view, set }: AnalysisProps) {
             <StatisticChoice campaign={campaign} view={view} set={set} />
             <CompensationChoice view={view} set={set} />
             <FitRunChoice campaign={campaign} view={view} set={set} />
-          </>
+          </Folded>
         }
       >
         <div aria-busy={wanted.some(({ isFetching }) => isFetching)}>
@@ -102,7 +103,12 @@ export function StabilityTab({ campaign, view, set }: AnalysisProps) {
           <Section
             head="What was used"
             note="Press a flag to leave its repeats out or let them in, and see the difference. A person’s exclusions and discarded repeats stay out."
-            controls={<><FlagChoice campaign={campaign} view={view} set={set} /><DeadTimeChoice campaign={campaign} view={view} set={set} /></>}
+            controls={
+              <Folded sentence={leaveOut === undefined ? "The usual flags leave out" : leaveOut === "none" ? "No flag leaves out" : `Left out: ${leaveOut.replaceAll(",", ", ")}`}>
+                <FlagChoice campaign={campaign} view={view} set={set} />
+                <DeadTimeChoice campaign={campaign} view={view} set={set} />
+              </Folded>
+            }
           >
             <WhatWasUsed curves={all} />
           </Section>

@@ -13,6 +13,7 @@ import { useView } from "../use-view";
 import type { AnalysisProps } from "./analysis-screen";
 import { MediaChoice, QuantityChoice, SetPointChoice, TypedChoices } from "./choices";
 import { shownAs, type Shown } from "./drift-data";
+import { Folded } from "./folded";
 import { againstTemperature } from "./temperature-data";
 import { useDrift } from "./use-drift";
 
@@ -36,7 +37,14 @@ export function TemperatureTab(props: AnalysisProps) {
       <Section
         head="Choose"
         note="Phase values with their drift taken off against the thermometer’s mean; coefficient and drift are fitted together, so that neither steals from the other."
-        controls={<><QuantityChoice view={view} set={set} /><MediaChoice {...props} one /><SetPointChoice {...props} chosen={setPointC} /><TypedChoices view={view} set={set} /></>}
+        controls={
+          <Folded sentence={`${view.quantity === "f0" ? "f₀" : "Q"} in ${name}`}>
+            <QuantityChoice view={view} set={set} />
+            <MediaChoice {...props} one />
+            <SetPointChoice {...props} chosen={setPointC} />
+            <TypedChoices view={view} set={set} />
+          </Folded>
+        }
       >
         <div aria-busy={asked.isFetching}>
           {asked.error && !refused && <Problem error={asked.error} onRetry={() => void asked.refetch()} />}
@@ -89,6 +97,7 @@ function coefficientWords({ compensation }: DriftAnswer, name: string, { scale, 
   if (!compensation || !linear) return "";
   const per = (power: string) => `\u00a0${unit ?? ""}${unit ? "/" : "per "}${power}`;
   const second = curved ? ` and ${formatUncertain(curved.value * scale, curved.u * scale, { signed: true })}${per("K²")}` : "";
+  if (Math.abs(linear.value) < 2 * linear.u) return `In ${name} no temperature coefficient can be told from noise: ${formatUncertain(linear.value * scale, linear.u * scale, { signed: true })}${per("K")}.`;
   return `In ${name} the temperature coefficient is ${formatUncertain(linear.value * scale, linear.u * scale, { signed: true })}${per("K")}${second}.`;
 }
 

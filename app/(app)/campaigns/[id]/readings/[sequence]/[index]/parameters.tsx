@@ -23,7 +23,7 @@ export function Parameters({ sweep }: { sweep: SweepAnswer }) {
   if (rows.length === 0) return <p className="text-ink2">Nothing could be fitted.</p>;
   return (
     <div className="table-box">
-      <table className="data-table lines" aria-label="Parameters of the fit">
+      <table className="data-table" aria-label="Parameters of the fit">
         <thead>
           <tr>
             <th scope="col">Parameter</th>
@@ -41,8 +41,8 @@ export function Parameters({ sweep }: { sweep: SweepAnswer }) {
             return (
               <tr key={name}>
                 <td className="whitespace-nowrap"><Symbol name={symbol} sub={sub} />{part && `, ${part}`}</td>
-                <td className="text-ink2">{what}</td>
-                <td className="right num">{formatUncertain(value * scale, u === null ? null : u * scale)}</td>
+                <td className="min-w-[160px] text-ink2">{what}</td>
+                <td className="right num whitespace-nowrap">{formatUncertain(value * scale, u === null ? null : u * scale)}</td>
                 <td className="right num">{u === null ? NO_VALUE : formatNumber(Number((u * scale).toPrecision(2)))}</td>
                 <td>{shownUnit}</td>
                 <td className="right num">{correlationWithF0 === null ? NO_VALUE : formatNumber(correlationWithF0, { decimals: name === "f0Hz" ? 0 : 2 })}</td>
