@@ -82,6 +82,8 @@ export const compensation = z.object({
 });
 
 const parts = z.object({ white: z.number(), flicker: z.number(), randomWalk: z.number(), driftPerS: z.number() });
+/** Null where the curve has too few points to say. */
+const partsU = z.object({ white: z.number().nullable(), flicker: z.number().nullable(), randomWalk: z.number().nullable(), driftPerS: z.number().nullable() });
 
 export const stabilityAnswer = z.object({
   tau0S: z.number().nullable(),
@@ -105,7 +107,7 @@ export const stabilityAnswer = z.object({
   /** What was used, in words. */
   used: z.string(),
   /** Parts of the overlapping Allan variance with their standard uncertainties, and the averaging time of least deviation with those as good within 5 %. */
-  parts: parts.extend({ u: parts, best: z.object({ tauS: z.number(), deviation: z.number(), fromS: z.number(), toS: z.number() }) }).nullish(),
+  parts: parts.extend({ u: partsU, best: z.object({ tauS: z.number(), deviation: z.number(), fromS: z.number(), toS: z.number() }) }).nullish(),
   /** Readings by why they do not count, and flagged ones that do; within phases. */
   readings: z.object({ n: z.int(), used: z.int(), reasons: z.record(z.string(), z.int()), flaggedButUsed: z.record(z.string(), z.int()) }).nullish(),
   /** Pauses between repeats: spacing over length of one, share of time without measuring, the largest effect on a point, what was done. */

@@ -42,9 +42,17 @@ export async function stabilityOf({ phases, fitRunId, query }: Given): Promise<S
     points: (dead?.points ?? points).map((point) => (doubts.length > 0 ? { ...point, compensationU: doubtAt(doubts, query, point.m, split.tau0S) } : point)),
     used: `${used}, ${holes}`,
     ...about,
-    parts: noiseParts(dead?.allan ?? allan) ?? null,
+    parts: partsOf(dead?.allan ?? allan),
     deadTime: dead?.answer ?? null,
   };
+}
+
+function partsOf(points: readonly StabilityPoint[]): StabilityAnswer["parts"] {
+  const parts = noiseParts(points);
+  if (!parts) return null;
+  const known = (u: number) => (Number.isFinite(u) ? u : null);
+  const { white, flicker, randomWalk, driftPerS } = parts.u;
+  return { ...parts, u: { white: known(white), flicker: known(flicker), randomWalk: known(randomWalk), driftPerS: known(driftPerS) } };
 }
 
 function readingsOf({ readings }: Series): StabilityAnswer["readings"] {

@@ -1,7 +1,7 @@
 import { afterAll, beforeAll, describe, expect, test } from "vitest";
 import { readBackToAir } from "@/lib/analysis/back-to-air";
 import { readDrift } from "@/lib/analysis/drift";
-import { driftQuery, seriesQuery, stabilityQuery } from "@/lib/analysis/schema";
+import { driftQuery, seriesQuery, stabilityAnswer, stabilityQuery } from "@/lib/analysis/schema";
 import { readSeries } from "@/lib/analysis/series";
 import { readStability } from "@/lib/analysis/stability";
 import { rows, sequelize } from "@/lib/db";
@@ -109,6 +109,13 @@ describe("stability", () => {
     const { tau0S, points } = await readStability(campaignId, stabilityQuery.parse({ view: "phases", normalise: "absolute", statistic: "adev" }));
     const stepDays = (tau0S ?? 0) / 86_400;
     expect(points[0].deviation).toBeCloseTo((DRIFT_HZ_PER_DAY * stepDays) / Math.SQRT2, 3);
+  });
+
+  test("a curve of few points answers what it can, and null for what it cannot tell", async () => {
+    const short = await readStability(campaignId, stabilityQuery.parse({ medium: "sample" }));
+    expect(short.points.length).toBeLessThan(4);
+    expect(stabilityAnswer.parse(JSON.parse(JSON.stringify(short)))).toEqual(short);
+    expect(Object.values(short.parts?.u ?? {})).toContain(null);
   });
 
   test("too few values answer no points and say why", async () => {

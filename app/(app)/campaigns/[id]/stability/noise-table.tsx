@@ -10,8 +10,9 @@ type Parts = NonNullable<StabilityAnswer["parts"]>;
 const DAY_S = 86_400;
 
 /** `1.24(8) × 10⁻¹³`; a part that is not there, or less than its uncertainty, as what it may be at most, k = 2. */
-export function partText(value: number, u: number): string {
+export function partText(value: number, u: number | null): string {
   if (!Number.isFinite(value)) return "";
+  if (u === null) return value > 0 ? formatPower(value) : "not known";
   if (value === 0 || value < u) return u > 0 && Number.isFinite(u) ? `below ${formatPower(value + 2 * u)}` : "none";
   const power = Math.floor(Math.log10(value));
   if (!(u > 0) || !Number.isFinite(u)) return formatPower(value);
@@ -48,7 +49,7 @@ export function NoiseTable({ curves, unit }: { curves: readonly NamedAnswers[]; 
               <td className="right num whitespace-nowrap">{partText(parts.white, parts.u.white)}</td>
               <td className="right num whitespace-nowrap">{partText(parts.flicker, parts.u.flicker)}</td>
               <td className="right num whitespace-nowrap">{partText(parts.randomWalk, parts.u.randomWalk)}</td>
-              <td className="right num whitespace-nowrap">{partText(parts.driftPerS * DAY_S, parts.u.driftPerS * DAY_S)}</td>
+              <td className="right num whitespace-nowrap">{partText(parts.driftPerS * DAY_S, parts.u.driftPerS === null ? null : parts.u.driftPerS * DAY_S)}</td>
               <td className="min-w-[230px]">{bestText(parts, unit)}</td>
             </tr>
           ))}
