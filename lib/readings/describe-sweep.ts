@@ -35,7 +35,7 @@ function parametersOf(sweep: Sweep, fit: ResonanceFit, { readout, offsetSlope = 
   if (sweep.kind === "magnitude") {
     return [
       { name: "f0Hz", value: f0Hz, u: f0StdHz, correlationWithF0: 1 },
-      { name: "q", value: q, u: qStd, correlationWithF0: own.f0q / (f0StdHz * qStd) },
+      { name: "q", value: q, u: qStd, correlationWithF0: f0StdHz > 0 && qStd > 0 ? own.f0q / (f0StdHz * qStd) : null },
     ];
   }
   const values = [f0Hz, q, a.re, a.im, b.re, b.im, ...(offsetSlope ? [c.re, c.im] : [])];
