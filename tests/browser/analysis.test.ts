@@ -7,7 +7,7 @@ import { account, browserOfTests, signIn } from "./browser";
 const browser = browserOfTests();
 afterAll(() => sequelize.close());
 
-test("a link shows a colleague the same analysis; the plot answers to keys and is handed over as CSV; a repeat is left out with what that does", { timeout: 120_000 }, async () => {
+test("a link shows a colleague the same analysis; the plot answers to keys and is handed over as CSV and PNG; a repeat is left out with what that does", { timeout: 120_000 }, async () => {
   const bench = await Bench.make();
   bench.truth = ({ medium, index }) => (medium === "air" ? { f0Hz: index === 3 ? 2400.2 : 2400, q: 1800, temperatureC: 25 } : { f0Hz: 2100, q: 60 });
   await bench.hello();
@@ -40,6 +40,12 @@ test("a link shows a colleague the same analysis; the plot answers to keys and i
   const [head, first] = fs.readFileSync(await download.path(), "utf8").split("\r\n");
   expect(head).toContain("τ / s");
   expect(first).toMatch(/^[^,]+,within phases,\d/);
+
+  const [picture] = await Promise.all([colleague.waitForEvent("download"), plot.getByRole("button", { name: "PNG" }).click()]);
+  expect(picture.suggestedFilename()).toBe(`${code}-mdev-q.png`);
+  const bytes = fs.readFileSync(await picture.path());
+  expect(bytes.subarray(1, 4).toString("latin1")).toBe("PNG");
+  expect(bytes.readUInt32BE(16)).toBeGreaterThan(1500);
 
   const phase = await row<{ sequence: number }>(`select sequence from phase where campaign_id = $1 and medium = 'air' order by sequence limit 1`, [bench.campaign.id]);
   await page.goto(`/campaigns/${code}/readings/${phase?.sequence}/2`);
