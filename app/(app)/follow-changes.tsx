@@ -35,6 +35,7 @@ export function FollowChanges() {
 /** Holds the stream as long as the tab lives; the browser opens it again by itself when it breaks. */
 function hold(hear: (names: string[]) => void, signal: AbortSignal): Promise<void> {
   return new Promise((resolve) => {
+    if (signal.aborted) return resolve();
     const stream = new EventSource("/api/changes");
     let broken = false;
     stream.onopen = () => {
