@@ -173,7 +173,7 @@ describe.each(named(withId))("the address of %s", (_, call) => {
   });
 });
 
-const ODD_TABLES: Readonly<Record<string, string>> = { "blocked-times": "maintenance_window", people: "person", tasks: "operator_task", tokens: "access_token" };
+const ODD_TABLES: Readonly<Record<string, string>> = { "blocked-times": "maintenance_window", imports: "import_run", people: "person", tasks: "operator_task", tokens: "access_token" };
 
 /** The table that the `{id}` of an address is of. */
 const tableOf = (path: string): string => ODD_TABLES[path.split("/")[2]] ?? path.split("/")[2].replace(/s$/, "").replaceAll("-", "_");

@@ -115,6 +115,8 @@ describe("setting up", () => {
     await run(({ repeats }) => repeats > 150);
     expect(seen.at(-1)?.state).toBe("running");
     await run(({ state }) => state === "held");
+    const holds = await rows(`select reason, text from hold where campaign_id = $1 and released_at is null`, [laboratory.campaigns.cold]);
+    expect(holds).toEqual([{ reason: "task", text: expect.stringContaining("desiccant") }]);
 
     const media = await rows(
       `select medium, count(*)::int as n, count(distinct (s.sequence, r.idx))::int as different
