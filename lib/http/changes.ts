@@ -17,7 +17,7 @@ export const changesQuery = z.object({
  */
 export function followChanges({ forS, signal }: { forS: number; signal: AbortSignal }): Response {
   const encoder = new TextEncoder();
-  let end = () => {};
+  let stop = () => {};
   const body = new ReadableStream<Uint8Array>({
     async start(controller) {
       const send = (text: string) => controller.enqueue(encoder.encode(text));
@@ -35,22 +35,23 @@ export function followChanges({ forS, signal }: { forS: number; signal: AbortSig
         leaving ??= setTimeout(leave, TOGETHER_MS);
       });
       const alive = setInterval(() => send(": still here\n\n"), ALIVE_MS);
-      const timeout = setTimeout(() => end(), forS * 1000);
-      end = () => {
-        end = () => {};
+      const end = () => {
+        stop();
+        controller.close();
+      };
+      const timeout = setTimeout(end, forS * 1000);
+      stop = () => {
         stopHearing();
         clearTimeout(leaving);
         clearInterval(alive);
         clearTimeout(timeout);
-        signal.removeEventListener("abort", ended);
-        controller.close();
+        signal.removeEventListener("abort", end);
       };
-      const ended = () => end();
-      signal.addEventListener("abort", ended);
+      signal.addEventListener("abort", end);
       send("retry: 2000\n\n");
       if (signal.aborted) end();
     },
-    cancel: () => end(),
+    cancel: () => stop(),
   });
   return new Response(body, { headers: { "content-type": "text/event-stream; charset=utf-8", "cache-control": "no-store, no-transform", "x-accel-buffering": "no" } });
 }

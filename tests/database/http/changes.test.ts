@@ -55,6 +55,15 @@ test("names what others commit, together what came together, and nothing that wa
   expect(await names()).toEqual([]);
 });
 
+test("a reader who goes away leaves nothing behind that would be told on", async () => {
+  const { cookie } = await signedInAs("viewer");
+  const answer = await GET(new Request(`${ORIGIN}/api/changes`, { headers: { cookie } }), context);
+  await answer.body?.cancel();
+  await notify("changed:rigs");
+  const { names } = await follow("?forS=1");
+  expect((await names()).filter((name) => name !== "*" && name !== "rigs")).toEqual([]);
+});
+
 test("ends by itself after the time asked for, so that whoever may no longer sign in hears no more", async () => {
   const { names } = await follow("?forS=1");
   expect((await names()).filter((name) => name !== "*")).toEqual([]);

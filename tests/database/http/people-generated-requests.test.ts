@@ -35,7 +35,11 @@ type Answered = { status: number; text: string; type: string | null };
 
 async function send({ call, body, query }: GeneratedRequest): Promise<Answered> {
   const answer = await sendPrepared(prepared.get(call) as PreparedCall, { body, query });
-  return { status: answer.status, text: await answer.text(), type: answer.headers.get("content-type") };
+  const type = answer.headers.get("content-type");
+  // A stream of changes goes on as long as it was asked to.
+  const isEndless = type?.startsWith("text/event-stream") ?? false;
+  if (isEndless) await answer.body?.cancel();
+  return { status: answer.status, text: isEndless ? "" : await answer.text(), type };
 }
 
 const problem = z.looseObject({ type: z.string().regex(/^\/problems\/[a-z-]+$/), title: z.string(), status: z.int(), detail: z.string(), errors: z.array(z.object({ path: z.string(), message: z.string() })).optional() });
